@@ -90,23 +90,27 @@ function decimalsOf(value: number): number {
   return value === 0 ? 0 : Math.max(0, 3 - Math.floor(Math.log10(Math.abs(value))))
 }
 
-/** A range in another unit, rounded for reading only; the judgement never uses it. */
+/**
+ * A range in another unit, for reading only; the judgement never uses it. Ends are rounded into the range, so that a value equal to an end
+ * that is shown always passes (7 psi is shown as at least 48.27 kPa, since 48.26 kPa is a little less).
+ */
 function inUnit(range: Range, unit: Unit): Range | null {
   if (range.unit === unit) return range
-  const convert = (end: number | undefined): number | null | undefined => {
+  const convert = (end: number | undefined, direction: 'up' | 'down' | 'nearest'): number | null | undefined => {
     if (end === undefined) return undefined
     const converted = convertValue(end, range.unit, unit)
-    return converted === null ? null : roundTo(converted, decimalsOf(converted))
+    return converted === null ? null : roundTo(converted, decimalsOf(converted), direction)
   }
-  const min = convert(range.min)
-  const max = convert(range.max)
+  const isPoint = range.min === range.max
+  const min = convert(range.min, isPoint ? 'nearest' : 'up')
+  const max = convert(range.max, isPoint ? 'nearest' : 'down')
   return min === null || max === null ? null : { min, max, unit }
 }
 
 /**
  * Limits in words, in the unit in which the value is being typed: "11 000 to 13 500 rpm", "at least 7 psi", "at most 0.584 mm". A figure that
  * was printed in several units is given as printed for that unit, or in all its units when that unit is not among them. Converted
- * limits are rounded to four significant digits for reading. Empty when neither end is known.
+ * limits show four significant digits, rounded into the range. Empty when neither end is known.
  */
 export function limitWords(limits: SpecLimit, unit: Unit, format: NumberFormat): string {
   if ('as' in limits) {

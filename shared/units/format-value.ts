@@ -67,13 +67,22 @@ export function formatNumber(value: number, format: NumberFormat, fractionDigits
   return sign + grouped + (fraction === undefined ? '' : format.decimal + fraction)
 }
 
-/** Rounds to a number of decimals, half away from zero, as decimal digits see it (1.005 to two decimals is 1.01). */
-export function roundTo(value: number, fractionDigits: number): number {
+/**
+ * Rounds to a number of decimals as decimal digits see it: half away from zero (1.005 to two decimals is 1.01), or always up, or always down,
+ * which moves a value that already has so few decimals not at all.
+ */
+export function roundTo(value: number, fractionDigits: number, direction: 'nearest' | 'up' | 'down' = 'nearest'): number {
   if (!Number.isFinite(value)) return value
-  const [mantissa = '0', exponent = '0'] = Math.abs(value).toString().split('e')
-  const shifted = Math.round(Number(`${mantissa}e${Number(exponent) + fractionDigits}`))
-  const [digits = '0', power = '0'] = shifted.toString().split('e')
-  return Math.sign(value) * Number(`${digits}e${Number(power) - fractionDigits}`)
+  const shifted = shiftPoint(value, fractionDigits)
+  const rounded =
+    direction === 'up' ? Math.ceil(shifted) : direction === 'down' ? Math.floor(shifted) : Math.sign(shifted) * Math.round(Math.abs(shifted))
+  return shiftPoint(rounded, -fractionDigits)
+}
+
+/** Moves the decimal point without arithmetic on binary fractions. */
+function shiftPoint(value: number, places: number): number {
+  const [digits = '0', exponent = '0'] = value.toString().split('e')
+  return Number(`${digits}e${Number(exponent) + places}`)
 }
 
 /** A number with its unit as the bench reads it, never broken across lines: "9 850 rpm", "0.584 mm", "24" for a count. */
