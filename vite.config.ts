@@ -5,6 +5,7 @@ import { defineConfig } from 'vitest/config'
 /** Client build and test projects in one place: `unit` runs in Node, `ui` in jsdom. */
 export default defineConfig({
   plugins: [react(), tailwindcss()],
+  publicDir: 'src/public',
   build: { outDir: 'dist', sourcemap: false, target: 'es2022' },
   test: {
     projects: [

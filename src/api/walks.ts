@@ -1,0 +1,44 @@
+import { queryOptions } from '@tanstack/react-query'
+
+import type { BatchResult } from '#shared/api/walks.ts'
+import { getWalk, listSideEvents, listWalks, postEvents, startWalk } from '#shared/api/walks.ts'
+import type { WalkId } from '#shared/lib/ids.ts'
+import type { EventOf, WalkEvent } from '#shared/walk/events.ts'
+import { request } from '#src/lib/api-client.ts'
+import { paths } from '#src/lib/paths.ts'
+
+type WalkListQuery = { readonly scope?: 'mine' | 'shop'; readonly state?: 'open' | 'ended' | 'all'; readonly page?: number }
+
+export const walkQueries = {
+  lists: () => ['walks', 'list'] as const,
+  details: () => ['walks', 'detail'] as const,
+  list: (query: WalkListQuery = {}) =>
+    queryOptions({
+      queryKey: [...walkQueries.lists(), query],
+      queryFn: ({ signal }) => request(paths.api.walks(query), listWalks.response, { signal }),
+    }),
+  /** The log with everything that replay needs. While a player is open its own log is ahead of this; see walk-logs.ts. */
+  detail: (walkId: WalkId) =>
+    queryOptions({
+      queryKey: [...walkQueries.details(), walkId],
+      queryFn: ({ signal }) => fetchWalk(walkId, signal),
+    }),
+  sideEvents: (walkId: WalkId) =>
+    queryOptions({
+      queryKey: [...walkQueries.details(), walkId, 'side-events'],
+      queryFn: ({ signal }) => request(paths.api.walkSideEvents(walkId), listSideEvents.response, { signal }),
+    }),
+}
+
+export function fetchWalk(walkId: WalkId, signal?: AbortSignal) {
+  return request(paths.api.walk(walkId), getWalk.response, signal === undefined ? {} : { signal })
+}
+
+/** A batch, in order; idempotent by event id, so that sending it again is safe. */
+export function postWalkEvents(walkId: WalkId, events: readonly WalkEvent[]): Promise<BatchResult> {
+  return request(paths.api.walkEvents(walkId), postEvents.response, { method: 'POST', body: { events } })
+}
+
+export function postWalk(event: EventOf<'started'>): Promise<BatchResult> {
+  return request(paths.api.walks(), startWalk.response, { method: 'POST', body: { id: event.walkId, event } })
+}
