@@ -7,12 +7,10 @@ import { StrictMode } from 'react'
 import { createRoot } from 'react-dom/client'
 import { createBrowserRouter, RouterProvider } from 'react-router-dom'
 
-import { watchSession } from '#src/api/session.ts'
 import { createQueryClient } from '#src/lib/query-client.ts'
 import { createRoutes } from '#src/router.tsx'
 
 const queryClient = createQueryClient()
-watchSession(queryClient)
 const router = createBrowserRouter(createRoutes(queryClient))
 const root = document.getElementById('root')
 if (root === null) throw new Error('index.html has no #root')

@@ -2,24 +2,29 @@ import type { QueryClient } from '@tanstack/react-query'
 import type { ComponentType } from 'react'
 import type { LoaderFunction, RouteObject } from 'react-router-dom'
 
+import type { Role } from '#shared/trade/roles.ts'
 import { NotFound } from '#src/routes/not-found.tsx'
 import { RootError } from '#src/routes/root-error.tsx'
 import { FirstPaint, Root } from '#src/routes/root.tsx'
-import { SignedIn } from '#src/routes/signed-in.tsx'
-import { requireNobody, requireNoOwner, requirePerson } from '#src/routes/session-gate.ts'
 
 /** What a screen's file exports: the screen, and what starts its requests before it is drawn. */
 type ScreenFile = { readonly Component: ComponentType; readonly createLoader?: (client: QueryClient) => LoaderFunction }
 
 /**
- * The table of addresses. Each screen is a file of its own under src/routes and is fetched when it is first shown. Inside
- * `SignedIn` somebody is signed in; `requirePerson(client, role)` on a route asks for more than a junior.
+ * The table of addresses. Each screen is a file of its own under src/routes and is fetched when it is first shown, and so is
+ * all that parses answers: the first bundle is React, the router and the query client.
  */
 export function createRoutes(client: QueryClient): RouteObject[] {
   const screen = (load: () => Promise<ScreenFile>) => async () => {
     const { Component, createLoader } = await load()
     return { Component, ...(createLoader && { loader: createLoader(client) }) }
   }
+  const gate = () => import('#src/routes/session-gate.ts')
+  const requirePerson =
+    (role: Role): LoaderFunction =>
+    async (args) =>
+      (await gate()).requirePerson(client, role)(args)
+
   return [
     {
       path: '/',
@@ -27,15 +32,26 @@ export function createRoutes(client: QueryClient): RouteObject[] {
       HydrateFallback: FirstPaint,
       ErrorBoundary: RootError,
       children: [
-        { path: 'sign-in', loader: requireNobody(client), lazy: screen(() => import('#src/routes/sign-in.tsx')) },
-        { path: 'set-up', loader: requireNoOwner(client), lazy: screen(() => import('#src/routes/set-up.tsx')) },
+        {
+          path: 'sign-in',
+          loader: async (args) => (await gate()).requireNobody(client)(args),
+          lazy: screen(() => import('#src/routes/sign-in.tsx')),
+        },
+        {
+          path: 'set-up',
+          loader: async (args) => (await gate()).requireNoOwner(client)(args),
+          lazy: screen(() => import('#src/routes/set-up.tsx')),
+        },
         { path: 'link/:token', lazy: screen(() => import('#src/routes/accept-link.tsx')) },
         {
-          Component: SignedIn,
-          loader: requirePerson(client, 'junior'),
+          loader: requirePerson('junior'),
+          lazy: screen(() => import('#src/routes/signed-in.tsx')),
           children: [
             { path: 'account', lazy: screen(() => import('#src/routes/account.tsx')) },
-            { loader: requirePerson(client, 'owner'), children: [{ path: 'people', lazy: screen(() => import('#src/routes/people.tsx')) }] },
+            {
+              loader: requirePerson('owner'),
+              children: [{ path: 'people', lazy: screen(() => import('#src/routes/people.tsx')) }],
+            },
           ],
         },
         { path: '*', Component: NotFound },

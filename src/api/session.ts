@@ -1,5 +1,6 @@
 import type { QueryClient } from '@tanstack/react-query'
 import { queryOptions, useMutation, useQuery, useQueryClient } from '@tanstack/react-query'
+import { useEffect } from 'react'
 
 import type { SignedIn, Session } from '#shared/api/session.ts'
 import { changePassword, createFirstOwner, endSession, getSession, listSessions, signIn, signOut } from '#shared/api/session.ts'
@@ -27,10 +28,14 @@ function replaceSession(client: QueryClient, session: Session): void {
 }
 
 /** Any 401: the session ended, whatever was being done. The screens lead to the sign-in page and back. */
-export function watchSession(client: QueryClient): void {
-  setUnauthorizedHandler(() => {
-    client.setQueryData(sessionQueries.current().queryKey, (session) => (session === undefined ? session : { ...session, person: null }))
-  })
+export function useSessionWatch(): void {
+  const client = useQueryClient()
+  useEffect(() => {
+    setUnauthorizedHandler(() => {
+      client.setQueryData(sessionQueries.current().queryKey, (session) => (session === undefined ? session : { ...session, person: null }))
+    })
+    return () => setUnauthorizedHandler(null)
+  }, [client])
 }
 
 export function useSession() {

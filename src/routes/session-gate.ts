@@ -1,5 +1,5 @@
 import type { QueryClient } from '@tanstack/react-query'
-import type { LoaderFunction } from 'react-router-dom'
+import type { LoaderFunctionArgs } from 'react-router-dom'
 import { redirect } from 'react-router-dom'
 
 import type { Role } from '#shared/trade/roles.ts'
@@ -8,8 +8,8 @@ import { sessionQueries } from '#src/api/session.ts'
 import { paths, toLocalPath } from '#src/lib/paths.ts'
 
 /** Lets in who is signed in with this role or a higher one; sends everybody else to where they can go on. The API decides for itself. */
-export function requirePerson(client: QueryClient, role: Role): LoaderFunction {
-  return async ({ request }) => {
+export function requirePerson(client: QueryClient, role: Role) {
+  return async ({ request }: LoaderFunctionArgs): Promise<null> => {
     const { person, needsOwner } = await client.ensureQueryData(sessionQueries.current())
     if (needsOwner) throw redirect(paths.setUp())
     if (person === null) {
@@ -22,8 +22,8 @@ export function requirePerson(client: QueryClient, role: Role): LoaderFunction {
 }
 
 /** The sign-in page: only for who is not signed in, and only once the shop has an owner. */
-export function requireNobody(client: QueryClient): LoaderFunction {
-  return async ({ request }) => {
+export function requireNobody(client: QueryClient) {
+  return async ({ request }: LoaderFunctionArgs): Promise<null> => {
     const { person, needsOwner } = await client.ensureQueryData(sessionQueries.current())
     if (needsOwner) throw redirect(paths.setUp())
     if (person !== null) throw redirect(toLocalPath(new URL(request.url).searchParams.get('next')))
@@ -32,8 +32,8 @@ export function requireNobody(client: QueryClient): LoaderFunction {
 }
 
 /** The page for the first owner: only while there is none. */
-export function requireNoOwner(client: QueryClient): LoaderFunction {
-  return async () => {
+export function requireNoOwner(client: QueryClient) {
+  return async (_args: LoaderFunctionArgs): Promise<null> => {
     const { needsOwner } = await client.ensureQueryData(sessionQueries.current())
     if (!needsOwner) throw redirect(paths.bench())
     return null

@@ -3,7 +3,7 @@ import { Navigate, Outlet, useLocation } from 'react-router-dom'
 
 import { hasRole } from '#shared/trade/roles.ts'
 import type { Role } from '#shared/trade/roles.ts'
-import { useSession, useSignOut } from '#src/api/session.ts'
+import { useSession, useSessionWatch, useSignOut } from '#src/api/session.ts'
 import type { NavItem, Shell } from '#src/components/layout/shell-context.ts'
 import { ShellContext } from '#src/components/layout/shell-context.ts'
 import { paths } from '#src/lib/paths.ts'
@@ -15,7 +15,8 @@ const surfaces: readonly (NavItem & { readonly role: Role })[] = [
 ]
 
 /** Around every screen that wants somebody signed in; when the session ends it leads to the sign-in page and back here. */
-export function SignedIn() {
+export function Component() {
+  useSessionWatch()
   const { pathname, search } = useLocation()
   const session = useSession().data
   const signOut = useSignOut()
