@@ -1,6 +1,5 @@
 import type { AccessId, CauseId, CautionId, ChartId, CheckId, NodeId, OutcomeId, ServiceItemId, SpecKeyId } from '#shared/lib/ids.ts'
 import { depthFirst, toDigraph, type Digraph } from './digraph.ts'
-import { dominators, dominatorsOf, unreached } from './dominance.ts'
 import type { Access, Cause, Caution, ChartDocument, ChartEdge, ChartNode, DecisionNode, NodeOf, ServiceItem, SpecKey } from './document.ts'
 
 /**
@@ -164,24 +163,4 @@ export function chartNumbers(index: ChartIndex): ReadonlyMap<NodeId, string> {
     next += 1
   }
   return numbers
-}
-
-/**
- * For every cause that the starts reach: the nodes that every route to it passes, in route order, the cause itself left
- * out. Of a cause with several nodes, those that all of them share. "Every walk to this cause passes that safety step"
- * is membership in this list.
- */
-export function mustPass(index: ChartIndex): ReadonlyMap<CauseId, readonly NodeId[]> {
-  const { graph, ids, numberOf, starts } = toChartGraph(index)
-  const tree = dominators(graph, starts)
-  const lists = new Map<CauseId, readonly NodeId[]>()
-  for (const node of index.nodes.values()) {
-    const number = numberOf.get(node.id) ?? 0
-    if (node.kind !== 'cause' || tree[number] === unreached) continue
-    const passed = dominatorsOf(tree, number).flatMap((above) => ids[above] ?? [])
-    const before = lists.get(node.causeId)
-    const shared = new Set(passed)
-    lists.set(node.causeId, before === undefined ? passed : before.filter((id) => shared.has(id)))
-  }
-  return lists
 }
