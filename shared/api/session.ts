@@ -1,6 +1,7 @@
 import { z } from 'zod'
 import { personIdSchema } from '#shared/lib/ids.ts'
 import { roles } from '#shared/trade/roles.ts'
+import { numberFormatSchema } from '#shared/units/number-format.ts'
 import { doneSchema, momentSchema } from './contract.ts'
 
 /** An e-mail address as it is compared: trimmed, at most 254 characters. */
@@ -14,11 +15,6 @@ export const personNameSchema = z.string().trim().min(1, 'Write a name.').max(10
 export const signedInSchema = z.strictObject({ id: personIdSchema, name: z.string(), email: z.string(), role: z.enum(roles) })
 /** The person who is signed in. */
 export type SignedIn = z.infer<typeof signedInSchema>
-
-/** How the shop writes numbers. */
-export const numberFormatSchema = z.strictObject({ decimal: z.enum(['.', ',']), group: z.enum([' ', ',', '.', "'"]) })
-/** How the shop writes numbers. */
-export type NumberFormat = z.infer<typeof numberFormatSchema>
 
 /** Who is signed in, in which shop. `person` is null when nobody is; `needsOwner` while the shop has no owner yet. */
 export const sessionSchema = z.strictObject({

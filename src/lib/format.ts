@@ -1,5 +1,3 @@
-import type { NumberFormat } from '#shared/api/session.ts'
-
 /** The pages are in English; of its spellings of dates the browser's own is taken, else the one that cannot be misread. */
 const locale = globalThis.navigator?.languages.find((language) => language.startsWith('en')) ?? 'en-GB'
 
@@ -8,15 +6,6 @@ const day = new Intl.DateTimeFormat(locale, { dateStyle: 'medium' })
 const moment = new Intl.DateTimeFormat(locale, { dateStyle: 'medium', timeStyle: 'short' })
 const clock = new Intl.DateTimeFormat(locale, { timeStyle: 'short' })
 const weekday = new Intl.DateTimeFormat(locale, { weekday: 'long' })
-
-/** 12.5 -> '12.5', 13000 -> '13 000', as the shop writes it. Digits that are there are kept: nothing is rounded. */
-export function formatNumber(value: number, format: NumberFormat): string {
-  const [whole = '', fraction] = Math.abs(value).toString().split('.')
-  if (whole.includes('e')) return value.toString()
-  const group = format.group === ' ' ? noBreak : format.group
-  const grouped = whole.replaceAll(/\B(?=(\d{3})+$)/g, group)
-  return `${value < 0 ? '-' : ''}${grouped}${fraction === undefined ? '' : `${format.decimal}${fraction}`}`
-}
 
 /** Whole bench minutes: '12 min'. Less than a half is still said to be under one. */
 export function formatMinutes(minutes: number): string {

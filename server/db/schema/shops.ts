@@ -1,6 +1,6 @@
 import { sql } from 'drizzle-orm'
 import { boolean, check, integer, jsonb, pgTable, text } from 'drizzle-orm/pg-core'
-import type { NumberFormat } from '#shared/api/session.ts'
+import type { NumberFormat } from '#shared/units/number-format.ts'
 import { moment } from './columns.ts'
 
 /** The one row of shop settings: a database is one shop. */
