@@ -6,7 +6,7 @@ let counter = 0
 let device: DeviceId | null = null
 
 /** Needs no secure context: plain http in the shop's own network has no randomUUID. */
-function randomBytes(count: number): Uint8Array {
+function randomBytes(count: number): Uint8Array<ArrayBuffer> {
   return crypto.getRandomValues(new Uint8Array(count))
 }
 
