@@ -1,3 +1,4 @@
+import { sql } from 'drizzle-orm'
 import type { PgDatabase, PgQueryResultHKT } from 'drizzle-orm/pg-core'
 
 /** What both engines answer to `db.execute(sql…)`: counts come back as `::int` or through `mapWith(Number)`, never bare. */
@@ -22,6 +23,16 @@ export type Database = {
   readonly isAnswering: () => Promise<boolean>
   /** Settles when the engine has stopped by itself; only a new start helps then. */
   readonly lost: Promise<Error>
-  /** Lets running work end, writes everything out and lets go of the data folder; past the deadline it stops all the same. */
+  /** Lets running work end and writes everything out; past the deadline it stops all the same. */
   readonly close: (deadlineMs?: number) => Promise<void>
+}
+
+/** True when the engine answers a bare question. */
+export async function isAnswering(db: Db): Promise<boolean> {
+  try {
+    await db.execute(sql`select 1`)
+    return true
+  } catch {
+    return false // The health page says so; the failing statement of a person's own request says why.
+  }
 }
