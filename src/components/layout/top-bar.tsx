@@ -32,7 +32,7 @@ export function TopBar({ children, nav, saved, end }: TopBarProps) {
         {nav !== undefined && nav !== false && (
           <div className="order-last flex basis-full border-t border-hair md:order-none md:basis-auto md:border-t-0">{nav}</div>
         )}
-        <div className="ml-auto flex items-center gap-x-5">
+        <div className="ml-auto flex items-stretch gap-x-5">
           {saved !== undefined && <div className="flex items-center">{saved}</div>}
           {end}
         </div>

@@ -116,6 +116,7 @@ export function RuledTable<Row>({ caption, columns, rows, rowKey, rowClassName, 
   )
 }
 
+/** On a phone: its head on the left, what it holds on the right. */
 function RuledCell<Row>({ column, row }: { readonly column: RuledColumn<Row>; readonly row: Row }) {
   const className = `block py-0.5 sm:table-cell sm:h-(--row) sm:py-1.5 sm:pr-4 sm:align-middle sm:last:pr-0 ${column.align === 'right' ? 'sm:text-right' : 'text-left'} ${column.className ?? ''}`
   const content = column.cell(row)
@@ -127,13 +128,13 @@ function RuledCell<Row>({ column, row }: { readonly column: RuledColumn<Row>; re
     )
   }
   return (
-    <td role="cell" className={className}>
+    <td role="cell" className={`${className} ${column.hidden === true ? 'pt-2!' : 'max-sm:grid max-sm:grid-cols-[6.5rem_minmax(0,1fr)] max-sm:items-baseline'} empty:hidden sm:pt-1.5!`}>
       {column.hidden !== true && (
-        <span aria-hidden="true" className="label mr-3 inline-block min-w-24 sm:hidden">
+        <span aria-hidden="true" className="label sm:hidden">
           {column.head}
         </span>
       )}
-      {content}
+      {content !== null && <div>{content}</div>}
     </td>
   )
 }

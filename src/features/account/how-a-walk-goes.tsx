@@ -12,18 +12,22 @@ const stages: readonly { readonly kind: KnotKind; readonly title: string; readon
 /** The job in five knots, for who opens the page for the first time. */
 export function HowAWalkGoes() {
   return (
-    <section aria-labelledby="how-a-walk-goes" className="max-w-md lg:pt-1">
+    <section aria-labelledby="how-a-walk-goes" className="max-w-md">
       <h2 id="how-a-walk-goes" className="label">
         How a walk goes
       </h2>
       <ol role="list" className="mt-4">
         {stages.map(({ kind, title, words }) => (
-          <li key={kind} className="group relative flex gap-5 pb-6 last:pb-0">
-            <span className="relative flex w-6 shrink-0 justify-center pt-1">
-              <span aria-hidden="true" className="absolute inset-y-0 left-1/2 -translate-x-1/2 border-l-3 border-cord group-first:top-3 group-last:bottom-auto group-last:h-3" />
-              <Knot kind={kind} size={18} className="relative" />
+          <li key={kind} className="group relative lg:pl-11">
+            {/* On a narrow page these knots hang on the page's own cord; beside the form they have a piece of their own. */}
+            <span
+              aria-hidden="true"
+              className="absolute inset-y-0 left-3 hidden -translate-x-1/2 border-l-3 border-cord group-first:top-3 group-last:bottom-auto group-last:h-3 lg:block"
+            />
+            <span className="absolute top-3 left-[calc(var(--cord-x)-var(--cord-gutter))] flex -translate-1/2 lg:left-3">
+              <Knot kind={kind} size={18} />
             </span>
-            <div>
+            <div className="pb-6 group-last:pb-0">
               <p className="font-semibold">{title}</p>
               <p className="text-small text-ink-2">{words}</p>
             </div>

@@ -38,6 +38,9 @@ type NewPasswordFieldProps = Omit<ComponentProps<typeof PasswordField>, 'autoCom
   readonly typed: string
 }
 
-export function NewPasswordField({ label = 'New password', typed, ...rest }: NewPasswordFieldProps) {
-  return <PasswordField {...rest} label={label} autoComplete="new-password" hint={describeNewPassword(typed)} />
+/** Says how long it is while it is written; one that is too long is refused at once, since typing on cannot mend it. */
+export function NewPasswordField({ label = 'New password', typed, error, ...rest }: NewPasswordFieldProps) {
+  const words = describeNewPassword(typed)
+  const isTooLong = countBytes(typed) > mostBytes
+  return <PasswordField {...rest} label={label} autoComplete="new-password" error={isTooLong ? words : error} hint={isTooLong ? undefined : words} />
 }

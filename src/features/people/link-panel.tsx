@@ -47,7 +47,7 @@ export function LinkPanel({ link, onDone }: { readonly link: HandedLink; readonl
           </Button>
           <Button onClick={onDone}>I have handed it over</Button>
         </div>
-        <p role="status" className="min-h-5 text-small">
+        <p role="status" className="text-small empty:hidden">
           {copied === 'yes' && <StateMark state="good">copied</StateMark>}
           {copied === 'no' && <StateMark state="care">not copied: select the link and copy it by hand</StateMark>}
         </p>

@@ -72,19 +72,18 @@ export function PeopleSheet({ people, ownId }: { readonly people: readonly Perso
           caption="People of the shop"
           rows={people}
           rowKey={({ id }) => id}
-          rowClassName={({ id }) => (opened.what === 'person' && opened.id === id ? 'bg-cord-wash' : '')}
+          rowClassName={({ id }) => (opened.what === 'person' && opened.id === id ? 'washed' : '')}
           columns={[
             {
               key: 'name',
               head: 'Name',
-              hidden: true,
               isRowHead: true,
               cell: ({ id, name }) => (id === ownId ? `${name} (you)` : name),
             },
-            { key: 'email', head: 'E-mail', cell: ({ email }) => <span className="break-all">{email}</span> },
-            { key: 'role', head: 'Role', cell: ({ role }) => roleWords[role] },
+            { key: 'email', head: 'E-mail', cell: ({ email }) => <EmailWords email={email} /> },
+            { key: 'role', head: 'Role', className: 'sm:whitespace-nowrap', cell: ({ role }) => roleWords[role] },
             { key: 'state', head: 'State', cell: (person) => <PersonState person={person} now={now} /> },
-            { key: 'seen', head: 'Last seen', cell: ({ lastSeenAt }) => (lastSeenAt === null ? 'never' : formatSince(lastSeenAt)) },
+            { key: 'seen', head: 'Last seen', className: 'sm:whitespace-nowrap', cell: ({ lastSeenAt }) => (lastSeenAt === null ? 'never' : formatSince(lastSeenAt)) },
             {
               key: 'acts',
               head: 'Acts',
@@ -108,6 +107,18 @@ export function PeopleSheet({ people, ownId }: { readonly people: readonly Perso
         />
       </RuledSection>
     </div>
+  )
+}
+
+/** An address breaks before its @, and elsewhere only where there is no other way. */
+function EmailWords({ email }: { readonly email: string }) {
+  const at = email.lastIndexOf('@')
+  return (
+    <span className="wrap-anywhere">
+      {email.slice(0, at)}
+      <wbr />
+      {email.slice(at)}
+    </span>
   )
 }
 
