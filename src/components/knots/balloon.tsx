@@ -8,7 +8,7 @@ type BalloonProps = {
 
 const looks = {
   plain: 'border-cord bg-card text-cord',
-  filled: 'border-cord bg-cord text-on-cord',
+  filled: 'forced-color-adjust-none border-cord bg-cord text-on-cord',
   open: 'border-rule bg-transparent text-ink-2',
 } as const
 
