@@ -1,5 +1,4 @@
-import { Worker } from 'node:worker_threads'
-
+import { startWorker } from '#server/lib/start-worker.ts'
 import type { EngineAnswer } from './client.ts'
 import { defer } from './deferred.ts'
 import type { Deferred } from './deferred.ts'
@@ -29,8 +28,7 @@ export type EngineClient = {
 
 /** Starts the worker and waits until its engine is open; rejects with the engine's own words when it can't be opened. */
 export async function startEngine(start: EngineStart): Promise<EngineClient> {
-  // Tests run under a loader of their own, so the one for the worker is named here.
-  const worker = new Worker(new URL('./engine-worker.ts', import.meta.url), { workerData: start, execArgv: ['--import', import.meta.resolve('tsx')] })
+  const worker = startWorker(new URL('./engine-worker.ts', import.meta.url), start)
   const waiting = new Map<number, Deferred<unknown>>()
   const lost = defer<Error>()
   let fate: Error | null = null
