@@ -14,18 +14,30 @@ const redactedPaths = secretFields.flatMap((field) => {
   return [field, `*${step}`, `*.*${step}`]
 })
 
+export type LogOptions = { readonly destination?: DestinationStream; readonly level?: 'debug' | 'info' | 'warn' }
+
 /**
  * Makes the log. Line breaks in what a person typed stay inside JSON strings, so no input can forge a line. Standard error by
  * default: standard output is for the words that people read.
  */
-export function createLog(destination: DestinationStream = pino.destination({ fd: 2, sync: true })): Log {
+export function createLog({ destination = pino.destination({ fd: 2, sync: true }), level = 'info' }: LogOptions = {}): Log {
   return pino(
     {
       base: null,
+      level,
       timestamp: () => `,"at":"${new Date().toISOString()}"`,
       formatters: { level: (label) => ({ level: label }) },
       redact: { paths: redactedPaths, censor: '[left out]' },
       serializers: { err: describeError, error: describeError },
+      hooks: {
+        logMethod(args, method) {
+          // Without words of the caller's the error's own would become the line's, and those may quote what a person entered.
+          const [first, words] = args as [unknown, string?]
+          const fields = first instanceof Error ? { err: first } : first
+          const isError = typeof fields === 'object' && fields !== null && 'err' in fields
+          method.apply(this, isError && words === undefined ? [fields, 'failed'] : ([fields, ...args.slice(1)] as Parameters<typeof method>))
+        },
+      },
     },
     destination,
   )
