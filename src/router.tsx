@@ -12,18 +12,28 @@ type ScreenFile = { readonly Component: ComponentType; readonly createLoader?: (
 
 /**
  * The table of addresses. Each screen is a file of its own under src/routes and is fetched when it is first shown, and so is
- * all that parses answers: the first bundle is React, the router and the query client.
+ * all that parses answers: the first bundle is React, the router and the query client. Screens inside the signed-in part
+ * are listed with the role that they want.
  */
 export function createRoutes(client: QueryClient): RouteObject[] {
-  const screen = (load: () => Promise<ScreenFile>) => async () => {
-    const { Component, createLoader } = await load()
-    return { Component, ...(createLoader && { loader: createLoader(client) }) }
-  }
   const gate = () => import('#src/routes/session-gate.ts')
   const requirePerson =
     (role: Role): LoaderFunction =>
     async (args) =>
       (await gate()).requirePerson(client, role)(args)
+  const screen = (load: () => Promise<ScreenFile>) => async () => {
+    const { Component, createLoader } = await load()
+    return { Component, ...(createLoader && { loader: createLoader(client) }) }
+  }
+  /** A screen for a role and the higher ones: nothing of it is asked for before the gate has let the person in. */
+  const screenFor = (role: Role, load: () => Promise<ScreenFile>) => async () => {
+    const { Component, createLoader } = await load()
+    const loader: LoaderFunction = async (args) => {
+      await requirePerson(role)(args)
+      return (await createLoader?.(client)(args)) ?? null
+    }
+    return { Component, loader }
+  }
 
   return [
     {
@@ -47,11 +57,8 @@ export function createRoutes(client: QueryClient): RouteObject[] {
           loader: requirePerson('junior'),
           lazy: screen(() => import('#src/routes/signed-in.tsx')),
           children: [
-            { path: 'account', lazy: screen(() => import('#src/routes/account.tsx')) },
-            {
-              loader: requirePerson('owner'),
-              children: [{ path: 'people', lazy: screen(() => import('#src/routes/people.tsx')) }],
-            },
+            { path: 'account', lazy: screenFor('junior', () => import('#src/routes/account.tsx')) },
+            { path: 'people', lazy: screenFor('owner', () => import('#src/routes/people.tsx')) },
           ],
         },
         { path: '*', Component: NotFound },

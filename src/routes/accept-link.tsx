@@ -50,8 +50,8 @@ export function Component() {
   if (link.isError) {
     return (
       <QuietPage over="Pullcord" title="This link does not work" knot="hold">
-        <Notice state="bad" title={toWords(link.error)}>
-          A link works once and only for a while. The shop’s owner can make you a new one.
+        <Notice state="bad" title="No password can be set with it">
+          {toWords(link.error)}
         </Notice>
         <p className="mt-6">
           <TextLink to={paths.signIn()}>To the sign-in page</TextLink>

@@ -33,7 +33,12 @@ export function SignInForm({ demoSignIns, onSignedIn }: SignInFormProps) {
     setFaults(found)
     if (found.email !== undefined) emailField.current?.focus()
     else if (found.password !== undefined) passwordField.current?.focus()
-    else mutate(typed, { onSuccess: onSignedIn, onError: () => passwordField.current?.select() })
+    else mutate(typed, { onSuccess: onSignedIn, onError: onRefused })
+  }
+
+  const onRefused = (): void => {
+    passwordField.current?.focus()
+    passwordField.current?.select()
   }
 
   const onType = (change: Partial<typeof typed>): void => {
