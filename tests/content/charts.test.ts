@@ -1,0 +1,259 @@
+import { describe, expect, test } from 'vitest'
+import { judgeReading, limitsOf } from '#shared/chart/judge.ts'
+import { lintChart } from '#shared/chart/lint/lint-chart.ts'
+import type { ChartDocument, ReadingNode } from '#shared/chart/document.ts'
+import { fitsHarm } from '#shared/trade/signal-words.ts'
+import { unitsOfQuantity } from '#shared/units/quantities.ts'
+import { chartFiles, chartsToCome, demoChart, demoCharts, demoChartSet, demoDecisions, demoNodes, demoNodesOf, demoSheets, readChartFile } from './demo-charts.ts'
+
+const wordsOf = (text: string): string[] => text.split(/\s+/).filter((word) => /[\p{L}\p{N}]/u.test(word))
+
+describe('every chart of the demo shop', () => {
+  test('lies in a file of its own name', () => {
+    expect(demoCharts.map(({ id }) => id)).toEqual(chartFiles)
+    expect(chartFiles).toEqual(['drag-at-clutch', 'hard-to-start-printed', 'no-full-speed'])
+  })
+
+  test.each(chartFiles)('%s has nothing that must be fixed, and only jumps to charts still to come are worth a look', (name) => {
+    const index = demoChartSet.get(demoChart(name).id)
+    if (index === undefined) throw new Error(name)
+    const remarks = lintChart(index, { others: (id) => demoChartSet.get(id) })
+    expect(remarks.filter(({ code }) => code !== 'jump-chart-missing')).toEqual([])
+    for (const remark of remarks) {
+      const node = remark.node === undefined ? undefined : index.nodes.get(remark.node)
+      expect(node?.kind === 'jump' && node.chart !== undefined && chartsToCome.includes(node.chart), remark.message).toBe(true)
+    }
+  })
+
+  test('says where each of its facts comes from', () => {
+    for (const { node, name } of demoDecisions) expect(node.source?.mark, name).toMatch(/^(read|common practice)$/)
+    for (const { id, cautions } of demoCharts) for (const caution of cautions ?? []) expect(caution.source?.title, `${id} ${caution.id}`).toBeTruthy()
+    for (const { library } of demoCharts) for (const key of library.specKeys ?? []) for (const value of key.general ?? []) expect(value.source, key.id).toBeDefined()
+  })
+
+  test('names publications by their titles alone', () => {
+    for (const name of chartFiles) expect(readChartFile(name)).not.toMatch(/\bT\d\b|§|\bhand-out\b|\bseeds?\b/)
+  })
+})
+
+describe('causes', () => {
+  test('have a fix with minutes, and what led to them has advice', () => {
+    for (const { id, library } of demoCharts) {
+      for (const cause of library.causes ?? []) {
+        if (cause.contributing === true) expect(cause, `${id} ${cause.id}`).toMatchObject({ system: 'use', advice: expect.stringMatching(/\.$/) as unknown })
+        else expect(cause.remedy?.minutes, `${id} ${cause.id}`).toBeGreaterThan(0)
+      }
+    }
+  })
+
+  test('are graded and marked unsafe as the trade knows them', () => {
+    const graded = (chart: ChartDocument, grade: string) => (chart.library.causes ?? []).filter((cause) => cause.grade === grade).map(({ id }) => id as string)
+    // Common practice.
+    expect(graded(demoChart('no-full-speed'), 'common')).toEqual(['screen-shut', 'filter-packed', 'stale-fuel', 'pickup-clogged', 'chain-blunt', 'band-drags'])
+    expect(graded(demoChart('drag-at-clutch'), 'common')).toEqual(['band-drags', 'chain-overtight', 'oil-port-blocked'])
+    const unsafe = new Set(demoCharts.flatMap(({ library }) => (library.causes ?? []).filter((cause) => cause.unsafe === true).map(({ id }) => id as string)))
+    expect([...unsafe].sort()).toEqual(['band-bent', 'band-worn', 'brake-lever-sticks', 'crank-bearing-rough', 'drum-worn'])
+  })
+
+  test('that a proof leads to are its suspects, and every cause node is proved in some way', () => {
+    const proved = new Set(demoNodesOf('proof').map(({ node }) => node.suspect))
+    for (const { chart, node, name } of demoNodesOf('cause')) if (chart.basis !== 'printed-table') expect(proved.has(node.causeId), name).toBe(true)
+  })
+})
+
+describe('one id is one thing in all charts', () => {
+  const collect = <T extends { id: string }>(lists: readonly (readonly T[] | undefined)[], strip: (entry: T) => unknown) => {
+    const seen = new Map<string, string>()
+    for (const entry of lists.flatMap((list) => list ?? [])) {
+      const text = JSON.stringify(strip(entry))
+      expect(text, entry.id).toBe(seen.get(entry.id) ?? text)
+      seen.set(entry.id, text)
+    }
+    expect(seen.size).toBeGreaterThan(0)
+  }
+  test('access, service items and spec keys', () => {
+    collect(demoCharts.map(({ access }) => access), (entry) => entry)
+    collect(demoCharts.map(({ library }) => library.serviceItems), (entry) => entry)
+    collect(demoCharts.map(({ library }) => library.specKeys), (entry) => entry)
+  })
+  test('cautions, which may stand in one chart and not in another, and causes, whose grade belongs to the chart', () => {
+    collect(demoCharts.map(({ cautions }) => cautions), ({ standing: _standing, ...entry }) => entry)
+    collect(demoCharts.map(({ library }) => library.causes), ({ grade: _grade, ...entry }) => entry)
+  })
+})
+
+describe('cautions', () => {
+  test('carry the word of their harm, and hazard, consequence and how to avoid it (ANSI Z535.4-2007, 4.14)', () => {
+    for (const { cautions } of demoCharts) {
+      for (const caution of cautions ?? []) {
+        expect(fitsHarm(caution.word, caution.harm), caution.id).toBe(true)
+        expect(caution.hazard && caution.consequence && caution.avoid, caution.id).toBeTruthy()
+        if (caution.word === 'NOTICE') expect(`${caution.hazard} ${caution.consequence}`, caution.id).not.toMatch(/injur|death|cut|burn/i)
+      }
+    }
+  })
+
+  test('of exhaust gas and of the start stand before every engine that runs', () => {
+    for (const { chart, node, name } of demoNodes) {
+      if (node.machine !== 'running') continue
+      const coming = (chart.cautions ?? []).filter((caution) => caution.again?.includes('running') === true && (caution.standing === true || node.cautions?.includes(caution.id) === true))
+      expect(coming.map(({ id }) => id as string), name).toEqual(expect.arrayContaining(['co', 'start']))
+    }
+  })
+})
+
+describe('a running engine', () => {
+  const running = demoNodes.filter(({ node }) => node.machine === 'running')
+
+  test('runs warm and with every cover on but the one that the check is about', () => {
+    const withCoverOff = new Set(['drag-at-clutch/n9b'])
+    const withScreenOut = new Set(['no-full-speed/p7'])
+    for (const { chart, node, name } of running) {
+      if (chart.basis === 'printed-table') continue
+      expect(node.needs, name).toContain('warm')
+      if (!withCoverOff.has(name)) expect(node.closed, name).toContain('cover-off')
+      if (!withScreenOut.has(name)) expect(node.closed, name).toContain('screen-out')
+    }
+  })
+
+  test('never runs with the drum off: working heat closes the clutch', () => {
+    for (const { access } of demoCharts) for (const entry of access ?? []) if (entry.id === 'warm') expect(entry.excludes).toEqual(expect.arrayContaining(['clutch-off', 'plug-out', 'lead-off', 'cool']))
+    for (const { chart, node, name } of running) if (chart.access?.some(({ id }) => id === 'clutch-off') === true) expect(node.needs, name).toContain('warm')
+  })
+
+  test('runs in the cut with bar and chain on', () => {
+    for (const { node, name } of running) if (node.cautions?.some((id) => id === 'cut') === true) expect(node.closed, name).toContain('chain-off')
+  })
+})
+
+test('hands near chain, fan or drum: the plug lead is off and its caution stands there', () => {
+  const near = ['cover-off', 'chain-off', 'clutch-off', 'starter-off']
+  const byHand = demoNodes.filter(({ node }) => node.machine === 'stopped' && (node.needs ?? []).some((id) => near.includes(id)))
+  expect(byHand.length).toBeGreaterThan(15)
+  for (const { node, name } of byHand) {
+    expect(node.needs, name).toContain('lead-off')
+    expect(node.cautions, name).toContain('lead')
+  }
+})
+
+test('every page says whether the engine runs', () => {
+  for (const { node, name } of demoNodes) if (['check', 'reading', 'proof', 'step'].includes(node.kind)) expect(node.machine, name).toMatch(/^(running|stopped)$/)
+})
+
+test('a proof compares the same reading before and after, or is judged by hand, eye or ear', () => {
+  const byHand = demoNodesOf('proof').filter(({ node }) => node.by !== 'sight' && node.compares?.confirmsWhen === undefined)
+  expect(byHand.map(({ name }) => name)).toEqual(['drag-at-clutch/p11a', 'drag-at-clutch/p11b', 'drag-at-clutch/p12', 'no-full-speed/p12b', 'no-full-speed/p13a', 'no-full-speed/p13b'])
+  for (const { node, name } of demoNodesOf('proof')) {
+    expect(node.suspect, name).toBeDefined()
+    if (node.by !== 'sight') expect(node.change, name).toBeTruthy()
+  }
+})
+
+describe('spec sheets', () => {
+  const specsOf = (chart: ChartDocument) => chart.nodes.flatMap((node) => (node.kind === 'reading' && node.limits !== undefined && 'spec' in node.limits ? [{ node, spec: node.limits.spec }] : []))
+
+  test.each(demoSheets.map((sheet) => [`${sheet.maker} ${sheet.name}`, sheet] as const))('%s has a value for every reading that its charts take', (_name, sheet) => {
+    const used = new Set<string>()
+    const reached = nodesFor(sheet)
+    for (const chart of demoCharts) {
+      if (chart.appliesTo?.classes?.includes(sheet.class) === false || chart.basis === 'printed-table') continue
+      for (const { node, spec } of specsOf(chart)) {
+        if (!reached.has(`${chart.id}/${node.id}`)) continue
+        used.add(spec)
+        const limit = sheet.limits[spec]
+        expect(limit, `${chart.id}/${node.id} ${spec}`).toBeDefined()
+        if (limit !== undefined && 'unit' in limit) expect(unitsOfQuantity[node.quantity] as readonly string[], spec).toContain(limit.unit)
+      }
+    }
+    expect(Object.keys(sheet.limits).sort()).toEqual([...used].sort())
+    expect(Object.keys(sheet.sources).sort()).toEqual([...used].sort())
+  })
+
+  test('every reading by a spec key has a general value for each machine of its chart, or leaves the judgement to the hand', () => {
+    for (const chart of demoCharts) {
+      for (const { node, spec } of specsOf(chart)) {
+        const key = chart.library.specKeys?.find(({ id }) => id === spec)
+        expect(key, spec).toMatchObject({ quantity: node.quantity, unit: node.unit })
+        expect(key?.general?.length, spec).toBeGreaterThan(0)
+      }
+    }
+  })
+
+  test('where limits are general, the page says that the maker comes first', () => {
+    for (const chart of demoCharts) for (const { node } of specsOf(chart)) expect(node.good, node.id).toMatch(/maker's figure comes first/)
+  })
+})
+
+describe('limits on the charts', () => {
+  const reading = (chart: string, id: string): ReadingNode => demoChart(chart).nodes.find((node): node is ReadingNode => node.id === id && node.kind === 'reading') ?? raise(`${chart}/${id}`)
+  const judged = (chart: string, id: string, engine: 'two-stroke' | 'four-stroke', value: number, unit: ReadingNode['unit']) => {
+    const node = reading(chart, id)
+    return judgeReading(node, limitsOf(node, {}, demoChart(chart).library.specKeys ?? [], { class: 'chain-saw', engine }), value, unit)
+  }
+  test('80 psi is low for a two-stroke; 60 and 75 psi are normal for a small four-stroke (Basic Engine Testing; two-stroke figure from memory)', () => {
+    expect(judged('no-full-speed', 'n12', 'two-stroke', 80, 'psi')).toBe('low')
+    expect(judged('no-full-speed', 'n12', 'four-stroke', 60, 'psi')).toBe('in')
+    expect(judged('no-full-speed', 'n12', 'four-stroke', 75, 'psi')).toBe('in')
+  })
+  test('a coil gap of 0.009 in is narrow, 0.012 in is right, 0.016 in is wide (0.010 to 0.014 in, common practice)', () => {
+    expect(judged('no-full-speed', 'n15b', 'two-stroke', 0.009, 'in')).toBe('narrow')
+    expect(judged('no-full-speed', 'n15b', 'two-stroke', 0.012, 'in')).toBe('in')
+    expect(judged('no-full-speed', 'n15b', 'two-stroke', 0.016, 'in')).toBe('wide')
+  })
+  test('a plug gap of 0.020 in (TM 5-4320-259-12) and of 0.030 in (small-engine baseline, common practice) both pass where no sheet says otherwise', () => {
+    expect(judged('no-full-speed', 'n8b', 'two-stroke', 0.02, 'in')).toBe('in')
+    expect(judged('no-full-speed', 'n8b', 'two-stroke', 0.03, 'in')).toBe('in')
+  })
+  test('the cleaning air of the printed table stays under 30 psi (29 CFR 1910.242(b))', () => {
+    expect(JSON.stringify(demoChart('hard-to-start-printed').nodes.find(({ id }) => id === 'n3'))).toMatch(/under 30\u00a0psi/)
+  })
+})
+
+describe('wording', () => {
+  test('a check is one question, a step is an order', () => {
+    for (const { node, name } of demoDecisions) expect(node.title, name).toMatch(/^[A-Z][^?]*\?$/)
+    for (const { node, name } of demoNodesOf('step')) expect(node.title, name).toMatch(/^[A-Z][^?.]*$/)
+  })
+  test('outcomes are two to five, of four words at most, each its own', () => {
+    for (const { node, name } of demoDecisions) {
+      expect(node.outcomes.length, name).toBeGreaterThanOrEqual(2)
+      expect(node.outcomes.length, name).toBeLessThanOrEqual(5)
+      for (const outcome of node.outcomes) expect(wordsOf(outcome.title).length, `${name} ${outcome.title}`).toBeLessThanOrEqual(4)
+      expect(new Set(node.outcomes.map(({ title }) => title.toLowerCase())).size, name).toBe(node.outcomes.length)
+    }
+  })
+  test('what is to be done has twenty words at most', () => {
+    for (const { node, name } of demoNodes) expect(wordsOf(node.do ?? '').length, `${name} ${node.do ?? ''}`).toBeLessThanOrEqual(20)
+  })
+  test('every page of a check says what good looks like and why it is asked', () => {
+    for (const { node, name } of demoDecisions) if (node.kind !== 'proof') expect(node.good && node.why, name).toBeTruthy()
+  })
+  test('a value and its unit stay on one line', () => {
+    for (const name of chartFiles) expect(readChartFile(name)).not.toMatch(/\d (?:s|min|mm|cm|rpm|psi|ft)\b/)
+  })
+  test('what is seen is told in other words than the outcome', () => {
+    for (const { node, name } of demoDecisions) for (const { seen, title } of node.outcomes) if (seen !== undefined) expect(seen.toLowerCase(), name).not.toBe(title.toLowerCase())
+  })
+})
+
+/** Names of the nodes that a walk on such a machine can record, over all charts of the demo: nodes for other machines are passed. */
+function nodesFor(machine: (typeof demoSheets)[number]): ReadonlySet<string> {
+  const seen = new Set(demoNodesOf('start').map(({ name }) => name))
+  const recorded = new Set<string>()
+  for (const name of seen) {
+    const { chart, node } = demoNodes.find((entry) => entry.name === name) ?? raise(name)
+    const isFor = node.onlyFor?.classes?.includes(machine.class) !== false && node.onlyFor?.engines?.includes(machine.engine) !== false
+    if (!isFor) {
+      seen.add(`${chart.id}/${node.onlyFor?.otherwise ?? raise(`way past ${name}`)}`)
+      continue
+    }
+    recorded.add(name)
+    for (const edge of chart.edges) if (edge.from === node.id) seen.add(`${chart.id}/${edge.to}`)
+    if (node.kind === 'jump' && node.at !== undefined && node.chart !== undefined && demoChartSet.has(node.chart)) seen.add(`${node.chart}/${node.at}`)
+  }
+  return recorded
+}
+
+function raise(what: string): never {
+  throw new Error(`no ${what}`)
+}
