@@ -1,7 +1,7 @@
 import type { CauseId, ChartId, NodeId } from '#shared/lib/ids.ts'
 import { toDigraph, type Digraph } from './digraph.ts'
 import type { ChartDocument, ChartNode, NodeOf } from './document.ts'
-import { dominators, dominatorsOf, unreached } from './dominance.ts'
+import { commonDominators, dominators, unreached } from './dominance.ts'
 import { entryOf, indexChart, type ChartIndex } from './graph.ts'
 
 /** Several charts that a walk may cross, each indexed once. */
@@ -102,13 +102,14 @@ function pair(from: number, to: number | undefined): (readonly [number, number])
 export function mustPass(root: ChartIndex, charts: ChartSet = new Map([[root.id, root]])): ReadonlyMap<CauseId, readonly NodeId[]> {
   const { graph, nodes, numberOf } = joinCharts(charts)
   const tree = dominators(graph, root.starts.flatMap((start) => numberOf(root.id, start.id) ?? []))
-  const lists = new Map<CauseId, readonly NodeId[]>()
+  const reached = new Map<CauseId, number[]>()
   for (const node of root.nodes.values()) {
     const number = node.kind === 'cause' ? numberOf(root.id, node.id) : undefined
     if (node.kind !== 'cause' || number === undefined || tree[number] === unreached) continue
-    const passed = dominatorsOf(tree, number).flatMap((above) => (nodes[above]?.chart === root ? [nodes[above].node.id] : []))
-    const shared = new Set(passed)
-    lists.set(node.causeId, lists.get(node.causeId)?.filter((id) => shared.has(id)) ?? passed)
+    const known = reached.get(node.causeId)
+    if (known === undefined) reached.set(node.causeId, [number])
+    else known.push(number)
   }
-  return lists
+  const own = (number: number) => (nodes[number]?.chart === root ? [nodes[number].node.id] : [])
+  return new Map([...reached].map(([causeId, numbers]) => [causeId, commonDominators(tree, numbers).flatMap(own)]))
 }

@@ -75,6 +75,30 @@ export function dominatorsOf(tree: Int32Array, node: number): number[] {
 }
 
 /**
+ * What all of several nodes have among their dominators, in route order, the nodes themselves left out; unreached ones do
+ * not count. Every node of the tree is climbed over at most once, however many nodes share it.
+ */
+export function commonDominators(tree: Int32Array, nodes: readonly number[]): number[] {
+  const [first, ...others] = nodes.filter((node) => tree[node] !== unreached)
+  if (first === undefined) return []
+  const path = dominatorsOf(tree, first)
+  const meetsAt = new Map(path.map((node, place) => [node, place]))
+  let length = path.length
+  for (const node of others) {
+    const climbed: number[] = []
+    let above = tree[node] ?? entry
+    while (above >= 0 && !meetsAt.has(above)) {
+      climbed.push(above)
+      above = tree[above] ?? entry
+    }
+    const place = meetsAt.get(above) ?? -1
+    for (const passed of climbed) meetsAt.set(passed, place)
+    length = Math.min(length, place + 1)
+  }
+  return path.slice(0, length)
+}
+
+/**
  * The dominance frontier of every node: where its dominance ends, the nodes it does not strictly dominate though it
  * dominates a predecessor of theirs; ascending. Cooper, Harvey, Kennedy (2001), figure 5, the entry counting as a predecessor of the roots.
  */

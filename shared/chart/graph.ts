@@ -1,4 +1,5 @@
 import type { AccessId, CauseId, CautionId, ChartId, CheckId, NodeId, OutcomeId, ServiceItemId, SpecKeyId } from '#shared/lib/ids.ts'
+import type { EngineKind, EquipmentClass } from '#shared/trade/equipment.ts'
 import { depthFirst, toDigraph, type Digraph } from './digraph.ts'
 import type { Access, Cause, Caution, ChartDocument, ChartEdge, ChartNode, DecisionNode, NodeOf, ServiceItem, SpecKey } from './document.ts'
 
@@ -79,6 +80,12 @@ export function isDecision(node: ChartNode): node is DecisionNode {
 /** Whether a walk ends or leaves the chart at this node: cause, escalate, hold, back, and a jump that does not return. */
 export function isTerminator(node: ChartNode): boolean {
   return node.kind === 'cause' || node.kind === 'escalate' || node.kind === 'hold' || node.kind === 'back' || (node.kind === 'jump' && node.returns !== true)
+}
+
+/** Whether a node is meant for a machine; one without `onlyFor`, or with an absent list in it, is meant for any. */
+export function isForMachine(node: ChartNode, machine: { readonly class: EquipmentClass; readonly engine: EngineKind }): boolean {
+  const { classes, engines } = node.onlyFor ?? {}
+  return (classes === undefined || classes.includes(machine.class)) && (engines === undefined || engines.includes(machine.engine))
 }
 
 /** Where an outcome (or, without one, a node that has none) leads; `undefined` where no edge says so. */

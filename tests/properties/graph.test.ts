@@ -1,7 +1,7 @@
 import fc from 'fast-check'
 import { expect, test } from 'vitest'
 import { depthFirst, forwardGraph, listEdges, onCycle, reachableFrom, strongComponents, successorsOf, toDigraph, type Digraph } from '#shared/chart/digraph.ts'
-import { dominanceFrontiers, dominators, dominatorsOf, unreached } from '#shared/chart/dominance.ts'
+import { commonDominators, dominanceFrontiers, dominators, dominatorsOf, unreached } from '#shared/chart/dominance.ts'
 
 /** Small graphs with loops, parallel edges, unreachable parts and one to three roots. */
 const rooted = fc.integer({ min: 1, max: 9 }).chain((size) => {
@@ -26,6 +26,18 @@ test('dominators are the nodes without which no route leads on', () => {
         if (reached[node] !== 1) expect(tree[node]).toBe(unreached)
         else expect(dominatorsOf(tree, node).sort()).toEqual(naiveDominators(graph, roots, node).sort())
       }
+    }),
+    { numRuns: 400 },
+  )
+})
+
+test('what several nodes have in common among their dominators is what each of them has', () => {
+  fc.assert(
+    fc.property(rooted, fc.array(fc.nat(8), { minLength: 1, maxLength: 4 }), ({ graph, roots }, picks) => {
+      const tree = dominators(graph, roots)
+      const nodes = picks.map((pick) => pick % graph.size).filter((node) => tree[node] !== unreached)
+      const [first = [], ...others] = nodes.map((node) => dominatorsOf(tree, node))
+      expect(commonDominators(tree, nodes)).toEqual(first.filter((above) => others.every((list) => list.includes(above))))
     }),
     { numRuns: 400 },
   )

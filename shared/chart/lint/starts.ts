@@ -1,0 +1,86 @@
+import type { NodeId } from '#shared/lib/ids.ts'
+import { reverse, successorsOf } from '../digraph.ts'
+import type { ChartNode, DecisionNode, NodeOf, Outcome } from '../document.ts'
+import { follow, isDecision, isTerminator, successors } from '../graph.ts'
+import { nameOf, nameOfId, outcomeName, type LintContext, type Rule } from './context.ts'
+import { remark } from './remark.ts'
+
+/**
+ * From every start a walk first comes to exactly one check that reproduces the symptom. A chart that is called and comes
+ * back is spared, since its caller has reproduced it, and so is a printed table.
+ */
+export const reproducing: Rule = function* (context) {
+  const { index, chart } = context
+  if (chart.basis === 'printed-table') return
+  for (const node of index.nodes.values()) {
+    if (reproduces(node) && !node.outcomes.some((outcome) => outcome.reproduced === true))
+      yield remark('nothing-reproduced', { node: node.id }, `${nameOf(index, node)} is to reproduce the symptom, but none of its outcomes says that it did. Mark those that do.`)
+  }
+  if (chart.nodes.some((node) => node.kind === 'back')) return
+  const firsts = firstReproducing(context)
+  for (const start of index.starts) {
+    const found = firsts.get(start.id) ?? []
+    if (found.length === 0) yield remark('start-without-reproducing-check', { node: start.id }, `No check after ${nameOf(index, start)} reproduces the symptom before something is proved. Add one, and mark it as the check that reproduces.`)
+    else if (found.length > 1) yield remark('start-with-several-reproducing-checks', { node: start.id }, `After ${nameOf(index, start)} more than one check can reproduce the symptom, ${found.map((id) => nameOfId(index, id)).join(' and ')} among them. Keep the mark on one.`)
+  }
+}
+
+function reproduces(node: ChartNode): node is Exclude<DecisionNode, NodeOf<'proof'>> {
+  return (node.kind === 'check' || node.kind === 'reading') && node.reproduces === true
+}
+
+/**
+ * For every node the reproducing checks that a walk can meet first from there, two at most; a walk looks no further than
+ * such a check, a proof or a cause. Carried backwards from the checks, so that many starts cost no more than one.
+ */
+function firstReproducing({ index, graph }: LintContext): ReadonlyMap<NodeId, readonly NodeId[]> {
+  const into = reverse(graph.graph)
+  const found = new Map<NodeId, NodeId[]>()
+  const stack = [...index.nodes.values()].filter(reproduces).map((node) => ({ at: node.id, check: node.id }))
+  for (let next = stack.pop(); next !== undefined; next = stack.pop()) {
+    const { at, check } = next
+    for (const number of successorsOf(into, graph.numberOf.get(at) ?? 0)) {
+      const node = index.nodes.get(graph.ids[number] ?? at)
+      if (node === undefined || reproduces(node) || node.kind === 'proof' || node.kind === 'cause') continue
+      const known = found.get(node.id) ?? []
+      if (known.length === 2 || known.includes(check)) continue
+      found.set(node.id, [...known, check])
+      stack.push({ at: node.id, check })
+    }
+  }
+  return found
+}
+
+/** Where every answer is as it should be, the chart has found nothing: that route ends with the lead, on hold or back at the caller, never in a cause. */
+export const allGood: Rule = function* (context) {
+  const { index } = context
+  const seen = new Set<NodeId>(index.starts.map((start) => start.id))
+  for (const id of seen) {
+    const node = index.nodes.get(id)
+    if (node === undefined || isTerminator(node)) continue
+    for (const { outcome, to } of goodWays(context, node)) {
+      seen.add(to)
+      const target = index.nodes.get(to)
+      if (target?.kind !== 'cause') continue
+      const found = outcome === undefined ? '' : `, ${outcomeName(outcome)} included`
+      yield remark('all-good-route', { node: to, edge: { from: id, ...(outcome === undefined ? {} : { outcome: outcome.id }) } }, `Everything is as it should be${found}, and yet the walk ends in cause ${nameOf(index, target)}. Lead it to the lead, on hold or back instead.`)
+    }
+  }
+}
+
+/** The ways on while nothing is wrong but the symptom: reproduced, normal or serviceable, not confirmed; past nodes for other machines. */
+function goodWays({ index }: LintContext, node: ChartNode): readonly { readonly outcome?: Outcome; readonly to: NodeId }[] {
+  if (!isDecision(node)) return successors(index, node).map((to) => ({ to }))
+  const good = node.outcomes.filter((outcome) => {
+    if (node.kind === 'proof') return outcome.confirms !== true
+    return reproduces(node) ? outcome.reproduced === true : outcome.normal === true || outcome.serviceable === true
+  })
+  const passed = node.onlyFor?.otherwise
+  return [
+    ...good.flatMap((outcome) => {
+      const to = follow(index, node.id, outcome.id)
+      return to === undefined ? [] : [{ outcome, to }]
+    }),
+    ...(passed === undefined ? [] : [{ to: passed }]),
+  ]
+}
