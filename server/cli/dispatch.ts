@@ -9,6 +9,7 @@ import type { Io, Verb, VerbTable } from './verb.ts'
  * configuration. The verbs of the last group stand alone (`create-owner`) and go through the lock of the data folder.
  */
 const groups: Readonly<Record<string, () => Promise<VerbTable>>> = {
+  chart: async () => (await import('./chart.ts')).chartVerbs,
 }
 const loadShopVerbs = async (): Promise<VerbTable> => ({})
 
