@@ -19,6 +19,7 @@ import {
 } from '#shared/lib/ids.ts'
 import { engineKinds, equipmentClasses } from '#shared/trade/equipment.ts'
 import { specLimitSchema, specLimitsSchema, unitSchema } from '#shared/units/limits.ts'
+import { refusalWords } from './refusals.ts'
 
 /** Most that a note may hold, in bytes of UTF-8. */
 export const noteMaxBytes = 10_000
@@ -35,7 +36,7 @@ function utf8Length(text: string): number {
   return bytes
 }
 
-const note = z.string().refine((text) => utf8Length(text) <= noteMaxBytes, 'A note holds at most 10 kB. Shorten it, or split it into two notes.')
+const note = z.string().refine((text) => utf8Length(text) <= noteMaxBytes, refusalWords['note-too-long'])
 const filledNote = note.refine((text) => text.trim() !== '', 'Write a word.')
 const word = z.string().trim().min(1, 'Write a word.').max(200, 'At most 200 characters.')
 const seconds = z.number().min(0).max(86_400 * 30)

@@ -1,11 +1,11 @@
-import type { Cause, ChartNode, ReadingNode } from '#shared/chart/document.ts'
+import type { Cause, ChartNode } from '#shared/chart/document.ts'
 import type { AccessId, CauseId, CautionId, ChartId, EventId, NodeId, OutcomeId, PhotoId, Place, QuestionId, SafetyPartId, ServiceItemId } from '#shared/lib/ids.ts'
 import type { RunListItem } from '#shared/trade/hand-back-run.ts'
 import type { Harm, SignalWord } from '#shared/trade/signal-words.ts'
 import type { SpecLimit } from '#shared/units/limits.ts'
-import type { Quantity, Unit } from '#shared/units/quantities.ts'
-import type { Answer, Repair, RuledOut, Trigger, WalkResult } from './state.ts'
 import type { RunItem } from './events.ts'
+import type { Judging } from './judging.ts'
+import type { Answer, Repair, RuledOut, Trigger, WalkResult } from './state.ts'
 
 /** A node as pages, knots and the review name it. */
 export interface NodeName {
@@ -87,7 +87,7 @@ export interface OfferedAnswer {
   readonly eventId: EventId
   readonly answer: Answer
   readonly title: string
-  readonly from: 'noticed' | 'stepped-back' | 'other-check'
+  readonly from: 'noticed' | 'stepped-back'
   readonly at: string
   readonly note: string | null
 }
@@ -103,25 +103,6 @@ export interface NoAnswer {
   readonly ifSkipped: IfSkipped | null
   /** Whether "could not reproduce" ends the walk here, at the check that reproduces. */
   readonly endsWalk: boolean
-}
-
-/**
- * How values are judged: hand it, with the values so far, to `judgeTries`. On a proof the limits are those of the reading that it compares
- * with, and the verdict is one of the proof's own outcomes.
- */
-export interface Judging {
-  readonly reading: ReadingNode
-  readonly quantity: Quantity
-  readonly unit: Unit
-  /** The limits in force; `null` when nobody knows them: then the person picks the outcome. */
-  readonly limits: SpecLimit | null
-  readonly repeat: ReadingNode['repeat'] | null
-  readonly proof: {
-    readonly confirmsWhen: readonly OutcomeId[]
-    readonly confirming: OutcomeId
-    /** The outcome of any other value, where there is only one. */
-    readonly refuting: OutcomeId | null
-  } | null
 }
 
 /** What every page to be answered shows. */

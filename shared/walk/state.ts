@@ -223,7 +223,7 @@ export interface WalkRecord {
   readonly metal: Metal
   readonly cautionsRead: Readonly<Record<CautionId, CautionRead>>
   /** The event at which a trigger last changed. */
-  readonly changedAt: Readonly<Record<Trigger, number>>
+  readonly changedAt: { readonly [trigger in Trigger]?: number }
 
   /** Bench minutes used: the chart's minutes of what was recorded, each opening with its closing charged once. Never falls. */
   readonly minutesUsed: number
