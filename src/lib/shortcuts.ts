@@ -39,7 +39,8 @@ function isWriting(target: EventTarget | null): boolean {
 function onKeyDown(event: KeyboardEvent): void {
   if (!areOn || event.defaultPrevented || event.repeat || event.isComposing) return
   if (event.ctrlKey || event.altKey || event.metaKey || isWriting(event.target)) return
-  if (document.querySelector('[aria-modal="true"]') !== null) return
+  // A dialog covers the page, and with it the page's keys.
+  if (document.querySelector('[role="dialog"], [role="alertdialog"]') !== null) return
   const key = event.key.length === 1 ? event.key.toLowerCase() : event.key
   // The youngest wins: what lies on top of a page answers before the page.
   const entry = [...entries].reverse().find((each) => each.key === key)

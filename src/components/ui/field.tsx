@@ -92,13 +92,12 @@ export function PasswordField({ label, hint, error, id: ownId, className = '', .
         />
         <button
           type="button"
-          aria-pressed={isShown}
+          aria-label={`${isShown ? 'Hide' : 'Show'} ${label.toLowerCase()}`}
           aria-controls={id}
           onClick={() => setShown((shown) => !shown)}
           className="-ml-(--rule-width) min-h-(--control) min-w-18 rounded-r-control border border-rule bg-card px-3 text-small font-medium text-cord hover:border-ink focus-visible:z-1"
         >
           {isShown ? 'Hide' : 'Show'}
-          <span className="for-ears"> {label.toLowerCase()}</span>
         </button>
       </div>
     </FieldFrame>

@@ -92,8 +92,8 @@ export function PeopleSheet({ people, ownId }: { readonly people: readonly Perso
               cell: ({ id, name }) => {
                 const isOpen = opened.what === 'person' && opened.id === id
                 return (
-                  <Button aria-expanded={isOpen} onClick={() => setOpened(isOpen ? nothing : { what: 'person', id })}>
-                    Change<span className="for-ears"> {name}</span>
+                  <Button aria-label={`Change ${name}`} aria-expanded={isOpen} onClick={() => setOpened(isOpen ? nothing : { what: 'person', id })}>
+                    Change
                   </Button>
                 )
               },
