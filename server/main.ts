@@ -1,0 +1,153 @@
+import { createServer } from 'node:http'
+import type { Server } from 'node:http'
+import { isIP } from 'node:net'
+
+import { holdFolder } from './db/folder-lock.ts'
+import type { FolderHold } from './db/folder-lock.ts'
+import { parseEnvironment } from './lib/config.ts'
+import type { Environment } from './lib/config.ts'
+import { createLog } from './lib/log.ts'
+import { StartRefusal } from './lib/start-refusal.ts'
+import type { OpenShop } from './open-shop.ts'
+
+/** How long requests may take to end, and then the database to close, before the process ends all the same. */
+const deadlineMs = { requests: 5_000, database: 8_000 }
+
+const isDev = process.argv.includes('--dev')
+// At a terminal people read; elsewhere programs do, and want every request.
+const log = createLog({ level: process.stderr.isTTY ? 'warn' : 'info' })
+const say = (words: string): void => void process.stdout.write(`${words}\n`)
+
+process.on('unhandledRejection', (error) => log.error({ err: error }, 'a promise was rejected and nobody looked'))
+process.on('uncaughtException', (error) => log.error({ err: error }, 'an error that nobody caught'))
+
+type Running = { readonly server: Server; readonly shop: OpenShop; readonly hold: FolderHold | null }
+
+/** What is running, or null when the start was refused; a signal that comes meanwhile waits for it. */
+const started: Promise<Running | null> = start().catch((error: unknown) => {
+  if (error instanceof StartRefusal) process.stderr.write(`${error.message}\n`)
+  else log.fatal({ err: error }, 'the start failed')
+  process.exitCode = 1
+  return null
+})
+
+let isStopping = false
+for (const signal of ['SIGTERM', 'SIGINT'] as const) {
+  process.on(signal, () => {
+    if (isStopping) process.exit(1) // Asked twice: at once. What was acknowledged is stored.
+    isStopping = true
+    void started.then((running) => running && stop(running, `Stopping (${signal})`, 0))
+  })
+}
+const running = await started
+if (running === null) process.exit()
+void running.shop.lost.then((error) => {
+  if (isStopping) return
+  isStopping = true
+  log.fatal({ err: error }, 'the database stopped')
+  return stop(running, 'The database stopped by itself. Everything that was acknowledged is stored; start again.', 1)
+})
+
+async function start(): Promise<Running> {
+  const environment = readEnvironment()
+  const hold = environment.databaseUrl === null ? await holdFolder(environment.dataFolder, 'server') : null
+  // Only now what takes time to load: somebody who finds the folder taken hears so at once.
+  const { openShop } = await import('./open-shop.ts')
+  try {
+    const shop = await openShop({ environment, hold, log, say })
+    const server = await serveShop(shop, environment)
+    return { server, shop, hold }
+  } catch (error) {
+    await hold?.release()
+    throw error
+  }
+}
+
+async function serveShop(shop: OpenShop, environment: Environment): Promise<Server> {
+  try {
+    await loadDemoWhenNew(shop)
+    const server = await serve(shop, environment)
+    await welcome(shop, server)
+    return server
+  } catch (error) {
+    await shop.close()
+    throw error
+  }
+}
+
+function readEnvironment(): Environment {
+  const read = parseEnvironment(process.env)
+  if (read.ok) return read.value
+  throw new StartRefusal(['The environment has wrong values; nothing was changed.', ...read.error.map((fault) => `- ${fault}`)].join('\n'))
+}
+
+async function loadDemoWhenNew({ deps, isUntouched }: OpenShop): Promise<void> {
+  if (!deps.config.demo || !isUntouched) return
+  say('Loading the demo shop')
+  const { loadDemo } = await import('#seeds-demo/load-demo.ts')
+  await loadDemo(deps)
+}
+
+async function serve({ deps }: OpenShop, { host, port }: Environment): Promise<Server> {
+  const { createApp } = await import('./app.ts')
+  const server = createServer()
+  const devPages = isDev ? await (await import('./dev-pages.ts')).createDevPages(server) : null
+  server.on('request', createApp(deps, devPages === null ? {} : { devPages }))
+  await new Promise<void>((resolve, reject) => {
+    server.once('error', (error) => reject(toListenRefusal(error, host, port)))
+    server.listen(port, host, resolve)
+  })
+  return server
+}
+
+function toListenRefusal(error: NodeJS.ErrnoException, host: string, port: number): unknown {
+  if (error.code === 'EADDRINUSE') return new StartRefusal(`Port ${port} on ${host} is in use by another program. Stop that one, or name another port: PORT=${port + 1} npm start`)
+  if (error.code === 'EACCES') return new StartRefusal(`This user may not listen on port ${port}. Name one from 1024 up, for example PORT=3000.`)
+  if (error.code === 'EADDRNOTAVAIL' || error.code === 'ENOTFOUND') return new StartRefusal(`This machine has no address ${host}. Correct HOST; 0.0.0.0 means all that it has.`)
+  return error
+}
+
+/** Says where the shop is and how to get in. */
+async function welcome({ deps }: OpenShop, server: Server): Promise<void> {
+  const { config } = deps
+  say(`\nPullcord is ready at ${toOpenAddress(server, config.publicUrl)}`)
+  if (config.demo && !config.isProduction) {
+    const { demoSignIns } = await import('./services/demo-sign-ins.ts')
+    say('This is the demo shop. Sign in as')
+    for (const { role, name, email, password } of demoSignIns) say(`  ${role.padEnd(7)} ${name.padEnd(16)} ${email.padEnd(28)} ${password}`)
+    say('A shop of your own: PULLCORD_DATA=./shop DEMO=0 npm start')
+  } else {
+    const { makeOwnerCode } = await import('./services/first-owner.ts')
+    const owner = await makeOwnerCode(deps)
+    if (owner) say(`This shop has no owner yet. Open the address above and enter this code, good once, until ${owner.expiresAt.toISOString()}:\n  ${owner.code}`)
+  }
+  if (config.publicUrl.startsWith('http:') && !isLoopback(config.host)) say('Other devices reach this over plain http: entries and passwords can be read on the way. Use it in a network that you trust.')
+  say('Ctrl-C stops it.')
+}
+
+/** The address to open; with PORT=0 the system has picked the port only now. */
+function toOpenAddress(server: Server, publicUrl: string): string {
+  const url = new URL(publicUrl)
+  const address = server.address()
+  if (url.port === '0' && address !== null && typeof address === 'object') url.port = String(address.port)
+  return url.origin
+}
+
+function isLoopback(host: string): boolean {
+  return host === 'localhost' || host === '::1' || (isIP(host) === 4 && host.startsWith('127.'))
+}
+
+/** Takes no more requests, lets those under way end, closes the database, lets go of the folder. */
+async function stop({ server, shop, hold }: Running, words: string, status: number): Promise<void> {
+  say(words)
+  const timer = setTimeout(() => server.closeAllConnections(), deadlineMs.requests)
+  await new Promise<void>((resolve) => {
+    server.close(() => resolve())
+    server.closeIdleConnections()
+  })
+  clearTimeout(timer)
+  await shop.close(deadlineMs.database)
+  await hold?.release()
+  if (status === 0) say('Stopped. Everything is stored.')
+  process.exit(status)
+}
