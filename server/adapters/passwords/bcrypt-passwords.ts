@@ -11,7 +11,7 @@ type Waiter = { readonly resolve: (answer: string | boolean) => void; readonly r
 
 /**
  * Passwords hashed by bcrypt in a worker thread, one after the other, so that no request waits for another one's hash. The thread
- * starts with the first password and does not keep the process alive. `cost` is the work factor: each step doubles the time.
+ * starts with the first password, and keeps the process alive only while somebody waits for it. `cost` is the work factor: each step doubles the time.
  */
 export function createBcryptPasswords(cost: number): Passwords {
   const waiting = new Map<number, Waiter>()
@@ -27,10 +27,10 @@ export function createBcryptPasswords(cost: number): Passwords {
   const getWorker = (): Worker => {
     if (worker !== null) return worker
     const started = startWorker(new URL('./bcrypt-worker.ts', import.meta.url), null)
-    started.unref()
     started.on('message', (reply: BcryptReply) => {
       const waiter = waiting.get(reply.number)
       waiting.delete(reply.number)
+      if (waiting.size === 0) started.unref()
       if ('answer' in reply) waiter?.resolve(reply.answer)
       else waiter?.reject(new Error(reply.fault))
     })
@@ -47,7 +47,9 @@ export function createBcryptPasswords(cost: number): Passwords {
     return new Promise((resolve, reject) => {
       lastNumber += 1
       waiting.set(lastNumber, { resolve, reject })
-      getWorker().postMessage({ ...order, number: lastNumber })
+      const thread = getWorker()
+      thread.ref()
+      thread.postMessage({ ...order, number: lastNumber })
     })
   }
 
