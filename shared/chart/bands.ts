@@ -20,17 +20,20 @@ export function bandFaults(bands: readonly Band[], limits: ChartLimits | undefin
   const scale = scaleOf(bands, limits)
   const spans = scale === undefined ? undefined : spansOf(bands, scale)
   if (spans === undefined) return undefined
-  return cellsOf(spans, nonNegative && usesNumbers(bands, limits)).flatMap((cell) => {
-    const inside = spans.filter((span) => span.from.at <= cell.from && cell.to <= span.to.at && holdsPoint(span, cell))
-    if (inside.length === 1) return []
-    return [{ kind: inside.length === 0 ? 'gap' : 'overlap', where: cell.words, outcomes: inside.map((span) => span.outcome) } as const]
-  })
+  const runs: { cells: Cell[]; outcomes: readonly string[] }[] = []
+  for (const cell of cellsOf(spans, nonNegative && usesNumbers(bands, limits))) {
+    const outcomes = spans.filter((span) => holds(span, cell)).map((span) => span.outcome)
+    const run = runs.at(-1)
+    if (run !== undefined && run.outcomes.join(' ') === outcomes.join(' ')) run.cells.push(cell)
+    else runs.push({ cells: [cell], outcomes })
+  }
+  return runs.flatMap(({ cells, outcomes }) => (outcomes.length === 1 ? [] : [{ kind: outcomes.length === 0 ? 'gap' : 'overlap', where: whereWords(cells), outcomes } as const]))
 }
 
 type Span = { readonly from: End; readonly fromIncluded: boolean; readonly to: End; readonly toIncluded: boolean; readonly outcome: string }
 
 /** A stretch of values that no end of a band cuts: a single point (`from` = `to`), or what lies between two points. */
-type Cell = { readonly from: number; readonly to: number; readonly words: string }
+type Cell = { readonly from: End; readonly to: End }
 
 function usesNumbers(bands: readonly Band[], limits: ChartLimits | undefined): boolean {
   return (limits !== undefined && !('spec' in limits) && !('as' in limits)) || bands.some((band) => typeof band.from === 'number' || typeof band.to === 'number')
@@ -65,21 +68,31 @@ function spansOf(bands: readonly Band[], scale: Scale): readonly Span[] | undefi
 }
 
 function cellsOf(spans: readonly Span[], startsAtZero: boolean): readonly Cell[] {
-  const points = new Map(spans.flatMap((span) => [span.from, span.to]).flatMap((end) => (Number.isFinite(end.at) ? [[end.at, end.words] as const] : [])))
-  const ends = [...points].sort(([left], [right]) => left - right)
+  const points = new Map(spans.flatMap((span) => [span.from, span.to]).map((end) => [end.at, end]))
+  points.delete(-Infinity)
+  points.delete(Infinity)
   const cells: Cell[] = []
-  let below: readonly [at: number, words: string] | undefined
-  for (const [at, words] of ends) {
-    if (below !== undefined) cells.push({ from: below[0], to: at, words: `between ${below[1]} and ${words}` })
-    else if (!(startsAtZero && at === 0)) cells.push({ from: -Infinity, to: at, words: `below ${words}` })
-    cells.push({ from: at, to: at, words: `at ${words}` })
-    below = [at, words]
+  let below = lower(undefined)
+  for (const end of [...points.values()].sort((left, right) => left.at - right.at)) {
+    if (!(startsAtZero && end.at === 0 && cells.length === 0)) cells.push({ from: below, to: end })
+    cells.push({ from: end, to: end })
+    below = end
   }
-  cells.push({ from: below?.[0] ?? -Infinity, to: Infinity, words: below === undefined ? 'everywhere' : `above ${below[1]}` })
-  return cells
+  return [...cells, { from: below, to: upper(undefined) }]
 }
 
-function holdsPoint(span: Span, cell: Cell): boolean {
-  if (cell.from !== cell.to) return span.from.at < span.to.at
-  return (span.from.at < cell.from || span.fromIncluded) && (cell.to < span.to.at || span.toIncluded)
+function holds(span: Span, cell: Cell): boolean {
+  if (cell.from.at !== cell.to.at) return span.from.at <= cell.from.at && cell.to.at <= span.to.at
+  const { at } = cell.from
+  return (span.from.at < at || (span.from.at === at && span.fromIncluded)) && (at < span.to.at || (at === span.to.at && span.toIncluded))
+}
+
+function whereWords(cells: readonly Cell[]): string {
+  const from = cells[0]?.from ?? lower(undefined)
+  const to = cells.at(-1)?.to ?? upper(undefined)
+  const isOpen = cells.length === 1
+  if (from.at === to.at) return `at ${from.words}`
+  if (from.at === -Infinity) return to.at === Infinity ? 'everywhere' : `${isOpen ? 'below' : 'up to'} ${to.words}`
+  if (to.at === Infinity) return `${isOpen ? 'above' : 'from'} ${from.words}${isOpen ? '' : ' up'}`
+  return `${isOpen ? 'between' : 'from'} ${from.words} ${isOpen ? 'and' : 'to'} ${to.words}`
 }

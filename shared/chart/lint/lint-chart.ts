@@ -30,8 +30,8 @@ export function lintChart(index: ChartIndex, options: LintOptions = {}): Remark[
   const context = lintContext(index, options.others ?? (() => undefined))
   const rules: readonly Rule[] = [
     uniqueIds,
-    edges,
     reachability,
+    edges,
     ends,
     onlyFor,
     silentRings,

@@ -1,7 +1,7 @@
 import type { NodeId } from '#shared/lib/ids.ts'
-import { reverse, successorsOf } from '../digraph.ts'
+import { successorsOf, toDigraph } from '../digraph.ts'
 import type { ChartNode, DecisionNode, NodeOf, Outcome } from '../document.ts'
-import { follow, isDecision, isTerminator, successors } from '../graph.ts'
+import { follow, isDecision, isTerminator, successors, type ChartIndex } from '../graph.ts'
 import { nameOf, nameOfId, outcomeName, type LintContext, type Rule } from './context.ts'
 import { remark } from './remark.ts'
 
@@ -30,25 +30,30 @@ function reproduces(node: ChartNode): node is Exclude<DecisionNode, NodeOf<'proo
 }
 
 /**
- * For every node the reproducing checks that a walk can meet first from there, two at most; a walk looks no further than
- * such a check, a proof or a cause. Carried backwards from the checks, so that many starts cost no more than one.
+ * For every node the reproducing checks that a walk can meet from there before a proof or a cause, two at most. Behind a
+ * reproducing check only what was reproduced counts: what it does instead may be another start's symptom. Carried
+ * backwards from the checks, so that many starts cost no more than one.
  */
 function firstReproducing({ index, graph }: LintContext): ReadonlyMap<NodeId, readonly NodeId[]> {
-  const into = reverse(graph.graph)
+  const edges = graph.ids.flatMap((id, from) => leadingOn(index, id).flatMap((to) => (graph.numberOf.has(to) ? [[graph.numberOf.get(to) ?? 0, from] as const] : [])))
+  const backwards = toDigraph(graph.ids.length, edges)
   const found = new Map<NodeId, NodeId[]>()
   const stack = [...index.nodes.values()].filter(reproduces).map((node) => ({ at: node.id, check: node.id }))
   for (let next = stack.pop(); next !== undefined; next = stack.pop()) {
     const { at, check } = next
-    for (const number of successorsOf(into, graph.numberOf.get(at) ?? 0)) {
-      const node = index.nodes.get(graph.ids[number] ?? at)
-      if (node === undefined || reproduces(node) || node.kind === 'proof' || node.kind === 'cause') continue
-      const known = found.get(node.id) ?? []
-      if (known.length === 2 || known.includes(check)) continue
-      found.set(node.id, [...known, check])
-      stack.push({ at: node.id, check })
-    }
+    const known = found.get(at) ?? []
+    if (known.length === 2 || known.includes(check)) continue
+    found.set(at, [...known, check])
+    for (const number of successorsOf(backwards, graph.numberOf.get(at) ?? 0)) stack.push({ at: graph.ids[number] ?? at, check })
   }
   return found
+}
+
+function leadingOn(index: ChartIndex, id: NodeId): readonly NodeId[] {
+  const node = index.nodes.get(id)
+  if (node === undefined || node.kind === 'proof' || node.kind === 'cause') return []
+  if (!reproduces(node)) return successors(index, node)
+  return node.outcomes.filter((outcome) => outcome.reproduced === true).flatMap((outcome) => follow(index, id, outcome.id) ?? [])
 }
 
 /** Where every answer is as it should be, the chart has found nothing: that route ends with the lead, on hold or back at the caller, never in a cause. */
