@@ -41,6 +41,8 @@ interface Definition<C extends Contract, A extends Access> {
   readonly status?: 200 | 201
   /** Largest body in bytes. */
   readonly bodyMaxBytes?: number
+  /** Whether a write has to name the state that it changes. */
+  readonly needsIfMatch?: boolean
   /** Refusals beyond those that any endpoint of its form can give. */
   readonly problems?: readonly ProblemCode[]
   readonly run: (deps: Deps, call: Call<C, A>) => Promise<z.input<C['response']>>

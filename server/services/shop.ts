@@ -42,3 +42,8 @@ export async function readShopName(db: Db): Promise<string> {
   const [shop = newShop] = await db.select({ name: shops.name }).from(shops).where(eq(shops.id, 1))
   return shop.name
 }
+
+/** Whether anybody has set anything up here. */
+export async function isSetUp(db: Db): Promise<boolean> {
+  return (await db.$count(shops)) > 0 || (await db.$count(people)) > 0
+}

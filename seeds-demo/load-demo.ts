@@ -1,0 +1,31 @@
+import { readFileSync } from 'node:fs'
+import { join } from 'node:path'
+import { z } from 'zod'
+import { modelSchema } from '#shared/api/models.ts'
+import { createShop, isSetUp } from '#server/services/shop.ts'
+import { addModels } from '#server/services/library.ts'
+import { addDemoPeople } from './demo-people.ts'
+import { publishDemoCharts } from './demo-charts.ts'
+
+/** What services are handed. */
+export type Deps = Parameters<typeof createShop>[1]
+
+/**
+ * Loads the demo shop into an empty database, all or nothing, by the same services as people use. A database that holds anything is
+ * left as it is.
+ */
+export async function loadDemo(deps: Deps): Promise<void> {
+  if (deps.config.isProduction) throw new Error('The demo shop has sign-ins that everybody knows: it is not loaded with NODE_ENV=production.')
+  await deps.db.transaction(async (tx) => {
+    if (await isSetUp(tx)) return
+    const inside = { ...deps, db: tx }
+    await createShop(tx, inside, { name: 'Alder Row Small Engines', isDemo: true })
+    const people = await addDemoPeople(inside)
+    await publishDemoCharts(inside, people.lead)
+    await addModels(inside, readModels())
+  })
+}
+
+function readModels() {
+  return z.array(modelSchema).parse(JSON.parse(readFileSync(join(import.meta.dirname, 'models.json'), 'utf8')))
+}
