@@ -26,7 +26,9 @@ export const peopleQueries = {
 
 function showPerson(client: QueryClient, person: Person): void {
   client.setQueryData(peopleQueries.list().queryKey, (old) =>
-    old === undefined ? old : { people: old.people.some(({ id }) => id === person.id) ? old.people.map((each) => (each.id === person.id ? person : each)) : [...old.people, person] },
+    old === undefined
+      ? old
+      : { people: old.people.some(({ id }) => id === person.id) ? old.people.map((each) => (each.id === person.id ? person : each)) : [...old.people, person] },
   )
 }
 

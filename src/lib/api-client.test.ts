@@ -12,7 +12,10 @@ function answerWith(status: number, body: string): ReturnType<typeof vi.fn> {
 }
 
 async function problemOf(promise: Promise<unknown>): Promise<ProblemError> {
-  const error: unknown = await promise.then(() => null, (reason: unknown) => reason)
+  const error: unknown = await promise.then(
+    () => null,
+    (reason: unknown) => reason,
+  )
   if (!(error instanceof ProblemError)) throw new Error('nothing was refused')
   return error
 }
@@ -34,9 +37,23 @@ test('what is sent is JSON from the same origin, and what comes back is what the
 })
 
 test('a refusal keeps its code, its words and the places that it names', async () => {
-  answerWith(409, JSON.stringify({ title: 'Taken', status: 409, code: 'e-mail-taken', detail: 'Somebody has it.', errors: [{ pointer: '#/email', detail: 'Taken.' }, 'junk'] }))
+  answerWith(
+    409,
+    JSON.stringify({
+      title: 'Taken',
+      status: 409,
+      code: 'e-mail-taken',
+      detail: 'Somebody has it.',
+      errors: [{ pointer: '#/email', detail: 'Taken.' }, 'junk'],
+    }),
+  )
   const problem = await problemOf(request('/api/x', contract))
-  expect([problem.status, problem.code, problem.message, problem.errors]).toEqual([409, 'e-mail-taken', 'Somebody has it.', [{ pointer: '#/email', detail: 'Taken.' }]])
+  expect([problem.status, problem.code, problem.message, problem.errors]).toEqual([
+    409,
+    'e-mail-taken',
+    'Somebody has it.',
+    [{ pointer: '#/email', detail: 'Taken.' }],
+  ])
 })
 
 test.each([['<html>gateway</html>'], [''], ['null'], ['[]'], ['{"detail":7}']])('an error that is no problem document (%s) still has words', async (body) => {

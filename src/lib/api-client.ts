@@ -41,7 +41,11 @@ export async function request<T>(path: string, contract: Contract<T>, init: Requ
   if (!response.ok) throw refuse(response.status, body, path, init)
   const parsed = contract.safeParse(body)
   if (!parsed.success) {
-    throw new ProblemError(response.status, 'unexpected-answer', 'The server answered in a form that this page does not know. Nothing was lost: load the page again.')
+    throw new ProblemError(
+      response.status,
+      'unexpected-answer',
+      'The server answered in a form that this page does not know. Nothing was lost: load the page again.',
+    )
   }
   return parsed.data
 }
@@ -88,6 +92,11 @@ function readProblem(status: number, body: unknown): ProblemError {
 
 function isFieldProblem(value: unknown): value is FieldProblem {
   return (
-    typeof value === 'object' && value !== null && 'pointer' in value && typeof value.pointer === 'string' && 'detail' in value && typeof value.detail === 'string'
+    typeof value === 'object' &&
+    value !== null &&
+    'pointer' in value &&
+    typeof value.pointer === 'string' &&
+    'detail' in value &&
+    typeof value.detail === 'string'
   )
 }

@@ -58,7 +58,12 @@ test('a key with Ctrl, Alt or Meta belongs to the browser', async () => {
 
 test('while a dialog covers the page, the page’s keys rest', async () => {
   const user = userEvent.setup()
-  render(<><Bench /><div role="dialog" aria-label="Keys" /></>)
+  render(
+    <>
+      <Bench />
+      <div role="dialog" aria-label="Keys" />
+    </>,
+  )
   await user.keyboard('1')
   expect(screen.getByRole('status')).toHaveTextContent('0')
 })
@@ -76,10 +81,19 @@ test('all single keys can be switched off', async () => {
 
 test('what came last answers first, and a page that is gone answers no more', async () => {
   const user = userEvent.setup()
-  const { rerender, unmount } = render(<><Bench /><OnTop /></>)
+  const { rerender, unmount } = render(
+    <>
+      <Bench />
+      <OnTop />
+    </>,
+  )
   await user.keyboard('1')
   expect(screen.getByRole('status')).toHaveTextContent('0')
-  rerender(<><Bench /></>)
+  rerender(
+    <>
+      <Bench />
+    </>,
+  )
   await user.keyboard('1')
   expect(screen.getByRole('status')).toHaveTextContent('1')
   unmount()

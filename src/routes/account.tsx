@@ -40,7 +40,11 @@ export function Component() {
         </RuledSection>
         <RuledSection title="Where you are signed in">
           {sessions.isPending && <Placeholder />}
-          {sessions.isError && <Notice state="bad" title="The list could not be read" className="mt-4">{toWords(sessions.error)}</Notice>}
+          {sessions.isError && (
+            <Notice state="bad" title="The list could not be read" className="mt-4">
+              {toWords(sessions.error)}
+            </Notice>
+          )}
           {sessions.isSuccess && <SessionList sessions={sessions.data.sessions} />}
         </RuledSection>
       </div>

@@ -24,7 +24,11 @@ export function Component() {
   return (
     <AppShell surface="People">
       {people.isPending && <Placeholder rows={4} />}
-      {people.isError && <Notice state="bad" title="The list could not be read" className="mt-6">{toWords(people.error)}</Notice>}
+      {people.isError && (
+        <Notice state="bad" title="The list could not be read" className="mt-6">
+          {toWords(people.error)}
+        </Notice>
+      )}
       {people.isSuccess && <PeopleSheet people={people.data.people} ownId={person.id} />}
     </AppShell>
   )

@@ -18,7 +18,9 @@ export function RootError() {
     <QuietPage over="Pullcord" title={isSilence ? 'The server does not answer' : 'This page could not be shown'} knot="escalate">
       <p role="alert" className="max-w-words">
         {error instanceof ProblemError && !isSilence ? error.message : 'What was recorded before is safe on the server.'}{' '}
-        {isSilence ? 'See whether it runs and whether this device is in its network, then try again.' : 'Load the page again; if it stays like this, tell whoever runs the server.'}
+        {isSilence
+          ? 'See whether it runs and whether this device is in its network, then try again.'
+          : 'Load the page again; if it stays like this, tell whoever runs the server.'}
       </p>
       <p className="mt-6 flex flex-wrap items-center gap-4">
         <Button look="primary" onClick={() => window.location.reload()}>

@@ -13,12 +13,7 @@ export function Component() {
   const session = useSession().data
   const demoSignIns = session?.demoSignIns ?? []
   return (
-    <QuietPage
-      over={session?.shop.name ?? 'Pullcord'}
-      title="Sign in"
-      beside={<HowAWalkGoes />}
-      banner={demoSignIns.length > 0 && <DemoBanner />}
-    >
+    <QuietPage over={session?.shop.name ?? 'Pullcord'} title="Sign in" beside={<HowAWalkGoes />} banner={demoSignIns.length > 0 && <DemoBanner />}>
       <SignInForm demoSignIns={demoSignIns} onSignedIn={() => void navigate(toLocalPath(search.get('next')), { replace: true })} />
     </QuietPage>
   )

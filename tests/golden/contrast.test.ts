@@ -152,7 +152,9 @@ describe('in every theme', () => {
 
   test('strong is black and white and nothing between', () => {
     for (const theme of ['strong', 'strong-dark'] as const) {
-      const used = Object.entries(themes[theme]).filter(([name]) => !name.endsWith('-strip')).map(([, colour]) => colour)
+      const used = Object.entries(themes[theme])
+        .filter(([name]) => !name.endsWith('-strip'))
+        .map(([, colour]) => colour)
       expect([...new Set(used)].toSorted()).toEqual(['#000000', '#ffffff'])
     }
   })

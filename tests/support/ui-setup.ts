@@ -17,4 +17,11 @@ globalThis.ResizeObserver ??= class {
   disconnect(): void {}
 }
 window.matchMedia ??= (query) =>
-  ({ matches: false, media: query, onchange: null, addEventListener: () => undefined, removeEventListener: () => undefined, dispatchEvent: () => false }) as unknown as MediaQueryList
+  ({
+    matches: false,
+    media: query,
+    onchange: null,
+    addEventListener: () => undefined,
+    removeEventListener: () => undefined,
+    dispatchEvent: () => false,
+  }) as unknown as MediaQueryList

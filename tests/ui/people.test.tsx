@@ -12,7 +12,16 @@ const expiresAt = '2999-01-01T00:00:00.000Z'
 const url = 'http://127.0.0.1:3000/link/one-time-token'
 
 function buildPerson(number: number, more: Partial<Person> = {}): Person {
-  return { id: personId(number), name: `Person ${number}`, email: `p${number}@shop.example`, role: 'junior', status: 'active', linkExpiresAt: null, lastSeenAt: null, ...more }
+  return {
+    id: personId(number),
+    name: `Person ${number}`,
+    email: `p${number}@shop.example`,
+    role: 'junior',
+    status: 'active',
+    linkExpiresAt: null,
+    lastSeenAt: null,
+    ...more,
+  }
 }
 
 function shopWith(people: Person[], more: readonly FakeEndpoint[] = []) {
@@ -44,7 +53,11 @@ function shopWith(people: Person[], more: readonly FakeEndpoint[] = []) {
 const owner = buildPerson(1, { name: 'Ines Okafor', role: 'owner' })
 
 test('the owner reads who is in the shop, in which role, and where they stand', async () => {
-  shopWith([owner, buildPerson(4, { name: 'Jo Lind', status: 'invited', linkExpiresAt: expiresAt }), buildPerson(5, { name: 'Old Hand', status: 'deactivated' })])
+  shopWith([
+    owner,
+    buildPerson(4, { name: 'Jo Lind', status: 'invited', linkExpiresAt: expiresAt }),
+    buildPerson(5, { name: 'Old Hand', status: 'deactivated' }),
+  ])
   renderApp('/people')
   const table = await screen.findByRole('table', { name: 'People of the shop' })
   expect(within(table).getByRole('row', { name: /Ines Okafor \(you\).*Shop owner.*active/ })).toBeVisible()
@@ -55,7 +68,14 @@ test('the owner reads who is in the shop, in which role, and where they stand', 
 test('adding a person shows the one-time link once, and it goes when it was handed over', async () => {
   shopWith(
     [owner],
-    [{ method: 'POST', path: '/api/people', contract: addPerson, answer: () => ok({ person: buildPerson(6, { name: 'Jo Lind', status: 'invited', linkExpiresAt: expiresAt }), link: { url, expiresAt } }) }],
+    [
+      {
+        method: 'POST',
+        path: '/api/people',
+        contract: addPerson,
+        answer: () => ok({ person: buildPerson(6, { name: 'Jo Lind', status: 'invited', linkExpiresAt: expiresAt }), link: { url, expiresAt } }),
+      },
+    ],
   )
   const { user } = renderApp('/people')
   await user.click(await screen.findByRole('button', { name: 'Add a person' }))
@@ -75,7 +95,14 @@ test('adding a person shows the one-time link once, and it goes when it was hand
 test('an address that is taken is named at its field, and what was typed stays', async () => {
   shopWith(
     [owner],
-    [{ method: 'POST', path: '/api/people', contract: addPerson, answer: () => problem(409, 'e-mail-taken', 'Taken.', [{ pointer: '#/email', detail: 'Somebody has this address already.' }]) }],
+    [
+      {
+        method: 'POST',
+        path: '/api/people',
+        contract: addPerson,
+        answer: () => problem(409, 'e-mail-taken', 'Taken.', [{ pointer: '#/email', detail: 'Somebody has this address already.' }]),
+      },
+    ],
   )
   const { user } = renderApp('/people')
   await user.click(await screen.findByRole('button', { name: 'Add a person' }))
@@ -110,7 +137,17 @@ test('deactivating asks nothing, says what it did and can be undone', async () =
 })
 
 test('the last owner cannot be made less, and is told so', async () => {
-  shopWith([owner], [{ method: 'PATCH', path: /people/, contract: updatePerson, answer: () => problem(409, 'last-owner', 'The shop needs an owner. Make somebody else one first.') }])
+  shopWith(
+    [owner],
+    [
+      {
+        method: 'PATCH',
+        path: /people/,
+        contract: updatePerson,
+        answer: () => problem(409, 'last-owner', 'The shop needs an owner. Make somebody else one first.'),
+      },
+    ],
+  )
   const { user } = renderApp('/people')
   await user.click(await screen.findByRole('button', { name: 'Change Ines Okafor' }))
   await user.click(screen.getByRole('radio', { name: /Junior technician/ }))
@@ -121,7 +158,14 @@ test('the last owner cannot be made less, and is told so', async () => {
 test('a new link is made for somebody who lost their password', async () => {
   shopWith(
     [owner, buildPerson(3, { name: 'Mara Kessler' })],
-    [{ method: 'POST', path: /link$/, contract: createLink, answer: () => ok({ person: buildPerson(3, { name: 'Mara Kessler', linkExpiresAt: expiresAt }), link: { url, expiresAt } }) }],
+    [
+      {
+        method: 'POST',
+        path: /link$/,
+        contract: createLink,
+        answer: () => ok({ person: buildPerson(3, { name: 'Mara Kessler', linkExpiresAt: expiresAt }), link: { url, expiresAt } }),
+      },
+    ],
   )
   const { user } = renderApp('/people')
   await user.click(await screen.findByRole('button', { name: 'Change Mara Kessler' }))
@@ -161,7 +205,14 @@ test('a password may be shown and pasted; too short or over 72 bytes it is refus
 })
 
 test('a link that was used up says so and names the way out', async () => {
-  fakeApi([{ method: 'GET', path: '/api/links/old', contract: getLink, answer: () => problem(410, 'link-used-up', 'This link was used. Ask your owner for a new link.') }])
+  fakeApi([
+    {
+      method: 'GET',
+      path: '/api/links/old',
+      contract: getLink,
+      answer: () => problem(410, 'link-used-up', 'This link was used. Ask your owner for a new link.'),
+    },
+  ])
   renderApp('/link/old')
   expect(await screen.findByRole('heading', { level: 1, name: 'This link does not work' })).toBeVisible()
   expect(screen.getByText('This link was used. Ask your owner for a new link.')).toBeVisible()

@@ -45,7 +45,10 @@ export function Trail({ knots, words, size = 18 }: { readonly knots: readonly Tr
     <ol aria-label={words} className="flex flex-wrap items-center gap-y-1">
       {knots.map(({ key, label, ...knot }) => (
         // Each knot brings its own bit of line, so that a trail that wraps stays whole.
-        <li key={key} className="relative flex px-1 before:absolute before:inset-x-0 before:top-1/2 before:-translate-y-px before:border-t-2 before:border-cord">
+        <li
+          key={key}
+          className="relative flex px-1 before:absolute before:inset-x-0 before:top-1/2 before:-translate-y-px before:border-t-2 before:border-cord"
+        >
           <Knot {...knot} label={label} size={size} className="relative" />
         </li>
       ))}

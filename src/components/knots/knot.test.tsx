@@ -41,6 +41,10 @@ test('a trail is a list in its order, each knot with its words', () => {
 })
 
 test('the numeral of a balloon is part of the name of its button', () => {
-  render(<button type="button"><Balloon numeral={2} /> Bubbles</button>)
+  render(
+    <button type="button">
+      <Balloon numeral={2} /> Bubbles
+    </button>,
+  )
   expect(screen.getByRole('button', { name: '2 Bubbles' })).toBeVisible()
 })

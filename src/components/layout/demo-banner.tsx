@@ -22,8 +22,8 @@ export function DemoBanner() {
         </button>
       </p>
       <p id={id} hidden={!isOpen} className="max-w-words pb-2">
-        Stop this server, then start it with a folder of your own: <code className="figures">DEMO=0 PULLCORD_DATA=./my-shop npm start</code>. It prints a one-time code
-        for the first owner. The demo stays where it is.
+        Stop this server, then start it with a folder of your own: <code className="figures">DEMO=0 PULLCORD_DATA=./my-shop npm start</code>. It prints a
+        one-time code for the first owner. The demo stays where it is.
       </p>
     </aside>
   )

@@ -57,7 +57,7 @@ export function PersonMenu() {
         id={id}
         hidden={!isOpen}
         data-mode="desk"
-        className="absolute top-(--bar-height) right-(--page-edge) left-(--cord-gutter) z-10 -mt-px border border-rule bg-card p-4 sm:top-full sm:right-0 sm:left-auto sm:mt-0 sm:w-72"
+        className="absolute top-(--bar-height) right-(--page-edge) left-(--cord-gutter) z-10 -mt-1 border border-rule bg-card p-4 sm:top-full sm:right-0 sm:left-auto sm:mt-0 sm:w-72"
       >
         <p className="font-semibold">{person.name}</p>
         <p className="text-small text-ink-2">{roleWords[person.role]}</p>

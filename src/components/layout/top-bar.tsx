@@ -5,7 +5,7 @@ export function SkipLink() {
   return (
     <a
       href="#content"
-      className="fixed top-2 left-2 z-30 -translate-y-24 border border-rule bg-card px-4 py-2 font-medium text-cord underline focus:translate-y-0"
+      className="z-30 border border-rule bg-card px-4 py-2 font-medium text-cord underline not-focus:for-ears focus:fixed focus:top-2 focus:left-2"
     >
       To the page
     </a>

@@ -8,9 +8,19 @@ import { Button } from './button.tsx'
 test('a busy button says what it does, keeps the focus and takes no second press', async () => {
   const user = userEvent.setup()
   const onSubmit = vi.fn((event: FormEvent) => event.preventDefault())
-  const { rerender } = render(<form onSubmit={onSubmit}><Button type="submit">Record</Button></form>)
+  const { rerender } = render(
+    <form onSubmit={onSubmit}>
+      <Button type="submit">Record</Button>
+    </form>,
+  )
   await user.click(screen.getByRole('button', { name: 'Record' }))
-  rerender(<form onSubmit={onSubmit}><Button type="submit" busy="Recording">Record</Button></form>)
+  rerender(
+    <form onSubmit={onSubmit}>
+      <Button type="submit" busy="Recording">
+        Record
+      </Button>
+    </form>,
+  )
   const button = screen.getByRole('button', { name: 'Recording' })
   expect(button).toHaveFocus()
   expect(button).toHaveAttribute('aria-disabled', 'true')
@@ -21,7 +31,11 @@ test('a busy button says what it does, keeps the focus and takes no second press
 
 test('a button inside a form sends nothing unless it is told to', async () => {
   const onSubmit = vi.fn()
-  render(<form onSubmit={onSubmit}><Button>Note</Button></form>)
+  render(
+    <form onSubmit={onSubmit}>
+      <Button>Note</Button>
+    </form>,
+  )
   await userEvent.setup().click(screen.getByRole('button', { name: 'Note' }))
   expect(onSubmit).not.toHaveBeenCalled()
 })

@@ -16,7 +16,8 @@ const sizes: Readonly<Record<ButtonSize, string>> = {
 
 /** Every look keeps a real border: in forced colours it is all that is left of the shape. */
 const looks: Readonly<Record<ButtonLook, string>> = {
-  primary: 'forced-color-adjust-none border border-cord bg-cord text-on-cord hover:border-ink active:bg-ink active:text-paper disabled:border-dashed disabled:border-rule disabled:bg-card disabled:text-ink-2 aria-disabled:border-dashed aria-disabled:bg-card aria-disabled:text-ink',
+  primary:
+    'forced-color-adjust-none border border-cord bg-cord text-on-cord hover:border-ink active:bg-ink active:text-paper disabled:border-dashed disabled:border-rule disabled:bg-card disabled:text-ink-2 aria-disabled:border-dashed aria-disabled:bg-card aria-disabled:text-ink',
   quiet: 'border border-rule bg-card text-ink hover:border-ink active:bg-cord-wash disabled:border-dashed disabled:text-ink-2 aria-disabled:border-dashed',
   danger: 'border border-bad bg-card text-bad hover:bg-bad-wash active:bg-bad active:text-card disabled:border-dashed aria-disabled:border-dashed',
   plain: 'border border-transparent px-2! text-cord underline-offset-4 hover:underline active:bg-cord-wash disabled:text-ink-2',

@@ -68,8 +68,7 @@ export function TextField({ label, hint, error, id: ownId, className = '', ...re
   )
 }
 
-type PasswordFieldProps = Omit<ComponentProps<'input'>, 'type' | 'autoComplete'> &
-  FieldWords & { readonly autoComplete: 'current-password' | 'new-password' }
+type PasswordFieldProps = Omit<ComponentProps<'input'>, 'type' | 'autoComplete'> & FieldWords & { readonly autoComplete: 'current-password' | 'new-password' }
 
 /** Masked, with a button that shows it. Pasting and password managers are welcome. */
 export function PasswordField({ label, hint, error, id: ownId, className = '', ...rest }: PasswordFieldProps) {
@@ -147,7 +146,10 @@ export function RadioGroup<Value extends string>({ label, hint, error, choices, 
       <legend className="label mb-1">{label}</legend>
       <div className={`border-t border-rule ${className}`}>
         {choices.map((choice) => (
-          <label key={choice.value} className="flex min-h-(--row) cursor-pointer items-center gap-3 border-b border-hair py-1 hover:bg-cord-wash has-checked:bg-cord-wash">
+          <label
+            key={choice.value}
+            className="flex min-h-(--row) cursor-pointer items-center gap-3 border-b border-hair py-1 hover:bg-cord-wash has-checked:bg-cord-wash"
+          >
             <input
               {...rest}
               type="radio"

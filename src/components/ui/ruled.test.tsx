@@ -24,7 +24,11 @@ test('a ruled table is a table for ears: caption, column heads, row heads and ce
     />,
   )
   const table = screen.getByRole('table', { name: 'Causes' })
-  expect(within(table).getAllByRole('columnheader').map((head) => head.textContent)).toEqual(['Cause', 'Count', 'Acts'])
+  expect(
+    within(table)
+      .getAllByRole('columnheader')
+      .map((head) => head.textContent),
+  ).toEqual(['Cause', 'Count', 'Acts'])
   expect(within(table).getByRole('rowheader', { name: 'Stale fuel' })).toBeVisible()
   expect(within(table).getByRole('cell', { name: '51' })).toBeVisible()
   expect(within(table).getByText('Since spring')).toBeVisible()

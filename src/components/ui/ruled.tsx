@@ -37,7 +37,13 @@ export function RuledRow({ className = '', ...rest }: ComponentProps<'li'>) {
 }
 
 /** Name and value in two columns, as in a parts list; the columns stack where the page is narrow. */
-export function RuledPairs({ pairs, className = '' }: { readonly pairs: readonly { readonly name: string; readonly value: ReactNode }[]; readonly className?: string }) {
+export function RuledPairs({
+  pairs,
+  className = '',
+}: {
+  readonly pairs: readonly { readonly name: string; readonly value: ReactNode }[]
+  readonly className?: string
+}) {
   return (
     <dl className={`border-t border-rule ${className}`}>
       {pairs.map(({ name, value }) => (
@@ -75,66 +81,76 @@ type RuledTableProps<Row> = {
 }
 
 /**
- * A table that turns into stacked rows below 640 px, each cell led by its column's head. The roles are spelt out because
+ * A table that turns into stacked rows where it has no room, each cell led by its column's head. The roles are spelt out because
  * a table that is displayed otherwise loses them in some browsers.
  */
 export function RuledTable<Row>({ caption, columns, rows, rowKey, rowClassName, detail }: RuledTableProps<Row>) {
   return (
-    <table role="table" className="block w-full border-collapse sm:table">
-      <caption className="for-ears">{caption}</caption>
-      <thead role="rowgroup" className="hidden sm:table-header-group">
-        <tr role="row">
-          {columns.map((column) => (
-            <th key={column.key} role="columnheader" scope="col" className={`label border-b border-rule py-2 pr-4 last:pr-0 ${column.align === 'right' ? 'text-right' : 'text-left'}`}>
-              {column.hidden === true ? <span className="for-ears">{column.head}</span> : column.head}
-            </th>
-          ))}
-        </tr>
-      </thead>
-      <tbody role="rowgroup" className="block border-t border-rule sm:table-row-group sm:border-t-0">
-        {rows.map((row) => {
-          const opened = detail?.(row) ?? null
-          return (
-            <Fragment key={rowKey(row)}>
-              <tr role="row" className={`block border-hair py-3 sm:table-row sm:py-0 ${opened === null ? 'border-b' : ''} ${rowClassName?.(row) ?? ''}`}>
-                {columns.map((column) => (
-                  <RuledCell key={column.key} column={column} row={row} />
-                ))}
-              </tr>
-              {opened !== null && (
-                <tr role="row" className="block border-b border-rule sm:table-row">
-                  <td role="cell" colSpan={columns.length} className="block sm:table-cell">
-                    {opened}
-                  </td>
+    <div className="@container">
+      <table role="table" className="block w-full border-collapse roomy:table">
+        <caption className="for-ears">{caption}</caption>
+        <thead role="rowgroup" className="hidden roomy:table-header-group">
+          <tr role="row">
+            {columns.map((column) => (
+              <th
+                key={column.key}
+                role="columnheader"
+                scope="col"
+                className={`label border-b border-rule py-2 pr-4 last:pr-0 ${column.align === 'right' ? 'text-right' : 'text-left'}`}
+              >
+                {column.hidden === true ? <span className="for-ears">{column.head}</span> : column.head}
+              </th>
+            ))}
+          </tr>
+        </thead>
+        <tbody role="rowgroup" className="block roomy:table-row-group">
+          {rows.map((row) => {
+            const opened = detail?.(row) ?? null
+            return (
+              <Fragment key={rowKey(row)}>
+                <tr
+                  role="row"
+                  className={`block border-hair py-3 roomy:table-row roomy:py-0 ${opened === null ? 'border-b' : ''} ${rowClassName?.(row) ?? ''}`}
+                >
+                  {columns.map((column) => (
+                    <RuledCell key={column.key} column={column} row={row} />
+                  ))}
                 </tr>
-              )}
-            </Fragment>
-          )
-        })}
-      </tbody>
-    </table>
+                {opened !== null && (
+                  <tr role="row" className="block border-b border-rule roomy:table-row">
+                    <td role="cell" colSpan={columns.length} className="block roomy:table-cell">
+                      {opened}
+                    </td>
+                  </tr>
+                )}
+              </Fragment>
+            )
+          })}
+        </tbody>
+      </table>
+    </div>
   )
 }
 
 /** On a phone: its head on the left, what it holds on the right. */
 function RuledCell<Row>({ column, row }: { readonly column: RuledColumn<Row>; readonly row: Row }) {
-  const className = `block py-0.5 sm:table-cell sm:h-(--row) sm:py-1.5 sm:pr-4 sm:align-middle sm:last:pr-0 ${column.align === 'right' ? 'sm:text-right' : 'text-left'} ${column.className ?? ''}`
+  const className = `py-0.5 roomy:table-cell roomy:h-(--row) roomy:py-1.5 roomy:pr-4 roomy:align-middle roomy:last:pr-0 ${column.align === 'right' ? 'roomy:text-right' : 'text-left'} ${column.className ?? ''}`
   const content = column.cell(row)
   if (column.isRowHead === true) {
     return (
-      <th role="rowheader" scope="row" className={`${className} font-semibold`}>
+      <th role="rowheader" scope="row" className={`block ${className} font-semibold`}>
         {content}
       </th>
     )
   }
   return (
-    <td role="cell" className={`${className} ${column.hidden === true ? 'pt-2!' : 'max-sm:grid max-sm:grid-cols-[6.5rem_minmax(0,1fr)] max-sm:items-baseline'} empty:hidden sm:pt-1.5!`}>
+    <td role="cell" className={`${className} ${column.hidden === true ? 'block pt-2!' : 'flex flex-wrap items-baseline gap-x-3'} empty:hidden roomy:pt-1.5!`}>
       {column.hidden !== true && (
-        <span aria-hidden="true" className="label sm:hidden">
+        <span aria-hidden="true" className="label shrink-0 basis-26 roomy:hidden">
           {column.head}
         </span>
       )}
-      {content !== null && <div>{content}</div>}
+      {content !== null && <div className="min-w-0 flex-[1_1_9rem]">{content}</div>}
     </td>
   )
 }

@@ -17,7 +17,11 @@ export function SessionList({ sessions }: { readonly sessions: readonly OwnSessi
   const { mutate, error, isPending, variables } = useEndSession()
   return (
     <>
-      {error !== null && <Notice state="bad" role="alert" title="Still signed in there" className="my-3">{toWords(error)}</Notice>}
+      {error !== null && (
+        <Notice state="bad" role="alert" title="Still signed in there" className="my-3">
+          {toWords(error)}
+        </Notice>
+      )}
       <RuledTable
         caption="Where you are signed in"
         rows={sessions}

@@ -26,8 +26,8 @@ export function LinkPanel({ link, onDone }: { readonly link: HandedLink; readonl
         Hand this link to {link.name}
       </h2>
       <p className="max-w-words">
-        It leads to the page where {link.name} sets a password. It works once, until {formatMoment(link.expiresAt)}, and is shown only now: it cannot be looked up later,
-        but you can always make a new one.
+        It leads to the page where {link.name} sets a password. It works once, until {formatMoment(link.expiresAt)}, and is shown only now: it cannot be looked
+        up later, but you can always make a new one.
       </p>
       <div className="grid gap-1">
         <label htmlFor="one-time-link-url" className="label">

@@ -81,9 +81,14 @@ export function PeopleSheet({ people, ownId }: { readonly people: readonly Perso
               cell: ({ id, name }) => (id === ownId ? `${name} (you)` : name),
             },
             { key: 'email', head: 'E-mail', cell: ({ email }) => <EmailWords email={email} /> },
-            { key: 'role', head: 'Role', className: 'sm:whitespace-nowrap', cell: ({ role }) => roleWords[role] },
+            { key: 'role', head: 'Role', className: 'roomy:whitespace-nowrap', cell: ({ role }) => roleWords[role] },
             { key: 'state', head: 'State', cell: (person) => <PersonState person={person} now={now} /> },
-            { key: 'seen', head: 'Last seen', className: 'sm:whitespace-nowrap', cell: ({ lastSeenAt }) => (lastSeenAt === null ? 'never' : formatSince(lastSeenAt)) },
+            {
+              key: 'seen',
+              head: 'Last seen',
+              className: 'roomy:whitespace-nowrap',
+              cell: ({ lastSeenAt }) => (lastSeenAt === null ? 'never' : formatSince(lastSeenAt)),
+            },
             {
               key: 'acts',
               head: 'Acts',
