@@ -57,6 +57,9 @@ export function createRoutes(client: QueryClient): RouteObject[] {
           loader: requirePerson('junior'),
           lazy: screen(() => import('#src/routes/signed-in.tsx')),
           children: [
+            { index: true, lazy: screenFor('junior', () => import('#src/routes/bench.tsx')) },
+            { path: 'start/:chartId', lazy: screenFor('junior', () => import('#src/routes/start.tsx')) },
+            { path: 'walks/:walkId', lazy: screenFor('junior', () => import('#src/routes/walk.tsx')) },
             { path: 'account', lazy: screenFor('junior', () => import('#src/routes/account.tsx')) },
             { path: 'people', lazy: screenFor('owner', () => import('#src/routes/people.tsx')) },
           ],

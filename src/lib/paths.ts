@@ -1,4 +1,4 @@
-import type { ChartId, PersonId, WalkId } from '#shared/lib/ids.ts'
+import type { ChartId, NodeId, PersonId, WalkId } from '#shared/lib/ids.ts'
 
 const part = encodeURIComponent
 
@@ -12,10 +12,13 @@ function toQuery(query: Readonly<Record<string, string | number | undefined>>): 
 /** Every address of the screens and of the API is made here, so that a changed one changes once. */
 export const paths = {
   bench: () => '/',
-  startWalk: (chartId: ChartId) => `/start/${part(chartId)}`,
+  /** `at` names the start where a chart has several. */
+  startWalk: (chartId: ChartId, at?: NodeId) => `/start/${part(chartId)}${toQuery({ at })}`,
   walk: (walkId: WalkId) => `/walks/${part(walkId)}`,
   walkReview: (walkId: WalkId) => `/walks/${part(walkId)}/review`,
   walks: () => '/walks',
+  charts: () => '/charts',
+  chart: (chartId: ChartId) => `/charts/${part(chartId)}`,
   people: () => '/people',
   account: () => '/account',
   signIn: (next?: string) => (next === undefined || next === '/' ? '/sign-in' : `/sign-in?next=${part(next)}`),

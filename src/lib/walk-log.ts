@@ -26,10 +26,11 @@ export type SetAside = { readonly event: WalkEvent; readonly status: 'fork' | 'r
 /** A refusal of the guard, or of the log itself while it reads the server's. */
 export type RecordRefusal = { readonly code: string; readonly words: string }
 
-export type WalkLogSnapshot<State> = {
+export type WalkLogSnapshot<State, Rules> = {
   /** Everything that was recorded: what the server has, then what it has not yet. */
   readonly events: readonly WalkEvent[]
   readonly state: State
+  readonly rules: Rules
   readonly saved: SavedState
   readonly setAside: readonly SetAside[]
   /** True from the moment when something was set aside until the server's log has been read again. */
@@ -43,15 +44,15 @@ export type WalkRules<State> = {
 }
 
 /** What the log needs of the outside. */
-export type WalkLogSource<State> = {
+export type WalkLogSource<State, Rules extends WalkRules<State>> = {
   readonly walkId: WalkId
   readonly personId: PersonId
   readonly deviceId: DeviceId
   readonly events: readonly WalkEvent[]
-  readonly rules: WalkRules<State>
+  readonly rules: Rules
   readonly post: (events: readonly WalkEvent[]) => Promise<BatchResult>
   /** The server's log with the rules of its charts: a jump may have brought new ones. */
-  readonly fetchLog: () => Promise<{ readonly events: readonly WalkEvent[]; readonly rules: WalkRules<State> }>
+  readonly fetchLog: () => Promise<{ readonly events: readonly WalkEvent[]; readonly rules: Rules }>
 }
 
 const firstDelayMs = 1000
@@ -61,30 +62,31 @@ const longestDelayMs = 30_000
  * The log of one walk on this device: judges what is recorded by the same guard as the server, shows it at once, and sends it in order
  * until the server has it. Holds what was not sent in memory; a store that outlives the page takes the place of `unsent`.
  */
-export class WalkLog<State> {
+export class WalkLog<State, Rules extends WalkRules<State>> {
   readonly walkId: WalkId
   readonly personId: PersonId
-  readonly #source: WalkLogSource<State>
+  readonly #source: WalkLogSource<State, Rules>
   readonly #listeners = new Set<() => void>()
-  #rules: WalkRules<State>
   #unsent: readonly WalkEvent[] = []
-  #snapshot: WalkLogSnapshot<State>
+  #snapshot: WalkLogSnapshot<State, Rules>
   #isSending = false
   #tries = 0
   #timer: ReturnType<typeof setTimeout> | undefined
+  /** The server refused to read what it was sent: nothing more goes out until a person asks for it. */
+  #isStuck = false
   /** The first event that the server would not take; once set, nothing new is recorded until its log was read again. */
   #refused: WalkEvent | null = null
   #lastGap = 0
 
-  constructor(source: WalkLogSource<State>) {
+  constructor(source: WalkLogSource<State, Rules>) {
     this.walkId = source.walkId
     this.personId = source.personId
     this.#source = source
-    this.#rules = source.rules
-    this.#snapshot = { events: source.events, state: source.rules.replay(source.events), saved: { kind: 'saved' }, setAside: [], isReloading: false }
+    const { events, rules } = source
+    this.#snapshot = { events, rules, state: rules.replay(events), saved: { kind: 'saved' }, setAside: [], isReloading: false }
   }
 
-  readonly getSnapshot = (): WalkLogSnapshot<State> => this.#snapshot
+  readonly getSnapshot = (): WalkLogSnapshot<State, Rules> => this.#snapshot
 
   readonly subscribe = (listener: () => void): (() => void) => {
     this.#listeners.add(listener)
@@ -102,7 +104,7 @@ export class WalkLog<State> {
     let state = this.#snapshot.state
     for (const draft of drafts) {
       const event = this.#toEvent(draft, this.#snapshot.events.length + made.length + 1)
-      const next = this.#rules.append(state, event)
+      const next = this.#snapshot.rules.append(state, event)
       if (!next.ok) return next
       state = next.value
       made.push(event)
@@ -117,14 +119,20 @@ export class WalkLog<State> {
   retry(): void {
     clearTimeout(this.#timer)
     this.#timer = undefined
+    this.#isStuck = false
     void (this.#refused === null ? this.#send() : this.#setAsideRest())
   }
 
+  /** Goes by more charts from now on: those that a picked symptom brings along. */
+  learn(rules: Rules): void {
+    this.#set({ rules })
+  }
+
   /** Takes over a log that was read elsewhere, when it is ahead and nothing of ours waits. */
-  adopt(events: readonly WalkEvent[], rules: WalkRules<State>): void {
+  adopt(events: readonly WalkEvent[], toRules: () => Rules): void {
     if (this.#unsent.length > 0 || this.#snapshot.isReloading || events.length <= this.#snapshot.events.length) return
-    this.#rules = rules
-    this.#set({ events, state: rules.replay(events) })
+    const rules = toRules()
+    this.#set({ events, rules, state: rules.replay(events) })
   }
 
   /** The person has read what was set aside. */
@@ -146,7 +154,7 @@ export class WalkLog<State> {
     return { ...envelope, ...draft } as WalkEvent
   }
 
-  #set(change: Partial<WalkLogSnapshot<State>>): void {
+  #set(change: Partial<WalkLogSnapshot<State, Rules>>): void {
     this.#snapshot = { ...this.#snapshot, ...change }
     this.#listeners.forEach((listener) => listener())
   }
@@ -159,7 +167,7 @@ export class WalkLog<State> {
   }
 
   async #send(): Promise<void> {
-    if (this.#isSending || this.#unsent.length === 0 || this.#timer !== undefined || this.#refused !== null) return
+    if (this.#isSending || this.#isStuck || this.#unsent.length === 0 || this.#timer !== undefined || this.#refused !== null) return
     this.#isSending = true
     try {
       const batch = this.#unsent.slice(0, batchMaxEvents)
@@ -203,7 +211,7 @@ export class WalkLog<State> {
    */
   async #setAsideRest(): Promise<void> {
     const first = this.#refused
-    if (first === null || this.#isSending) return
+    if (first === null || this.#isSending || this.#isStuck || this.#timer !== undefined) return
     this.#isSending = true
     this.#set({ isReloading: true })
     try {
@@ -216,12 +224,11 @@ export class WalkLog<State> {
         aside.push(...toSetAside(from === 0 ? batch : batch.slice(1), from === 0 ? results : results.slice(1)))
       }
       const log = await this.#source.fetchLog()
-      this.#rules = log.rules
       this.#unsent = []
       this.#refused = null
       this.#tries = 0
       const setAside = [...this.#snapshot.setAside, ...aside]
-      this.#set({ events: log.events, state: log.rules.replay(log.events), saved: { kind: 'saved' }, setAside, isReloading: false })
+      this.#set({ events: log.events, rules: log.rules, state: log.rules.replay(log.events), saved: { kind: 'saved' }, setAside, isReloading: false })
     } catch (error) {
       this.#wait(error, () => this.#setAsideRest())
     } finally {
@@ -234,9 +241,8 @@ export class WalkLog<State> {
     const count = this.#unsent.length
     const why = error instanceof ProblemError ? error.message : 'this page stumbled over a fault of its own'
     if (!canComeRight(error)) {
+      this.#isStuck = true
       this.#set({ saved: { kind: 'stuck', count, why } })
-      // Nothing moves by itself any more; `retry` clears this.
-      this.#timer = setTimeout(() => undefined, 0)
       return
     }
     this.#set({ saved: { kind: 'waiting', count, why } })

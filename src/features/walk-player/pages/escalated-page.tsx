@@ -1,0 +1,61 @@
+import type { EscalatedPage as Page, QuestionWords } from '#shared/walk/page.ts'
+import { RuledList, RuledRow, RuledSection } from '#src/components/ui/ruled.tsx'
+import { StateMark } from '#src/components/ui/state-mark.tsx'
+import { CloseActs } from '#src/features/walk-player/parts/close-acts.tsx'
+import { PageHead, Sheet } from '#src/features/walk-player/parts/page-parts.tsx'
+import { SkippedList } from '#src/features/walk-player/parts/skipped-list.tsx'
+
+/** The lead is asked: the walk waits for an answer, a step back, or is closed. */
+export function EscalatedPage({ page }: { readonly page: Page }) {
+  return (
+    <Sheet
+      what={
+        <>
+          <PageHead knot="escalate" over={['The lead is asked', page.at.title]} title={page.reasonWords} />
+          <p className="mt-3">Leave the machine as it stands. The answer appears here by itself.</p>
+          <QuestionList questions={page.questions} />
+          {page.ruledOut.length > 0 && (
+            <RuledSection title="Ruled out" className="mt-6">
+              <RuledList>
+                {page.ruledOut.map(({ cause, how }, index) => (
+                  <RuledRow key={`${cause.causeId ?? cause.title}-${index}`} className="flex flex-wrap items-center justify-between gap-x-4">
+                    <span className="line-through decoration-1">{cause.title}</span>
+                    <span className="text-small text-ink-2">{how === 'run-failed' ? 'the run failed' : 'not proven'}</span>
+                  </RuledRow>
+                ))}
+              </RuledList>
+            </RuledSection>
+          )}
+          <SkippedList skipped={page.skipped} />
+        </>
+      }
+      answers={<CloseActs results={page.results} />}
+    />
+  )
+}
+
+/** Questions to the lead, with their answers as soon as they are there. */
+export function QuestionList({ questions }: { readonly questions: readonly QuestionWords[] }) {
+  if (questions.length === 0) return null
+  return (
+    <RuledSection title="Questions" className="mt-6">
+      <RuledList>
+        {questions.map(({ questionId, text, answer, goTo }) => (
+          <RuledRow key={questionId}>
+            <p className="whitespace-pre-wrap">{text}</p>
+            {answer === null ? (
+              <StateMark state="info" className="text-small">
+                waiting for the lead
+              </StateMark>
+            ) : (
+              <p className="mt-1 border-l-4 border-info pl-3 whitespace-pre-wrap">
+                {answer}
+                {goTo !== null && <span className="block text-small text-ink-2">Go on at {goTo.number === '' ? goTo.title : `${goTo.number} ${goTo.title}`}</span>}
+              </p>
+            )}
+          </RuledRow>
+        ))}
+      </RuledList>
+    </RuledSection>
+  )
+}

@@ -1,0 +1,72 @@
+import { formatValue } from '#shared/units/format-value.ts'
+import { judgeTries } from '#shared/walk/judging.ts'
+import type { OutcomeChoice, ReadingPage as Page } from '#shared/walk/page.ts'
+import { OutcomeButton } from '#src/features/walk-player/parts/outcome-button.tsx'
+import { NoAnswerList, toOutcomeWords } from '#src/features/walk-player/parts/answer-list.tsx'
+import { DoFirst, NodeHelp, PageHead, Sheet, toKindWords, toMachineWords, toMinutesWords } from '#src/features/walk-player/parts/page-parts.tsx'
+import { ReadingEntry } from '#src/features/walk-player/parts/reading-entry.tsx'
+import { Timer } from '#src/features/walk-player/parts/timer.tsx'
+import { ValueAnswers, useRecordAct } from '#src/features/walk-player/parts/value-answers.tsx'
+import { toOfferedWords } from '#src/features/walk-player/pages/check-page.tsx'
+import { usePlayer } from '#src/features/walk-player/player-context.ts'
+import { useAnswering } from '#src/features/walk-player/use-answering.ts'
+import { useReadingEntry } from '#src/features/walk-player/use-reading-entry.ts'
+
+/** A reading: a measured value, judged at once by the limits of this machine. */
+export function ReadingPage({ page }: { readonly page: Page }) {
+  const { node, entering, lines, outcomes, judging } = page
+  const { format, noAnswer } = usePlayer()
+  const entry = useReadingEntry(node.place, judging)
+  const { answer, skip } = useAnswering(page)
+  const onRecord = (choice: OutcomeChoice, judgedBy: 'limits' | 'hand'): void => {
+    const { measured } = entry
+    const said = measured.value === undefined || measured.unit === undefined ? choice.title : `${formatValue(measured.value, measured.unit, format)}, ${choice.title}`
+    if (answer({ choice, judgedBy, measured, said })) entry.forget()
+  }
+  const act = useRecordAct(entry, outcomes, onRecord)
+  return (
+    <Sheet
+      what={
+        <>
+          <DoFirst entering={entering} lines={lines} />
+          <PageHead
+            knot="reading"
+            over={[toKindWords('reading', node.number), toMinutesWords(node.minutes, entering.minutes), toMachineWords(entering.machine)]}
+            title={node.title}
+          />
+          <NodeHelp node={node} showGood={judging.limits === null} />
+          {node.timer !== null && node.timer !== undefined && <Timer timer={node.timer} />}
+        </>
+      }
+      answers={
+        noAnswer.isOpen ? (
+          <NoAnswerList question={node.title} noAnswer={page.noAnswer} onPick={skip} onClose={noAnswer.toggle} />
+        ) : (
+          <div className="grid gap-3">
+            <Offered page={page} />
+            <ReadingEntry entry={entry} label={node.title} onEnter={act}>
+              <ValueAnswers question={node.title} entry={entry} outcomes={outcomes} wordsOf={toOutcomeWords} onRecord={onRecord} />
+            </ReadingEntry>
+          </div>
+        )
+      }
+    />
+  )
+}
+
+/** The value that is already there, to be kept with one tap instead of measured again. */
+function Offered({ page }: { readonly page: Page }) {
+  const { format, tap } = usePlayer()
+  const { answer } = useAnswering(page)
+  const { offered, outcomes, judging } = page
+  const choice = outcomes.find(({ outcome }) => outcome === offered?.answer.outcome)
+  if (offered === null || choice === undefined) return null
+  const { value, unit } = offered.answer
+  const title = value === null || unit === null ? choice.title : `${formatValue(value, unit, format)}, ${choice.title}`
+  const keep = (): void => {
+    const isMeasured = value !== null && unit !== null
+    const isJudged = isMeasured && choice.isBanded && judgeTries({ ...judging, repeat: null }, [value], unit).kind === 'outcome'
+    answer({ choice, reuses: offered, said: title, judgedBy: isJudged ? 'limits' : 'hand', ...(isMeasured && { measured: { value, unit } }) })
+  }
+  return <OutcomeButton numeral={null} title={`Keep ${title}`} words={toOfferedWords(offered)} look="leading" onPress={() => tap(keep)} />
+}
