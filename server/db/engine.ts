@@ -46,12 +46,14 @@ function serve(pg: PGlite, disk: DurableFs | null, checkpointAfterMs: number): E
   const transactions = new Map<number, OpenTransaction>()
   let idleTimer: NodeJS.Timeout | undefined
 
+  // An answer waits until every commit before it is on the disk, reads included: one may have seen a row that a power cut would take
+  // back, and whoever is told "we have that already" throws the only other copy away.
   const answer = async (request: EngineRequest): Promise<unknown> => {
     switch (request.kind) {
       case 'query': {
         const client = request.transaction === null ? pg : await find(request.transaction).started
         const { rows, rowCount } = await client.query(request.sql, [...request.params], { rowMode: request.rowMode, parsers })
-        // Inside a transaction nothing is promised before its commit.
+        // Inside a transaction nothing is promised before its end.
         if (request.transaction === null) await disk?.settled()
         return { rows, rowCount: rowCount ?? null }
       }
@@ -65,7 +67,7 @@ function serve(pg: PGlite, disk: DurableFs | null, checkpointAfterMs: number): E
         transactions.delete(request.transaction)
         transaction.end(request.kind)
         await transaction.done
-        if (request.kind === 'commit') await disk?.settled()
+        await disk?.settled()
         return null
       }
       case 'image':

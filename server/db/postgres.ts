@@ -30,7 +30,7 @@ export async function openPostgres(databaseUrl: string, say: (words: string) => 
   try {
     const { before, after } = await migrateOnce(pool)
     if (before < after) say(`Brought the database to schema ${after}`)
-    const db = guardOuterClient(drizzle({ client: pool }) as unknown as Db)
+    const db = guardOuterClient(drizzle({ client: pool }))
     return {
       engine: 'postgresql',
       db,
@@ -47,7 +47,7 @@ export async function openPostgres(databaseUrl: string, say: (words: string) => 
 
 async function migrateOnce(pool: pg.Pool): Promise<{ before: number; after: number }> {
   const connection = await pool.connect()
-  const db = drizzle({ client: connection }) as unknown as Db
+  const db: Db = drizzle({ client: connection })
   try {
     const { rows } = await db.execute<{ major: number }>(sql`select current_setting('server_version_num')::int / 10000 as major`)
     const major = rows[0]?.major ?? 0
