@@ -152,3 +152,18 @@ test('on a trimmer the checks under the clutch cover are passed, and a stiff sha
   bench.answer('n15', 'shaft').answer('n15b', 'low').answer('p15a', 'gone').prove('shaft-dry')
   expect(bench.walk.phase).toBe('proven')
 })
+
+test('a chain that a stuck brake holds is never run at full speed for the proof: the pull round the bar is compared', () => {
+  const bench = benchAt('drag-at-clutch', saw).answer('n0', 'drags').answer('n1', 'locked').answer('n10x', 'sticks')
+  expect(bench.page()).toMatchObject({ kind: 'proof', before: { answer: { outcome: 'locked' } }, entering: { machine: 'stopped' } })
+  bench.answer('p10bx', 'gone').prove('brake-lever-sticks')
+  expect(bench.page()).toMatchObject({ kind: 'proven', canCloseUnrepaired: false })
+})
+
+test('full speed that was read with the chain on is what a good bar is compared with, also across charts', () => {
+  const bench = benchAt('no-full-speed', saw)
+  for (const [id, outcome] of [['n1', 'low'], ['n2', 'low'], ['n3', 'both'], ['n4', 'free'], ['n5', 'light'], ['n6', 'fresh'], ['n6b', 'dry'], ['n7', 'clear'], ['n8', 'tan'], ['n8b', 'in'], ['n9', 'marks'], ['n9', 'in'], ['n5x', 'rails']] as const) bench.answer(id, outcome)
+  expect(bench.node).toBe('p5ax')
+  bench.answer('p5ax', 'gone').prove('rails-pinched')
+  expect(bench.walk.trail.at(-1)).toMatchObject({ before: null })
+})
