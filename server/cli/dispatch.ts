@@ -10,6 +10,7 @@ import type { Io, Verb, VerbTable } from './verb.ts'
  */
 const groups: Readonly<Record<string, () => Promise<VerbTable>>> = {
   chart: async () => (await import('./chart.ts')).chartVerbs,
+  walk: async () => (await import('./walk.ts')).walkVerbs,
 }
 const loadShopVerbs = async (): Promise<VerbTable> => ({})
 

@@ -1,9 +1,9 @@
 import type { DeviceId, EventId, OutcomeId, PersonId, PhotoId, WalkId } from '#shared/lib/ids.ts'
 import type { SpecLimit } from '#shared/units/limits.ts'
 import type { Unit } from '#shared/units/quantities.ts'
-import type { EventOf, WalkEvent, WalkEventType } from './events.ts'
-import { judgeTries, type Judging } from './judging.ts'
-import type { BeforePage, CausePage, CautionPage, CheckPage, OfferedAnswer, ProofPage, ReadingPage, StepPage } from './page.ts'
+import type { EventOf, WalkEvent, WalkEventType } from '#shared/walk/events.ts'
+import { judgeTries, type Judging } from '#shared/walk/judging.ts'
+import type { BeforePage, CausePage, CautionPage, CheckPage, OfferedAnswer, ProofPage, ReadingPage, StepPage } from '#shared/walk/page.ts'
 
 /** An event before it has an envelope: what was done. */
 export type EventDraft = { [Type in WalkEventType]: { readonly type: Type; readonly payload: EventOf<Type>['payload'] } }[WalkEventType]
