@@ -4,7 +4,7 @@ import { createFirstOwner, makeOwnerCode } from '#server/services/first-owner.ts
 import { acceptLink } from '#server/services/links.ts'
 import { addPerson, getPersonById } from '#server/services/people.ts'
 import { endSession, type CurrentSession } from '#server/services/sessions.ts'
-import type { Deps } from './load-demo.ts'
+import type { Deps } from './demo-deps.ts'
 
 /** The people of the demo shop, each as the services see who asks. */
 export type DemoPeople = Readonly<Record<Role, CurrentSession>>

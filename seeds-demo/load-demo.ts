@@ -4,11 +4,9 @@ import { z } from 'zod'
 import { modelSchema } from '#shared/api/models.ts'
 import { createShop, isSetUp } from '#server/services/shop.ts'
 import { addModels } from '#server/services/library.ts'
-import { addDemoPeople } from './demo-people.ts'
 import { publishDemoCharts } from './demo-charts.ts'
-
-/** What services are handed. */
-export type Deps = Parameters<typeof createShop>[1]
+import type { Deps } from './demo-deps.ts'
+import { addDemoPeople } from './demo-people.ts'
 
 /**
  * Loads the demo shop into an empty database, all or nothing, by the same services as people use. A database that holds anything is

@@ -4,7 +4,18 @@ import { lintChart } from '#shared/chart/lint/lint-chart.ts'
 import type { ChartDocument, ReadingNode } from '#shared/chart/document.ts'
 import { fitsHarm } from '#shared/trade/signal-words.ts'
 import { unitsOfQuantity } from '#shared/units/quantities.ts'
-import { chartFiles, chartsToCome, demoChart, demoCharts, demoChartSet, demoDecisions, demoNodes, demoNodesOf, demoSheets, readChartFile } from './demo-charts.ts'
+import {
+  chartFiles,
+  chartsToCome,
+  demoChart,
+  demoCharts,
+  demoChartSet,
+  demoDecisions,
+  demoNodes,
+  demoNodesOf,
+  demoSheets,
+  readChartFile,
+} from './demo-charts.ts'
 
 const wordsOf = (text: string): string[] => text.split(/\s+/).filter((word) => /[\p{L}\p{N}]/u.test(word))
 
@@ -28,7 +39,8 @@ describe('every chart of the demo shop', () => {
   test('says where each of its facts comes from', () => {
     for (const { node, name } of demoDecisions) expect(node.source?.mark, name).toMatch(/^(read|common practice)$/)
     for (const { id, cautions } of demoCharts) for (const caution of cautions ?? []) expect(caution.source?.title, `${id} ${caution.id}`).toBeTruthy()
-    for (const { library } of demoCharts) for (const key of library.specKeys ?? []) for (const value of key.general ?? []) expect(value.source, key.id).toBeDefined()
+    for (const { library } of demoCharts)
+      for (const key of library.specKeys ?? []) for (const value of key.general ?? []) expect(value.source, key.id).toBeDefined()
   })
 
   test('names publications by their titles alone', () => {
@@ -72,13 +84,28 @@ describe('one id is one thing in all charts', () => {
     expect(seen.size).toBeGreaterThan(0)
   }
   test('access, service items and spec keys', () => {
-    collect(demoCharts.map(({ access }) => access), (entry) => entry)
-    collect(demoCharts.map(({ library }) => library.serviceItems), (entry) => entry)
-    collect(demoCharts.map(({ library }) => library.specKeys), (entry) => entry)
+    collect(
+      demoCharts.map(({ access }) => access),
+      (entry) => entry,
+    )
+    collect(
+      demoCharts.map(({ library }) => library.serviceItems),
+      (entry) => entry,
+    )
+    collect(
+      demoCharts.map(({ library }) => library.specKeys),
+      (entry) => entry,
+    )
   })
   test('cautions, which may stand in one chart and not in another, and causes, whose grade belongs to the chart', () => {
-    collect(demoCharts.map(({ cautions }) => cautions), ({ standing: _standing, ...entry }) => entry)
-    collect(demoCharts.map(({ library }) => library.causes), ({ grade: _grade, ...entry }) => entry)
+    collect(
+      demoCharts.map(({ cautions }) => cautions),
+      ({ standing: _standing, ...entry }) => entry,
+    )
+    collect(
+      demoCharts.map(({ library }) => library.causes),
+      ({ grade: _grade, ...entry }) => entry,
+    )
   })
 })
 
@@ -96,8 +123,13 @@ describe('cautions', () => {
   test('of exhaust gas and of the start stand before every engine that runs', () => {
     for (const { chart, node, name } of demoNodes) {
       if (node.machine !== 'running') continue
-      const coming = (chart.cautions ?? []).filter((caution) => caution.again?.includes('running') === true && (caution.standing === true || node.cautions?.includes(caution.id) === true))
-      expect(coming.map(({ id }) => id as string), name).toEqual(expect.arrayContaining(['co', 'start']))
+      const coming = (chart.cautions ?? []).filter(
+        (caution) => caution.again?.includes('running') === true && (caution.standing === true || node.cautions?.includes(caution.id) === true),
+      )
+      expect(
+        coming.map(({ id }) => id as string),
+        name,
+      ).toEqual(expect.arrayContaining(['co', 'start']))
     }
   })
 })
@@ -117,7 +149,9 @@ describe('a running engine', () => {
   })
 
   test('never runs with the drum off: working heat closes the clutch', () => {
-    for (const { access } of demoCharts) for (const entry of access ?? []) if (entry.id === 'warm') expect(entry.excludes).toEqual(expect.arrayContaining(['clutch-off', 'plug-out', 'lead-off', 'cool']))
+    for (const { access } of demoCharts)
+      for (const entry of access ?? [])
+        if (entry.id === 'warm') expect(entry.excludes).toEqual(expect.arrayContaining(['clutch-off', 'plug-out', 'lead-off', 'cool']))
     for (const { chart, node, name } of running) if (chart.access?.some(({ id }) => id === 'clutch-off') === true) expect(node.needs, name).toContain('warm')
   })
 
@@ -137,7 +171,8 @@ test('hands near chain, fan or drum: the plug lead is off and its caution stands
 })
 
 test('every page says whether the engine runs', () => {
-  for (const { node, name } of demoNodes) if (['check', 'reading', 'proof', 'step'].includes(node.kind)) expect(node.machine, name).toMatch(/^(running|stopped)$/)
+  for (const { node, name } of demoNodes)
+    if (['check', 'reading', 'proof', 'step'].includes(node.kind)) expect(node.machine, name).toMatch(/^(running|stopped)$/)
 })
 
 test('a proof compares the same reading before and after, or is judged by hand, eye or ear', () => {
@@ -153,24 +188,28 @@ test('a proof compares the same reading before and after, or is judged by hand, 
 })
 
 describe('spec sheets', () => {
-  const specsOf = (chart: ChartDocument) => chart.nodes.flatMap((node) => (node.kind === 'reading' && node.limits !== undefined && 'spec' in node.limits ? [{ node, spec: node.limits.spec }] : []))
+  const specsOf = (chart: ChartDocument) =>
+    chart.nodes.flatMap((node) => (node.kind === 'reading' && node.limits !== undefined && 'spec' in node.limits ? [{ node, spec: node.limits.spec }] : []))
 
-  test.each(demoSheets.map((sheet) => [`${sheet.maker} ${sheet.name}`, sheet] as const))('%s has a value for every reading that its charts take', (_name, sheet) => {
-    const used = new Set<string>()
-    const reached = nodesFor(sheet)
-    for (const chart of demoCharts) {
-      if (chart.appliesTo?.classes?.includes(sheet.class) === false || chart.basis === 'printed-table') continue
-      for (const { node, spec } of specsOf(chart)) {
-        if (!reached.has(`${chart.id}/${node.id}`)) continue
-        used.add(spec)
-        const limit = sheet.limits[spec]
-        expect(limit, `${chart.id}/${node.id} ${spec}`).toBeDefined()
-        if (limit !== undefined && 'unit' in limit) expect(unitsOfQuantity[node.quantity] as readonly string[], spec).toContain(limit.unit)
+  test.each(demoSheets.map((sheet) => [`${sheet.maker} ${sheet.name}`, sheet] as const))(
+    '%s has a value for every reading that its charts take',
+    (_name, sheet) => {
+      const used = new Set<string>()
+      const reached = nodesFor(sheet)
+      for (const chart of demoCharts) {
+        if (chart.appliesTo?.classes?.includes(sheet.class) === false || chart.basis === 'printed-table') continue
+        for (const { node, spec } of specsOf(chart)) {
+          if (!reached.has(`${chart.id}/${node.id}`)) continue
+          used.add(spec)
+          const limit = sheet.limits[spec]
+          expect(limit, `${chart.id}/${node.id} ${spec}`).toBeDefined()
+          if (limit !== undefined && 'unit' in limit) expect(unitsOfQuantity[node.quantity] as readonly string[], spec).toContain(limit.unit)
+        }
       }
-    }
-    expect(Object.keys(sheet.limits).sort()).toEqual([...used].sort())
-    expect(Object.keys(sheet.sources).sort()).toEqual([...used].sort())
-  })
+      expect(Object.keys(sheet.limits).sort()).toEqual([...used].sort())
+      expect(Object.keys(sheet.sources).sort()).toEqual([...used].sort())
+    },
+  )
 
   test('every reading by a spec key has a general value for each machine of its chart, or leaves the judgement to the hand', () => {
     for (const chart of demoCharts) {
@@ -188,7 +227,8 @@ describe('spec sheets', () => {
 })
 
 describe('limits on the charts', () => {
-  const reading = (chart: string, id: string): ReadingNode => demoChart(chart).nodes.find((node): node is ReadingNode => node.id === id && node.kind === 'reading') ?? raise(`${chart}/${id}`)
+  const reading = (chart: string, id: string): ReadingNode =>
+    demoChart(chart).nodes.find((node): node is ReadingNode => node.id === id && node.kind === 'reading') ?? raise(`${chart}/${id}`)
   const judged = (chart: string, id: string, engine: 'two-stroke' | 'four-stroke', value: number, unit: ReadingNode['unit']) => {
     const node = reading(chart, id)
     return judgeReading(node, limitsOf(node, {}, demoChart(chart).library.specKeys ?? [], { class: 'chain-saw', engine }), value, unit)
@@ -235,7 +275,8 @@ describe('wording', () => {
     for (const name of chartFiles) expect(readChartFile(name)).not.toMatch(/\d (?:s|min|mm|cm|rpm|psi|ft)\b/)
   })
   test('what is seen is told in other words than the outcome', () => {
-    for (const { node, name } of demoDecisions) for (const { seen, title } of node.outcomes) if (seen !== undefined) expect(seen.toLowerCase(), name).not.toBe(title.toLowerCase())
+    for (const { node, name } of demoDecisions)
+      for (const { seen, title } of node.outcomes) if (seen !== undefined) expect(seen.toLowerCase(), name).not.toBe(title.toLowerCase())
   })
 })
 

@@ -39,7 +39,9 @@ export const demoNodes: readonly { readonly chart: ChartDocument; readonly node:
 )
 
 /** Nodes with outcomes. */
-export const demoDecisions = demoNodes.flatMap(({ chart, node, name }): { chart: ChartDocument; node: DecisionNode; name: string }[] => (isDecision(node) ? [{ chart, node, name }] : []))
+export const demoDecisions = demoNodes.flatMap(({ chart, node, name }): { chart: ChartDocument; node: DecisionNode; name: string }[] =>
+  isDecision(node) ? [{ chart, node, name }] : [],
+)
 
 /** Nodes of one kind. */
 export function demoNodesOf<Kind extends ChartNode['kind']>(kind: Kind): { chart: ChartDocument; node: NodeOf<Kind>; name: string }[] {
@@ -47,7 +49,15 @@ export function demoNodesOf<Kind extends ChartNode['kind']>(kind: Kind): { chart
 }
 
 /** Charts that the demo's charts may jump to before they are written. */
-export const chartsToCome = ['runs-only-while-priming', 'hard-to-start', 'creeps-at-idle', 'will-not-prime', 'seal-test', 'spark', 'carburettor-bench'] as ChartId[]
+export const chartsToCome = [
+  'runs-only-while-priming',
+  'hard-to-start',
+  'creeps-at-idle',
+  'will-not-prime',
+  'seal-test',
+  'spark',
+  'carburettor-bench',
+] as ChartId[]
 
 const sourceSchema = z.strictObject({ mark: z.enum(['read', 'from memory', 'common practice', 'own arithmetic']), title: z.string().optional() })
 const sheetSchema = z.strictObject({

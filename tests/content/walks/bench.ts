@@ -1,6 +1,17 @@
 import { isDecision } from '#shared/chart/graph.ts'
 import { specLimitsFor } from '#shared/chart/spec-limits.ts'
-import { chartIdSchema, deviceIdSchema, eventIdSchema, nodeIdSchema, outcomeIdSchema, personIdSchema, walkIdSchema, type CauseId, type OutcomeId, type Place } from '#shared/lib/ids.ts'
+import {
+  chartIdSchema,
+  deviceIdSchema,
+  eventIdSchema,
+  nodeIdSchema,
+  outcomeIdSchema,
+  personIdSchema,
+  walkIdSchema,
+  type CauseId,
+  type OutcomeId,
+  type Place,
+} from '#shared/lib/ids.ts'
 import { handBackRun } from '#shared/trade/hand-back-run.ts'
 import type { SpecLimit } from '#shared/units/limits.ts'
 import type { Unit } from '#shared/units/quantities.ts'
@@ -11,7 +22,7 @@ import { anyVersionOf, locate } from '#shared/walk/pinned-charts.ts'
 import { appendEvent, replay } from '#shared/walk/replay.ts'
 import { toPage } from '#shared/walk/select.ts'
 import { newWalk, type StartedWalk, type WalkState } from '#shared/walk/state.ts'
-import { demoCharts, demoSheets } from '../demo-charts.ts'
+import { demoCharts, demoSheets } from '#tests/content/demo-charts.ts'
 
 /** The demo's charts, each standing for any version. */
 export const charts = anyVersionOf(demoCharts)
@@ -120,7 +131,15 @@ export function benchAt(chartId: string, machine: Machine, startId = 's') {
       const values = given ?? valuesFor(page, judging, outcome)
       const before = shown.kind === 'before' ? { before: beforeOf(shown) } : {}
       const note = page.kind === 'proof' && page.needsNote ? { note: 'Looked again under the lamp' } : {}
-      send('finding-recorded', { node: page.node.place, outcome: outcomeIdSchema.parse(outcome), ...measured(judging, values), ...before, ...note, photoIds: [], seconds: 20 })
+      send('finding-recorded', {
+        node: page.node.place,
+        outcome: outcomeIdSchema.parse(outcome),
+        ...measured(judging, values),
+        ...before,
+        ...note,
+        photoIds: [],
+        seconds: 20,
+      })
       taps += Math.max(1, values.length) + (shown.kind === 'before' ? 1 : 0)
       return bench
     },
@@ -206,7 +225,8 @@ function valuesFor({ outcomes }: { readonly outcomes: readonly OutcomeChoice[] }
   const times = (value: number) => Array.from({ length: judging.repeat?.equal ?? 1 }, () => value)
   const { limits } = judging
   // Where nobody knows the limits the value is only written down, and the person picks.
-  if (limits === null || 'as' in limits) return judging.proof !== null || outcomes.some((choice) => choice.outcome === outcome && choice.isBanded) ? times(1) : []
+  if (limits === null || 'as' in limits)
+    return judging.proof !== null || outcomes.some((choice) => choice.outcome === outcome && choice.isBanded) ? times(1) : []
   const candidates = [limits.min === undefined ? [] : [limits.min * 0.8], [insideOf(limits)], limits.max === undefined ? [] : [limits.max * 1.2]].flat()
   const fitting = candidates.find((value) => {
     const verdict = judgeTries(judging, times(value), limits.unit)
@@ -218,7 +238,8 @@ function valuesFor({ outcomes }: { readonly outcomes: readonly OutcomeChoice[] }
 /** The answers that the page shown, or the page behind its cautions, takes; `null` where it takes none. */
 export function answersOf(bench: Bench): readonly string[] | null {
   const page = bench.page()
-  const place = page.kind === 'caution' ? page.guards.place : page.kind === 'before' ? page.proof.node.place : 'node' in page ? page.node.place : bench.walk.node
+  const place =
+    page.kind === 'caution' ? page.guards.place : page.kind === 'before' ? page.proof.node.place : 'node' in page ? page.node.place : bench.walk.node
   const node = locate(charts, bench.walk.pins, place)?.node
   return node !== undefined && isDecision(node) ? node.outcomes.map(({ id }) => id) : null
 }

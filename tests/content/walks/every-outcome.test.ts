@@ -4,7 +4,7 @@ import { isDecision } from '#shared/chart/graph.ts'
 import type { Machine } from '#shared/walk/events.ts'
 import { locate } from '#shared/walk/pinned-charts.ts'
 import { positionKey, waysOn, type Arrived } from '#shared/walk/route.ts'
-import { demoChart, demoCharts } from '../demo-charts.ts'
+import { demoChart, demoCharts } from '#tests/content/demo-charts.ts'
 import { answersOf, benchAt, blower, charts, fourStrokeTrimmer, saw, trimmer, type Bench } from './bench.ts'
 
 /** One way on: the answer at a position, and where it arrives. */
@@ -26,7 +26,10 @@ function mapOf(bench: Bench): ReadonlyMap<string, readonly Way[]> {
     if (deadEnd !== null || map.has(from)) continue
     const node = locate(charts, bench.walk.pins, position.node)?.node
     const arrivals = waysOn(charts, bench.walk, position)
-    map.set(from, arrivals.map((to, at) => ({ from, outcome: node !== undefined && isDecision(node) ? node.outcomes[at]?.id : undefined, to })))
+    map.set(
+      from,
+      arrivals.map((to, at) => ({ from, outcome: node !== undefined && isDecision(node) ? node.outcomes[at]?.id : undefined, to })),
+    )
     queue.push(...arrivals)
   }
   return map
@@ -67,7 +70,8 @@ function expectSafe(bench: Bench): void {
   const { metal, trail } = bench.walk
   if (metal.engine === 'stopped') return
   const here = trail.at(-1)?.position.node
-  for (const id of ['clutch-off', 'lead-off', 'plug-out', 'tank-low', 'muffler-off', 'starter-off'] as const) expect(metal.open, `${here} runs with ${id}`).not.toContain(id)
+  for (const id of ['clutch-off', 'lead-off', 'plug-out', 'tank-low', 'muffler-off', 'starter-off'] as const)
+    expect(metal.open, `${here} runs with ${id}`).not.toContain(id)
   if (metal.open.some((id) => id === 'cover-off')) expect(here).toBe('drag-at-clutch/n9b')
   if (metal.open.some((id) => id === 'screen-out')) expect(here).toBe('no-full-speed/p7')
 }
@@ -113,10 +117,36 @@ function endOf(bench: Bench): string {
 /** Causes that are found from check 10 of no-full-speed on, to which a saw comes back from the clutch. */
 const behindTheTank = ['rings-worn', 'release-open', 'key-sheared', 'coil-gap-wide', 'muffler-blocked']
 const notHere = ['not-here-yet', 'no-cause-found', 'pick']
-const anyMachine = ['throttle-short', 'choke-part-closed', 'air-path-blocked', 'filter-packed', 'stale-fuel', 'water-in-fuel', 'mix-wrong', 'screen-shut', 'plug-bridged', 'plug-fouled', ...behindTheTank]
+const anyMachine = [
+  'throttle-short',
+  'choke-part-closed',
+  'air-path-blocked',
+  'filter-packed',
+  'stale-fuel',
+  'water-in-fuel',
+  'mix-wrong',
+  'screen-shut',
+  'plug-bridged',
+  'plug-fouled',
+  ...behindTheTank,
+]
 const twoStroke = ['limiter-working', 'port-carboned', 'piston-scored']
 const cutting = ['chain-blunt', 'gear-too-big']
-const sawDrive = ['chain-overtight', 'oil-port-blocked', 'rails-pinched', 'nose-seized', 'band-bent', 'band-worn', 'brake-lever-sticks', 'clutch-spring-broken', 'shoes-glazed', 'drum-bearing-dry', 'crank-bearing-rough', 'drum-worn', 'band-drags']
+const sawDrive = [
+  'chain-overtight',
+  'oil-port-blocked',
+  'rails-pinched',
+  'nose-seized',
+  'band-bent',
+  'band-worn',
+  'brake-lever-sticks',
+  'clutch-spring-broken',
+  'shoes-glazed',
+  'drum-bearing-dry',
+  'crank-bearing-rough',
+  'drum-worn',
+  'band-drags',
+]
 const shaftDrive = ['shaft-dry', 'head-bearing-seized']
 
 describe('each start reaches its end on every outcome', () => {
@@ -127,17 +157,48 @@ describe('each start reaches its end on every outcome', () => {
     ['no-full-speed', 'blower', blower, [...anyMachine, ...twoStroke, ...notHere]],
     ['drag-at-clutch', 'chain saw', saw, [...sawDrive, ...behindTheTank, ...twoStroke, ...cutting, ...notHere]],
     ['drag-at-clutch', 'line trimmer', trimmer, [...shaftDrive, 'no-cause-found', 'pick']],
-    ['hard-to-start-printed', 'chain saw', saw, ['cap-vent-shut', 'filter-packed', 'fuel-line-blocked', 'plug-fouled', 'lead-broken', 'choke-not-closing', 'flooded', 'water-in-fuel', 'stop-circuit-shorted', 'no-cause-found']],
-  ] as const)('%s, %s', (chartId, _name, machine, expected) => {
-    const { ends, answered } = walkEverything(chartId, machine)
-    const map = mapOf(benchAt(chartId, machine))
-    expect([...map.values()].flat().map(keyOf).filter((key) => !answered.has(key))).toEqual([])
-    expect([...ends].sort()).toEqual([...new Set(expected)].sort())
-  }, 60_000)
+    [
+      'hard-to-start-printed',
+      'chain saw',
+      saw,
+      [
+        'cap-vent-shut',
+        'filter-packed',
+        'fuel-line-blocked',
+        'plug-fouled',
+        'lead-broken',
+        'choke-not-closing',
+        'flooded',
+        'water-in-fuel',
+        'stop-circuit-shorted',
+        'no-cause-found',
+      ],
+    ],
+  ] as const)(
+    '%s, %s',
+    (chartId, _name, machine, expected) => {
+      const { ends, answered } = walkEverything(chartId, machine)
+      const map = mapOf(benchAt(chartId, machine))
+      expect(
+        [...map.values()]
+          .flat()
+          .map(keyOf)
+          .filter((key) => !answered.has(key)),
+      ).toEqual([])
+      expect([...ends].sort()).toEqual([...new Set(expected)].sort())
+    },
+    60_000,
+  )
 })
 
 test('walks of any answers and gaps come to an end, keep the engine safe, and leave no safety part out of action but on the way to its restoring step', () => {
-  const start = fc.constantFrom(['no-full-speed', saw] as const, ['no-full-speed', fourStrokeTrimmer] as const, ['drag-at-clutch', saw] as const, ['drag-at-clutch', trimmer] as const, ['hard-to-start-printed', blower] as const)
+  const start = fc.constantFrom(
+    ['no-full-speed', saw] as const,
+    ['no-full-speed', fourStrokeTrimmer] as const,
+    ['drag-at-clutch', saw] as const,
+    ['drag-at-clutch', trimmer] as const,
+    ['hard-to-start-printed', blower] as const,
+  )
   fc.assert(
     fc.property(start, fc.array(fc.nat(), { minLength: 60, maxLength: 60 }), ([chartId, machine], choices) => {
       const bench = benchAt(chartId, machine)
@@ -158,7 +219,10 @@ test('walks of any answers and gaps come to an end, keep the engine safe, and le
 }, 60_000)
 
 test('a start that cannot be reproduced asks the lead and names it so', () => {
-  for (const [chartId, first] of [['no-full-speed', 'n1'], ['drag-at-clutch', 'n0']] as const) {
+  for (const [chartId, first] of [
+    ['no-full-speed', 'n1'],
+    ['drag-at-clutch', 'n0'],
+  ] as const) {
     const bench = benchAt(chartId, saw).skip(first, 'not-reproduced')
     expect(bench.walk).toMatchObject({ phase: 'escalated', reason: 'could-not-reproduce' })
   }

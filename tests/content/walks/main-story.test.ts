@@ -68,23 +68,46 @@ describe('a saw that starts and idles but will not reach full speed', () => {
   test('asks for the drum caution before the drum is bare, and for the lead before every touch', () => {
     const pages = walkIt().cautionPages
     expect(pages.find(({ node }) => node === 'drag-at-clutch/n9b')?.ids).toEqual(expect.arrayContaining(['drum', 'start', 'co']))
-    for (const node of ['no-full-speed/n4', 'drag-at-clutch/x9b', 'drag-at-clutch/n9c']) expect(pages.find((page) => page.node === node)?.ids, node).toContain('lead')
+    for (const node of ['no-full-speed/n4', 'drag-at-clutch/x9b', 'drag-at-clutch/n9c'])
+      expect(pages.find((page) => page.node === node)?.ids, node).toContain('lead')
   })
 
   test('ends repaired: never cleaned led to it, the filter is cleaned on the way out, the run is passed', () => {
     const bench = walkIt().repairAndClose(['never-cleaned'], 19)
-    expect(bench.walk).toMatchObject({ phase: 'closed', result: 'repaired', causeId: 'band-drags', contributing: ['never-cleaned'], serviceList: ['clean-filter'] })
+    expect(bench.walk).toMatchObject({
+      phase: 'closed',
+      result: 'repaired',
+      causeId: 'band-drags',
+      contributing: ['never-cleaned'],
+      serviceList: ['clean-filter'],
+    })
     expect(bench.log.find((event) => event.type === 'repair-done')?.payload).toMatchObject({ serviceDone: ['clean-filter'] })
     expect(bench.replayed()).toEqual(bench.state)
   })
 
   test('full speed with chain and bar off sends back to chain and bar, and ends with the lead when these are good too', () => {
-    const bench = benchAt('drag-at-clutch', saw).answer('n0', 'drags').answer('n1', 'slides').answer('n6', 'clear').answer('n7', 'plain').answer('n8', 'even').answer('n9', 'in').answer('n5x', 'good').answer('n2x', 'in')
+    const bench = benchAt('drag-at-clutch', saw)
+      .answer('n0', 'drags')
+      .answer('n1', 'slides')
+      .answer('n6', 'clear')
+      .answer('n7', 'plain')
+      .answer('n8', 'even')
+      .answer('n9', 'in')
+      .answer('n5x', 'good')
+      .answer('n2x', 'in')
     expect(bench.node).toBe('a1')
   })
 
   test('low with no band round the drum goes back to the engine, brake refitted first', () => {
-    const bench = benchAt('drag-at-clutch', saw).answer('n0', 'drags').answer('n1', 'slides').answer('n6', 'packed').answer('n7', 'stripe').answer('n8', 'touches').answer('n9', 'low').step('x9b').answer('n9b', 'low')
+    const bench = benchAt('drag-at-clutch', saw)
+      .answer('n0', 'drags')
+      .answer('n1', 'slides')
+      .answer('n6', 'packed')
+      .answer('n7', 'stripe')
+      .answer('n8', 'touches')
+      .answer('n9', 'low')
+      .step('x9b')
+      .answer('n9b', 'low')
     expect(bench.walk.metal.defeated).toEqual(['chain-brake'])
     bench.step('r9b')
     expect(bench.walk.metal.defeated).toEqual([])
@@ -93,7 +116,15 @@ describe('a saw that starts and idles but will not reach full speed', () => {
   })
 
   test('a brake that sits in the body cannot be tried with the cover off: the walk cleans the seat and proves that', () => {
-    const bench = benchAt('drag-at-clutch', saw).answer('n0', 'drags').answer('n1', 'slides').answer('n6', 'clear').answer('n7', 'plain').answer('n8', 'even').answer('n9', 'low').step('x9b').skip('n9b')
+    const bench = benchAt('drag-at-clutch', saw)
+      .answer('n0', 'drags')
+      .answer('n1', 'slides')
+      .answer('n6', 'clear')
+      .answer('n7', 'plain')
+      .answer('n8', 'even')
+      .answer('n9', 'low')
+      .step('x9b')
+      .skip('n9b')
     bench.step('n9c').step('r9').answer('n9d', 'still')
     expect(bench.node).toBe('n10')
   })
@@ -139,7 +170,16 @@ describe('the ten-check route from full speed missing to a fouled plug', () => {
 })
 
 test('a furred screen is proved by running without it, and is back before the cause is named', () => {
-  const bench = benchAt('no-full-speed', saw).answer('n1', 'low').answer('n2', 'low').answer('n3', 'both').answer('n4', 'free').answer('n5', 'light').answer('n6', 'fresh').answer('n6b', 'grime').answer('n7', 'furred').answer('p7', 'gone')
+  const bench = benchAt('no-full-speed', saw)
+    .answer('n1', 'low')
+    .answer('n2', 'low')
+    .answer('n3', 'both')
+    .answer('n4', 'free')
+    .answer('n5', 'light')
+    .answer('n6', 'fresh')
+    .answer('n6b', 'grime')
+    .answer('n7', 'furred')
+    .answer('p7', 'gone')
   expect(bench.walk.metal).toMatchObject({ engine: 'running', defeated: ['spark-screen'] })
   bench.step('r7a').prove('screen-shut')
   expect(bench.walk.metal).toMatchObject({ engine: 'stopped', defeated: [] })
@@ -162,7 +202,22 @@ test('a chain that a stuck brake holds is never run at full speed for the proof:
 
 test('full speed that was read with the chain on is what a good bar is compared with, also across charts', () => {
   const bench = benchAt('no-full-speed', saw)
-  for (const [id, outcome] of [['n1', 'low'], ['n2', 'low'], ['n3', 'both'], ['n4', 'free'], ['n5', 'light'], ['n6', 'fresh'], ['n6b', 'dry'], ['n7', 'clear'], ['n8', 'tan'], ['n8b', 'in'], ['n9', 'marks'], ['n9', 'in'], ['n5x', 'rails']] as const) bench.answer(id, outcome)
+  for (const [id, outcome] of [
+    ['n1', 'low'],
+    ['n2', 'low'],
+    ['n3', 'both'],
+    ['n4', 'free'],
+    ['n5', 'light'],
+    ['n6', 'fresh'],
+    ['n6b', 'dry'],
+    ['n7', 'clear'],
+    ['n8', 'tan'],
+    ['n8b', 'in'],
+    ['n9', 'marks'],
+    ['n9', 'in'],
+    ['n5x', 'rails'],
+  ] as const)
+    bench.answer(id, outcome)
   expect(bench.node).toBe('p5ax')
   bench.answer('p5ax', 'gone').prove('rails-pinched')
   expect(bench.walk.trail.at(-1)).toMatchObject({ before: null })
