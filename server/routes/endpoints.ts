@@ -4,6 +4,7 @@ import { healthEndpoints } from './health.ts'
 import { libraryEndpoints } from './library.ts'
 import { peopleEndpoints } from './people.ts'
 import { sessionEndpoints } from './session.ts'
+import { walkEndpoints } from './walks.ts'
 
 /** Every endpoint there is. Express, the OpenAPI document and the role test read this list; what is not in it is not served. */
-export const endpoints: readonly Endpoint[] = [...healthEndpoints, ...sessionEndpoints, ...peopleEndpoints, ...chartEndpoints, ...libraryEndpoints]
+export const endpoints: readonly Endpoint[] = [...healthEndpoints, ...sessionEndpoints, ...peopleEndpoints, ...chartEndpoints, ...libraryEndpoints, ...walkEndpoints]
