@@ -1,6 +1,7 @@
 import { readFile } from 'node:fs/promises'
 import { text } from 'node:stream/consumers'
 
+import { StartRefusal } from '#server/lib/start-refusal.ts'
 import { BadInput } from './verb.ts'
 import type { Io, Verb, VerbTable } from './verb.ts'
 
@@ -12,7 +13,7 @@ const groups: Readonly<Record<string, () => Promise<VerbTable>>> = {
   chart: async () => (await import('./chart.ts')).chartVerbs,
   walk: async () => (await import('./walk.ts')).walkVerbs,
 }
-const loadShopVerbs = async (): Promise<VerbTable> => ({})
+const loadShopVerbs = async (): Promise<VerbTable> => (await import('./shop.ts')).shopVerbs
 
 const processIo: Io = {
   read: async (file) => {
@@ -46,9 +47,9 @@ export async function runCommandLine(args: readonly string[], io: Io = processIo
 async function findVerb(args: readonly string[]): Promise<{ verb: Verb; rest: readonly string[] } | null> {
   const [first, second, ...rest] = args
   if (first === undefined || first === 'help' || first === '--help') return null
-  const shopVerb = lookUp(await loadShopVerbs(), first)
-  if (shopVerb) return { verb: shopVerb, rest: args.slice(1) }
   const loadGroup = lookUp(groups, first)
+  const shopVerb = loadGroup ? undefined : lookUp(await loadShopVerbs(), first)
+  if (shopVerb) return { verb: shopVerb, rest: args.slice(1) }
   if (!loadGroup) throw new BadInput(`There is no command "${first}". Run it without a command to see them all.`)
   const table = await loadGroup()
   const verb = second === undefined ? undefined : lookUp(table, second)
@@ -73,6 +74,7 @@ function toUsage(name: string, verb: Verb): string {
 }
 
 function toOneLine(error: unknown): string {
-  const words = error instanceof BadInput || !(error instanceof Error) ? String(error instanceof Error ? error.message : error) : `${error.name}: ${error.message}`
+  const isRefusal = error instanceof BadInput || error instanceof StartRefusal
+  const words = isRefusal ? error.message : String(error)
   return words.replaceAll(/\s*[\r\n]+\s*/g, ' ')
 }
