@@ -1,7 +1,11 @@
 import '@testing-library/jest-dom/vitest'
 
-import { cleanup } from '@testing-library/react'
-import { afterEach } from 'vitest'
+import { cleanup, configure } from '@testing-library/react'
+import { afterEach, vi } from 'vitest'
+
+// A screen's file is fetched when it is first shown; on a busy machine that takes its time.
+configure({ asyncUtilTimeout: 10_000 })
+vi.setConfig({ testTimeout: 30_000 })
 
 afterEach(() => {
   cleanup()

@@ -107,7 +107,10 @@ test('a session that ended meanwhile leads to the sign-in page and remembers the
 })
 
 test('a junior who asks for the people page is led to the bench, and nothing of it is asked of the server', async () => {
-  const { calls } = shopWhere({ session: buildSession('junior') })
+  const { calls } = fakeApi([
+    sessionEndpoint({ session: buildSession('junior') }),
+    { method: 'GET', path: /./, contract: listSessions, answer: () => problem(503, 'busy', 'Try again in a moment.') },
+  ])
   const { router } = renderApp('/people')
   await waitFor(() => expect(router.state.location.pathname).toBe('/'))
   expect(calls.some(({ path }) => path === '/api/people')).toBe(false)

@@ -23,7 +23,7 @@ export function QuietPage({ over, title, knot = 'start', children, beside, banne
       {banner}
       <main id="content" className="corded grow pt-10 pb-16 md:pt-[12vh]">
         <div className="grid max-w-sheet gap-x-24 gap-y-12 lg:grid-cols-[minmax(0,26.25rem)_minmax(0,1fr)]">
-          <div>
+          <div className="max-w-[26.25rem]">
             <p className="label">{over}</p>
             <div className="relative mt-1">
               <Tie kind={knot} at="top-[1.0625rem]" size={20} />

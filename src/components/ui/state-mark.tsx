@@ -10,6 +10,14 @@ const colours: Readonly<Record<MarkState, string>> = {
   open: 'text-open',
 }
 
+const capsInk: Readonly<Record<MarkState, string>> = {
+  good: '[--label-ink:var(--good)]',
+  bad: '[--label-ink:var(--bad)]',
+  care: '[--label-ink:var(--care)]',
+  info: '[--label-ink:var(--info)]',
+  open: '[--label-ink:var(--open)]',
+}
+
 const hollow = 'var(--mark-ground, var(--paper))'
 
 /** Shape first: solid square, solid diamond, hexagon, circle with i, hollow circle. */
@@ -52,7 +60,8 @@ type StateMarkProps = {
 
 /** A state as shape, word and colour, in that order of weight. */
 export function StateMark({ state, children, look = 'words', className = '' }: StateMarkProps) {
-  const type = look === 'caps' ? 'label text-current!' : 'font-medium'
+  // The label's own ink gives way to the state's colour.
+  const type = look === 'caps' ? `label ${capsInk[state]}` : 'font-medium'
   return (
     <span className={`inline-flex items-baseline gap-1.5 ${colours[state]} ${type} ${className}`}>
       <StateShape state={state} />
