@@ -1,7 +1,7 @@
 import { assertNever } from '#shared/lib/assert-never.ts'
-import type { ChartId, NodeId, OutcomeId } from '#shared/lib/ids.ts'
+import type { ChartId, NodeId } from '#shared/lib/ids.ts'
 import { layoutChart } from '#shared/chart/layout/layout-chart.ts'
-import { balloonRadius, type PlacedNode, type RoutedLink } from '#shared/chart/layout/measure.ts'
+import { balloonRadius, type PlacedNode, type RoutedLink } from '#shared/chart/layout/sheet.ts'
 import type { ChartDocument, ChartNode } from '#shared/chart/document.ts'
 import { chartNumbers, indexChart, isDecision, type ChartIndex } from '#shared/chart/graph.ts'
 import type { MachineKind } from '#shared/chart/spec-limits.ts'
@@ -10,22 +10,7 @@ import { defaultNumberFormat, type NumberFormat } from '#shared/units/number-for
 import { roundedPath, towards, type Mark, type MarkGroup, type MarkPoint, type Picture, type Tone } from './marks.ts'
 import { drawShape, shapeNode, textMark, type NodeShape } from './node-shape.ts'
 import { nodeWords, type NodeWords, type WordContext } from './node-words.ts'
-
-/** One way out of a node, as it was taken; `outcome` is missing on the way on of a step. */
-export interface WalkedEdge {
-  readonly from: NodeId
-  readonly outcome?: OutcomeId
-}
-
-/** A walk as it is drawn on its chart: what it passed, what it was stepped back from, and where it stands. */
-export interface PictureRoute {
-  readonly nodes: readonly NodeId[]
-  readonly edges: readonly WalkedEdge[]
-  /** Passed and stepped back from; what is also in `nodes` or `edges` counts as walked. */
-  readonly spentNodes?: readonly NodeId[]
-  readonly spentEdges?: readonly WalkedEdge[]
-  readonly current?: NodeId
-}
+import { toneWords, toTones, type PictureRoute, type RouteTones } from './picture-route.ts'
 
 /** What a picture may show beside the chart itself. */
 export interface PictureOptions {
@@ -63,15 +48,17 @@ export function drawChart(chart: ChartDocument, options: PictureOptions = {}): P
   for (const [id, node] of index.nodes) shapes.set(id, shapeNode(node, wordsOf(words, id), options.outcomes === 'listed'))
   const layout = layoutChart(index, (id) => shapes.get(id) ?? { width: 0, height: 0, above: 0 })
   const tones = toTones(options.route)
-  const links = layout.links.toSorted((a, b) => drawOrder(tones.edge(a)) - drawOrder(tones.edge(b)))
+  const links = layout.links.toSorted((a, b) => drawOrder(tones.link(a.link)) - drawOrder(tones.link(b.link)))
+  const inOrder = new Map([...(options.route?.nodes ?? []), ...layout.nodes.map(({ id }) => id)].toReversed().map((id, place, all) => [id, all.length - place]))
+  const nodes = layout.nodes.toSorted((a, b) => (inOrder.get(a.id) ?? 0) - (inOrder.get(b.id) ?? 0))
   return {
     width: Math.ceil(layout.width),
     height: Math.ceil(layout.height),
     title: chart.title,
     summary: summaryOf(index, words, options.route),
     groups: [
-      ...links.map((link): MarkGroup => edgeGroup(link, tones.edge(link), index)),
-      ...layout.nodes.map((placed) => nodeGroup(placed, shapes, words, tones.node(placed.id))),
+      ...links.map((link): MarkGroup => edgeGroup(link, tones.link(link.link))),
+      ...nodes.map((placed) => nodeGroup(placed, shapes, words, tones.node(placed.id))),
       ...links.flatMap((link) => balloonGroups(link, tones, index)),
     ],
   }
@@ -87,31 +74,6 @@ function nearRoute(chart: ChartDocument, route: PictureRoute): ChartDocument {
 
 function wordsOf(words: ReadonlyMap<NodeId, NodeWords>, id: NodeId): NodeWords {
   return words.get(id) ?? { number: '', title: '', note: '', figure: '', outcomes: [], label: '' }
-}
-
-interface Tones {
-  node(id: NodeId): Tone
-  /** The tone of a line: that of the strongest of the ways that share it. */
-  edge(link: RoutedLink): Tone
-  outcome(from: NodeId, outcome: OutcomeId | undefined): Tone
-}
-
-function toTones(route: PictureRoute | undefined): Tones {
-  if (route === undefined) return { node: () => 'plain', edge: () => 'plain', outcome: () => 'plain' }
-  const key = (from: NodeId, outcome: OutcomeId | undefined): string => `${from} ${outcome ?? ''}`
-  const nodes = new Set(route.nodes)
-  const spentNodes = new Set(route.spentNodes)
-  const edges = new Set(route.edges.map(({ from, outcome }) => key(from, outcome)))
-  const spentEdges = new Set(route.spentEdges?.map(({ from, outcome }) => key(from, outcome)))
-  const outcome = (from: NodeId, id: OutcomeId | undefined): Tone => (edges.has(key(from, id)) ? 'walked' : spentEdges.has(key(from, id)) ? 'spent' : 'quiet')
-  return {
-    node: (id) => (route.current === id ? 'current' : nodes.has(id) ? 'walked' : spentNodes.has(id) ? 'spent' : 'quiet'),
-    outcome,
-    edge: ({ link }) => {
-      const tones = link.outcomes.length === 0 ? [outcome(link.from, undefined)] : link.outcomes.map((id) => outcome(link.from, id))
-      return tones.reduce((strongest, tone) => (drawOrder(tone) > drawOrder(strongest) ? tone : strongest))
-    },
-  }
 }
 
 /** Strong lines are drawn over faint ones. */
@@ -131,12 +93,11 @@ function drawOrder(tone: Tone): number {
   }
 }
 
-function edgeGroup({ link, points }: RoutedLink, tone: Tone, index: ChartIndex): MarkGroup {
-  const isTerminal = index.nodes.get(link.to)?.kind
+function edgeGroup({ link, points }: RoutedLink, tone: Tone): MarkGroup {
   const size = tone === 'walked' ? { length: 11, half: 7 } : { length: 8, half: 4.5 }
   const tip = points.at(-1) ?? { x: 0, y: 0 }
   const before = points.at(-2) ?? tip
-  const end = isTerminal === undefined ? tip : towards(tip, before, size.length - 1)
+  const end = towards(tip, before, size.length - 1)
   const role = link.isLoop ? 'edge-loop' : link.isOtherwise ? 'edge-otherwise' : 'edge'
   return {
     of: 'edge',
@@ -160,16 +121,17 @@ function nodeGroup(placed: PlacedNode, shapes: ReadonlyMap<NodeId, NodeShape>, w
   const { id, x, y, width, height } = placed
   const shape = shapes.get(id)
   const box = { x, y, width, height }
-  return { of: 'node', node: id, label: wordsOf(words, id).label, box, marks: shape === undefined ? [] : drawShape(shape, box, tone) }
+  const label = [wordsOf(words, id).label, toneWords[tone]].filter((part) => part !== '').join('. ')
+  return { of: 'node', node: id, label, box, marks: shape === undefined ? [] : drawShape(shape, box, tone) }
 }
 
-function balloonGroups({ link, balloons }: RoutedLink, tones: Tones, index: ChartIndex): readonly MarkGroup[] {
+function balloonGroups({ link, balloons }: RoutedLink, tones: RouteTones, index: ChartIndex): readonly MarkGroup[] {
   const node = index.nodes.get(link.from)
   const outcomes = node !== undefined && isDecision(node) ? node.outcomes : []
   return link.outcomes.flatMap((outcome, place) => {
     const center = balloons[place]
     if (center === undefined) return []
-    const tone = tones.outcome(link.from, outcome)
+    const tone = tones.balloon(link.from, outcome)
     const at = outcomes.findIndex(({ id }) => id === outcome)
     const numeral = at === -1 ? '?' : String(at + 1)
     const marks: readonly Mark[] = [

@@ -1,4 +1,4 @@
-import type { NodeSize } from '#shared/chart/layout/measure.ts'
+import type { NodeSize } from '#shared/chart/layout/sheet.ts'
 import type { ChartNode } from '#shared/chart/document.ts'
 import { coordinate, type Box, type Mark, type MarkPoint, type MarkRole, type Tone } from './marks.ts'
 import { fonts, styleOf, type MarkFont } from './mark-style.ts'
@@ -110,7 +110,7 @@ function boxShape(node: ChartNode, words: NodeWords, outline: Outline, listOutco
   const lines = [
     ...led(linesOf(words.title, 'title', fonts.title, width, 4, indent), words.number, 'number', blank('title', fonts.title, indent)),
     ...linesOf(words.figure, 'figure', fonts.figure, width, 3, indent),
-    ...linesOf(words.note.toUpperCase(), 'note', fonts.note, width, 2, indent),
+    ...linesOf(words.note.toUpperCase(), 'note', fonts.note, width, 3, indent),
     ...outcomes,
   ]
   const hasTab = outline === 'decision'

@@ -1,5 +1,6 @@
 import dagre from 'dagre'
 import type { NodeId } from '#shared/lib/ids.ts'
+import { essentialEdges } from './essential-edges.ts'
 import type { ChartFlow } from './flow.ts'
 
 /** Where a node stands: rows from the top, columns from the main line. */
@@ -88,19 +89,29 @@ function toRows(flow: ChartFlow, lines: readonly Line[], late: ReadonlySet<NodeI
     if (beside !== undefined) strip.set(beside, own)
   }
   const stripOf = (id: NodeId): NodeId => strip.get(id) ?? id
-  const graph = new dagre.graphlib.Graph()
-  graph.setGraph({ rankdir: 'TB', ranksep: 10, nodesep: 10, ranker: flow.order.length > 300 ? 'longest-path' : 'tight-tree' })
-  graph.setDefaultEdgeLabel(() => ({}))
-  for (const id of flow.order) if (!late.has(id)) graph.setNode(stripOf(id), { width: 10, height: 10 })
+  const edges: (readonly [NodeId, NodeId])[] = []
   const below = (upper: NodeId, lower: NodeId): void => {
-    if (!late.has(upper) && !late.has(lower) && stripOf(upper) !== stripOf(lower)) graph.setEdge(stripOf(upper), stripOf(lower), { minlen: 1 })
+    if (!late.has(upper) && !late.has(lower) && stripOf(upper) !== stripOf(lower)) edges.push([stripOf(upper), stripOf(lower)])
   }
   for (const { from, to, isLoop } of flow.links) if (!isLoop) below(from, to)
   for (const [id, heads] of hanging) stackBelow(flow, id, heads, below)
-  dagre.layout(graph)
-  const heights = [...new Set(graph.nodes().map((name) => graph.node(name).y ?? 0))].toSorted((a, b) => a - b)
-  const rowOf = new Map(heights.map((y, row) => [y, row]))
-  return new Map(flow.order.filter((id) => !late.has(id)).map((id) => [id, rowOf.get(graph.node(stripOf(id)).y ?? 0) ?? 0]))
+  const ranks = toRanks([...new Set(flow.order.filter((id) => !late.has(id)).map(stripOf))], edges)
+  return new Map(flow.order.filter((id) => !late.has(id)).map((id) => [id, ranks.get(stripOf(id)) ?? 0]))
+}
+
+/** Ranks strips so that every edge goes down, as close to what they hang on as can be (dagre's tight tree; for very large charts its longest path). */
+function toRanks(strips: readonly NodeId[], edges: readonly (readonly [NodeId, NodeId])[]): ReadonlyMap<NodeId, number> {
+  const numberOf = new Map(strips.map((id, number) => [id, number]))
+  const graph = new dagre.graphlib.Graph()
+  graph.setGraph({ rankdir: 'TB', ranksep: 10, ranker: strips.length > 300 ? 'longest-path' : 'tight-tree' })
+  strips.forEach((_, number) => graph.setNode(String(number), { width: 10, height: 10 }))
+  const numbered = edges.map(([upper, lower]) => [numberOf.get(upper) ?? 0, numberOf.get(lower) ?? 0] as const)
+  for (const [upper, lower] of essentialEdges(strips.length, numbered)) graph.setEdge(String(upper), String(lower), { minlen: 1 })
+  dagre.layout(graph, { disableOptimalOrderHeuristic: true })
+  const heightOf = (number: number): number => graph.node(String(number)).y ?? 0
+  const heights = [...new Set(strips.map((_, number) => heightOf(number)))].toSorted((a, b) => a - b)
+  const rankOf = new Map(heights.map((y, rank) => [y, rank]))
+  return new Map(strips.map((id, number) => [id, rankOf.get(heightOf(number)) ?? 0]))
 }
 
 /** What hangs from one node is stacked, and its straight way on comes below all of it; a long side way runs beside it instead. */

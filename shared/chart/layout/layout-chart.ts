@@ -2,9 +2,10 @@ import type { NodeId } from '#shared/lib/ids.ts'
 import type { ChartIndex } from '../graph.ts'
 import { toFlow } from './flow.ts'
 import { placeOnGrid } from './grid.ts'
-import { measure, type ChartLayout, type NodeSize } from './measure.ts'
+import { measure } from './measure.ts'
 import { givenPlaces, placeFreely } from './place-freely.ts'
 import { planRoutes } from './plan-routes.ts'
+import type { ChartLayout, NodeSize } from './sheet.ts'
 
 /**
  * Lays a chart out on a sheet: the main line straight down on the left, what an outcome sets aside to the right of its check, ways back on the left.
@@ -16,5 +17,7 @@ export function layoutChart(index: ChartIndex, sizeOf: (id: NodeId) => NodeSize)
   const places = givenPlaces(index.chart, flow)
   if (places !== null) return placeFreely(flow, places, sizeOf)
   const cells = placeOnGrid(flow)
-  return measure(cells, planRoutes(flow, cells), sizeOf)
+  const layout = measure(cells, planRoutes(flow, cells), sizeOf)
+  const orderOf = new Map(flow.order.map((id, place) => [id, place]))
+  return { ...layout, nodes: layout.nodes.toSorted((a, b) => (orderOf.get(a.id) ?? 0) - (orderOf.get(b.id) ?? 0)) }
 }

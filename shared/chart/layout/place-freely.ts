@@ -1,7 +1,7 @@
 import type { NodeId } from '#shared/lib/ids.ts'
 import type { ChartDocument } from '../document.ts'
 import type { ChartFlow, FlowLink } from './flow.ts'
-import { balloonPitch, type ChartLayout, type NodeSize, type PlacedNode, type Point, type RoutedLink } from './measure.ts'
+import { balloonPitch, type ChartLayout, type NodeSize, type PlacedNode, type Point, type RoutedLink } from './sheet.ts'
 import type { Side } from './plan-routes.ts'
 
 const margin = 24

@@ -21,8 +21,6 @@ export interface PlannedRoute {
   readonly leave: Side
   /** Counts the routes that leave by the same side apart from each other, from 0; 0 is the middle of the side. */
   readonly leaveSlot: number
-  /** Most balloons that sit side by side at this side of the node. */
-  readonly balloonsAbreast: number
   readonly enter: Side
   readonly legs: readonly Leg[]
   /** Where its balloons sit: by the side it leaves, on its first leg, or before the node it enters. */
@@ -50,21 +48,16 @@ export function planRoutes(flow: ChartFlow, cells: ReadonlyMap<NodeId, Cell>): r
 function withSlots(flow: ChartFlow, plans: readonly (Plan & { readonly link: FlowLink })[]): readonly PlannedRoute[] {
   const sideOf = (plan: Plan & { readonly link: FlowLink }): string => `${plan.link.from} ${plan.leave}`
   const straight = new Set(plans.filter(({ legs }) => legs.length === 0).map(sideOf))
-  const abreast = new Map<string, number>()
   const leaving = new Map<string, number>()
-  for (const plan of plans) {
-    abreast.set(sideOf(plan), Math.max(abreast.get(sideOf(plan)) ?? 1, plan.link.outcomes.length))
-    leaving.set(sideOf(plan), (leaving.get(sideOf(plan)) ?? 0) + 1)
-  }
+  for (const plan of plans) leaving.set(sideOf(plan), (leaving.get(sideOf(plan)) ?? 0) + 1)
   const next = new Map<string, number>()
   return plans.map((plan) => {
     const side = sideOf(plan)
-    const balloonsAbreast = abreast.get(side) ?? 1
-    if (plan.leave === 'left') return { ...plan, leaveSlot: 1, balloonsAbreast, balloons: (leaving.get(side) ?? 1) > 1 ? 'first-leg' : plan.balloons }
+    if (plan.leave === 'left') return { ...plan, leaveSlot: 1, balloons: (leaving.get(side) ?? 1) > 1 ? 'first-leg' : plan.balloons }
     const isMiddle = plan.leave === 'right' || plan.legs.length === 0 || (isMain(flow, plan.link) && !straight.has(side))
     const slot = isMiddle ? 0 : (next.get(side) ?? 1)
     if (!isMiddle) next.set(side, slot + 1)
-    return { ...plan, leaveSlot: slot, balloonsAbreast }
+    return { ...plan, leaveSlot: slot }
   })
 }
 
@@ -75,7 +68,7 @@ interface Situation {
   readonly to: Cell
   readonly taken: ReadonlySet<string>
 }
-type Plan = Omit<PlannedRoute, 'link' | 'leaveSlot' | 'balloonsAbreast'>
+type Plan = Omit<PlannedRoute, 'link' | 'leaveSlot'>
 
 function isMain(flow: ChartFlow, link: FlowLink): boolean {
   return flow.mainOf.get(link.from) === link.to && !link.isLoop
