@@ -43,6 +43,8 @@ interface Definition<C extends Contract, A extends Access> {
   readonly bodyMaxBytes?: number
   /** Whether a write has to name the state that it changes. */
   readonly needsIfMatch?: boolean
+  /** Whether the answer names its state, for a later If-Match. */
+  readonly givesEtag?: boolean
   /** Refusals beyond those that any endpoint of its form can give. */
   readonly problems?: readonly ProblemCode[]
   readonly run: (deps: Deps, call: Call<C, A>) => Promise<z.input<C['response']>>

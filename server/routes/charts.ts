@@ -26,6 +26,7 @@ export const chartEndpoints = [
     method: 'post',
     path: '/api/charts',
     role: 'lead',
+    givesEtag: true,
     contract: api.createChart,
     status: 201,
     bodyMaxBytes: chartBodyMaxBytes,
@@ -71,6 +72,7 @@ export const chartEndpoints = [
     method: 'get',
     path: '/api/charts/:id/draft',
     role: 'lead',
+    givesEtag: true,
     contract: api.getDraft,
     run: async (deps, { params, reply }) => {
       const draft = await getDraft(deps, params.id)
@@ -84,6 +86,7 @@ export const chartEndpoints = [
     method: 'put',
     path: '/api/charts/:id/draft',
     role: 'lead',
+    givesEtag: true,
     contract: api.saveDraft,
     bodyMaxBytes: chartBodyMaxBytes,
     needsIfMatch: true,
