@@ -97,7 +97,7 @@ export class Bench {
   /** Does some acts; a careful person reads whatever cautions wait before each. */
   do(acts: readonly Act[], careful: boolean): void {
     for (const act of acts) {
-      if (careful) readPending(this)
+      if (careful && act !== readCautions) readPending(this)
       for (const draft of act(this)) if (!this.send(draft)) return
     }
   }
