@@ -1,10 +1,11 @@
 import { mustPass } from '#shared/chart/chart-set.ts'
 import { hasErrors, lintChart } from '#shared/chart/lint/lint-chart.ts'
+import { exportVerb } from './chart-export.ts'
 import { readChartsOfFile } from './chart-files.ts'
 import { BadInput } from './verb.ts'
 import type { VerbTable } from './verb.ts'
 
-/** `chart check FILE` and `chart musts FILE`; `-` reads standard input, jumps resolve among the files beside FILE. */
+/** `chart check FILE`, `chart musts FILE` and `chart export FILE`; `-` reads standard input, jumps resolve among the files beside FILE. */
 export const chartVerbs: VerbTable = {
   check: {
     usage: 'FILE',
@@ -23,6 +24,7 @@ export const chartVerbs: VerbTable = {
       return { json: { causes: Object.fromEntries(mustPass(root, charts)) } }
     },
   },
+  export: exportVerb,
 }
 
 function oneFile(verb: string, args: readonly string[]): string {

@@ -36,7 +36,7 @@ export async function runCommandLine(args: readonly string[], io: Io = processIo
       return 0
     }
     const answer = await found.verb.run(found.rest, io)
-    process.stdout.write(`${JSON.stringify(answer.json, null, 2)}\n`)
+    process.stdout.write(answer.text ?? `${JSON.stringify(answer.json, null, 2)}\n`)
     return answer.failed === true ? 1 : 0
   } catch (error) {
     process.stderr.write(`${toOneLine(error)}\n`)

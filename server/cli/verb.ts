@@ -6,8 +6,11 @@ export type Io = {
   readonly note: (text: string) => void
 }
 
-/** What a verb answers: printed as JSON on stdout in any case; `failed` makes the exit status 1 (a chart with errors). */
-export type Answer = { readonly json: unknown; readonly failed?: boolean }
+/**
+ * What a verb answers: `json`, printed on stdout in any case, or the `text` of a file, printed as it is; `failed` makes the exit status 1
+ * (a chart with errors).
+ */
+export type Answer = { readonly json?: unknown; readonly text?: string; readonly failed?: boolean }
 
 /** One command: the arguments that it takes, what it does in a few words, and the act. */
 export type Verb = {
