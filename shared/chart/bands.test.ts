@@ -21,7 +21,9 @@ describe('bands between limits that a spec sheet knows', () => {
   })
   test('the very limit belongs to one of its neighbours', () => {
     expect(said([low, band('in', { from: 'min' })], spec, true)).toEqual(['gap at the lower limit'])
-    expect(said([band('low', { to: 'min', toIncluded: true }), band('in', { from: 'min', fromIncluded: true })], spec, true)).toEqual(['overlap at the lower limit'])
+    expect(said([band('low', { to: 'min', toIncluded: true }), band('in', { from: 'min', fromIncluded: true })], spec, true)).toEqual([
+      'overlap at the lower limit',
+    ])
   })
   test('what nobody covers is named', () => {
     expect(said([inside], spec, true)).toEqual(['gap below the lower limit', 'gap above the upper limit'])
@@ -51,7 +53,12 @@ describe('bands between numbers', () => {
     expect(said(fromZero, undefined, false)).toEqual(['gap below 0'])
   })
   test('figures printed in two units are limits like any other', () => {
-    const printed = { as: [{ max: 0.0232, unit: 'in' as const }, { max: 0.584, unit: 'mm' as const }] }
+    const printed = {
+      as: [
+        { max: 0.0232, unit: 'in' as const },
+        { max: 0.584, unit: 'mm' as const },
+      ],
+    }
     expect(said([band('in', { to: 'max', toIncluded: true }), high], printed, true)).toEqual([])
     expect(said([band('in', { from: 'min', fromIncluded: true, to: 'max', toIncluded: true }), high], printed, true)).toEqual([])
   })
@@ -63,15 +70,18 @@ describe('bands between numbers', () => {
 describe('by trying values', () => {
   const end = fc.option(fc.integer({ min: 1, max: 5 }), { nil: undefined })
   const bands = fc.array(
-    fc.record({ from: end, to: end, fromIncluded: fc.boolean(), toIncluded: fc.boolean() }).map(({ from, to, fromIncluded, toIncluded }, ) =>
-      band('x', { fromIncluded, toIncluded, ...(from === undefined ? {} : { from }), ...(to === undefined ? {} : { to }) }),
-    ),
+    fc
+      .record({ from: end, to: end, fromIncluded: fc.boolean(), toIncluded: fc.boolean() })
+      .map(({ from, to, fromIncluded, toIncluded }) =>
+        band('x', { fromIncluded, toIncluded, ...(from === undefined ? {} : { from }), ...(to === undefined ? {} : { to }) }),
+      ),
     { minLength: 1, maxLength: 4 },
   )
   /** Every whole number that an end can be, and a value on each side of it. */
   const values = Array.from({ length: 13 }, (_, index) => index / 2)
   const holds = ({ from, to, fromIncluded, toIncluded }: Band, value: number) =>
-    (from === undefined || value > Number(from) || (value === from && fromIncluded === true)) && (to === undefined || value < Number(to) || (value === to && toIncluded === true))
+    (from === undefined || value > Number(from) || (value === from && fromIncluded === true)) &&
+    (to === undefined || value < Number(to) || (value === to && toIncluded === true))
 
   test('there is a gap exactly where some value has no band, and an overlap where one has several', () => {
     fc.assert(

@@ -27,7 +27,9 @@ export function bandFaults(bands: readonly Band[], limits: ChartLimits | undefin
     if (run !== undefined && run.outcomes.join(' ') === outcomes.join(' ')) run.cells.push(cell)
     else runs.push({ cells: [cell], outcomes })
   }
-  return runs.flatMap(({ cells, outcomes }) => (outcomes.length === 1 ? [] : [{ kind: outcomes.length === 0 ? 'gap' : 'overlap', where: whereWords(cells), outcomes } as const]))
+  return runs.flatMap(({ cells, outcomes }) =>
+    outcomes.length === 1 ? [] : [{ kind: outcomes.length === 0 ? 'gap' : 'overlap', where: whereWords(cells), outcomes } as const],
+  )
 }
 
 type Span = { readonly from: End; readonly fromIncluded: boolean; readonly to: End; readonly toIncluded: boolean; readonly outcome: string }
@@ -36,7 +38,9 @@ type Span = { readonly from: End; readonly fromIncluded: boolean; readonly to: E
 type Cell = { readonly from: End; readonly to: End }
 
 function usesNumbers(bands: readonly Band[], limits: ChartLimits | undefined): boolean {
-  return (limits !== undefined && !('spec' in limits) && !('as' in limits)) || bands.some((band) => typeof band.from === 'number' || typeof band.to === 'number')
+  return (
+    (limits !== undefined && !('spec' in limits) && !('as' in limits)) || bands.some((band) => typeof band.from === 'number' || typeof band.to === 'number')
+  )
 }
 
 function scaleOf(bands: readonly Band[], limits: ChartLimits | undefined): Scale | undefined {

@@ -68,7 +68,14 @@ describe('what every route to a cause passes', () => {
   })
 
   test('on another machine the walk passes a node, so what stands behind it is no must', () => {
-    const nodes = [start(), check('n1', undefined, { onlyFor: { classes: ['chain-saw'], otherwise: 'n3' } }), check('n2'), check('n3'), cause('c', 'worn'), ask()]
+    const nodes = [
+      start(),
+      check('n1', undefined, { onlyFor: { classes: ['chain-saw'], otherwise: 'n3' } }),
+      check('n2'),
+      check('n3'),
+      cause('c', 'worn'),
+      ask(),
+    ]
     const edges = ['s > n1', 'n1.good > n2', 'n1.bad > ask', 'n2.good > n3', 'n2.bad > ask', 'n3.bad > c', 'n3.good > ask']
     expect(musts({ nodes, edges })).toEqual({ worn: ['s', 'n1', 'n3'] })
   })

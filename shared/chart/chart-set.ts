@@ -60,7 +60,11 @@ export function resolveJump(charts: ChartSet, jump: NodeOf<'jump'>): JumpTarget 
 export type JoinedNode = { readonly chart: ChartIndex; readonly node: ChartNode }
 
 /** Charts joined by their jumps, as numbers for the graph algorithms. */
-export type JoinedGraph = { readonly graph: Digraph; readonly nodes: readonly JoinedNode[]; readonly numberOf: (chart: ChartId, node: NodeId) => number | undefined }
+export type JoinedGraph = {
+  readonly graph: Digraph
+  readonly nodes: readonly JoinedNode[]
+  readonly numberOf: (chart: ChartId, node: NodeId) => number | undefined
+}
 
 /**
  * Joins charts into one graph: edges, `onlyFor.otherwise`, and every fixed jump to the node where it arrives. A jump that
@@ -101,7 +105,10 @@ function pair(from: number, to: number | undefined): (readonly [number, number])
  */
 export function mustPass(root: ChartIndex, charts: ChartSet = new Map([[root.id, root]])): ReadonlyMap<CauseId, readonly NodeId[]> {
   const { graph, nodes, numberOf } = joinCharts(charts)
-  const tree = dominators(graph, root.starts.flatMap((start) => numberOf(root.id, start.id) ?? []))
+  const tree = dominators(
+    graph,
+    root.starts.flatMap((start) => numberOf(root.id, start.id) ?? []),
+  )
   const reached = new Map<CauseId, number[]>()
   for (const node of root.nodes.values()) {
     const number = node.kind === 'cause' ? numberOf(root.id, node.id) : undefined

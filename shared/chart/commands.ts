@@ -27,7 +27,12 @@ export type ChartCommand =
   /** Changes what the chart says of itself. */
   | { readonly type: 'set-chart'; readonly patch: Patch<Pick<ChartDocument, ChartField>, 'title'> & { readonly title?: string } }
   /** Adds nodes, with edges among them or to nodes that are there, and places on the drawing; also what paste does. */
-  | { readonly type: 'add-nodes'; readonly nodes: readonly ChartNode[]; readonly edges?: readonly ChartEdge[]; readonly positions?: Readonly<Record<string, Point>> }
+  | {
+      readonly type: 'add-nodes'
+      readonly nodes: readonly ChartNode[]
+      readonly edges?: readonly ChartEdge[]
+      readonly positions?: Readonly<Record<string, Point>>
+    }
   /** Puts a node into an edge: the edge leads to it, and all its ways on lead to where the edge led. */
   | { readonly type: 'insert-node'; readonly node: ChartNode; readonly into: EdgeStart; readonly position?: Point }
   /** Takes nodes out with their edges; with `closeGap` what led to a node leads on to where its good way led. What else names them stays, and the chart check tells. */

@@ -20,7 +20,10 @@ export function toDigraph(size: number, edges: readonly (readonly [from: number,
 
 /** The same graph with every edge turned round. */
 export function reverse(graph: Digraph): Digraph {
-  return toDigraph(graph.size, listEdges(graph).map(([from, to]) => [to, from] as const))
+  return toDigraph(
+    graph.size,
+    listEdges(graph).map(([from, to]) => [to, from] as const),
+  )
 }
 
 /** All edges, by node and then in their order. */

@@ -134,9 +134,7 @@ const readingSchema = z.strictObject({
   unit: unitSchema,
   limits: limitsSchema.optional(),
   bands: z.array(bandSchema).max(50).optional(),
-  repeat: z
-    .strictObject({ equal: z.number().int().min(2).max(9), within: z.number().min(0), atMost: z.number().int().min(2).max(20) })
-    .optional(),
+  repeat: z.strictObject({ equal: z.number().int().min(2).max(9), within: z.number().min(0), atMost: z.number().int().min(2).max(20) }).optional(),
 })
 const proofSchema = z.strictObject({
   ...anyDecision,
@@ -224,7 +222,10 @@ export type Access = z.infer<typeof accessSchema>
 export const remedySchema = z.strictObject({
   text,
   minutes: minutes.optional(),
-  parts: z.array(z.strictObject({ title: line, quantity: z.number().min(0).max(1000) })).max(50).optional(),
+  parts: z
+    .array(z.strictObject({ title: line, quantity: z.number().min(0).max(1000) }))
+    .max(50)
+    .optional(),
 })
 /** What puts a cause right. */
 export type Remedy = z.infer<typeof remedySchema>

@@ -25,7 +25,7 @@ export function dominators(graph: Digraph, roots: readonly number[]): Int32Array
   const into = reverse(graph)
   const climbed = new Int32Array(top + 1).fill(-1)
   let stamp = 0
-  for (let changed = true; changed; ) {
+  for (let changed = true; changed;) {
     changed = false
     for (let index = top - 1; index >= 0; index -= 1) {
       stamp += 1

@@ -23,7 +23,13 @@ export function patched<T extends object>(whole: T, patch: object, schema: ZodTy
   const changed = fields.filter(([, value]) => value !== null)
   const good = checked(schema, { ...without(whole, gone), ...Object.fromEntries(changed) })
   if (!good.ok) return good
-  return ok({ ...without(whole, gone), ...only(good.value as object, changed.map(([field]) => field)) })
+  return ok({
+    ...without(whole, gone),
+    ...only(
+      good.value as object,
+      changed.map(([field]) => field),
+    ),
+  })
 }
 
 /** Sends a value through a schema and takes it from there. */
@@ -57,8 +63,10 @@ export function refuse(code: EditRefusal['code'], detail: string): { readonly ok
 /** Refuses: the chart has no such node. */
 export const noNode = (id: string) => refuse('no-such-node', `This chart has no node ${id}.`)
 /** Refuses: the node has no such outcome, or an edge names none where it must. */
-export const noOutcome = (id: string, outcome: string | undefined) => refuse('no-such-outcome', outcome === undefined ? `An edge of node ${id} begins at one of its outcomes.` : `Node ${id} has no outcome ${outcome}.`)
+export const noOutcome = (id: string, outcome: string | undefined) =>
+  refuse('no-such-outcome', outcome === undefined ? `An edge of node ${id} begins at one of its outcomes.` : `Node ${id} has no outcome ${outcome}.`)
 /** Refuses: no edge begins there. */
-export const noEdge = (start: EdgeStart) => refuse('no-such-edge', `No edge leads on from ${start.outcome === undefined ? '' : `outcome ${start.outcome} of `}node ${start.from}.`)
+export const noEdge = (start: EdgeStart) =>
+  refuse('no-such-edge', `No edge leads on from ${start.outcome === undefined ? '' : `outcome ${start.outcome} of `}node ${start.from}.`)
 /** Refuses: something else has this id. */
 export const idTaken = (id: string) => refuse('id-taken', `The id ${id} is taken. Choose another.`)

@@ -137,7 +137,7 @@ function forgetting(node: DecisionNode, outcomeId: OutcomeId): DecisionNode {
     ...(ifSkipped === undefined || ifSkipped === outcomeId ? {} : { ifSkipped }),
     ...(rows === undefined ? {} : { rows: Object.fromEntries(graded) }),
     ...(kept.kind === 'reading' && kept.bands !== undefined ? { bands: kept.bands.filter((band) => band.outcome !== outcomeId) } : {}),
-  } as DecisionNode
+  }
 }
 
 /** A list with one entry moved to another place, or the list itself if that changes nothing. */

@@ -1,5 +1,5 @@
 import { describe, expect, test } from 'vitest'
-import { buildChart, cause, check, reading, soundSketch, step, type ChartSketch } from '#tests/support/chart-builder.ts'
+import { buildChart, cause, check, reading, soundSketch, step } from '#tests/support/chart-builder.ts'
 import { vary } from '#tests/support/lint.ts'
 import type { ChartCommand } from './commands.ts'
 import type { ChartDocument } from './document.ts'
@@ -22,7 +22,7 @@ function refusal(chart: ChartDocument, command: object) {
 
 const edgesOf = (chart: ChartDocument) => chart.edges.map(({ from, outcome, to }) => `${from}${outcome === undefined ? '' : `.${outcome}`} > ${to}`)
 const nodeOf = (chart: ChartDocument, id: string) => chart.nodes.find((node) => node.id === id)
-const sketched = (change: Parameters<typeof vary>[1]): ChartDocument => buildChart(vary(soundSketch, change) as ChartSketch)
+const sketched = (change: Parameters<typeof vary>[1]): ChartDocument => buildChart(vary(soundSketch, change))
 
 describe('nodes', () => {
   test('an edit leaves every node that it does not concern the same object', () => {
@@ -50,13 +50,24 @@ describe('nodes', () => {
 
   test('a patch that the door would refuse is refused, and names the field', () => {
     expect(refusal(sound, { type: 'set-node', nodeId: 'n2', patch: { minutes: -1 } })).toMatchObject({ code: 'invalid', errors: [{ pointer: '#/minutes' }] })
-    expect(refusal(sound, { type: 'set-node', nodeId: 'n2', patch: { suspect: 'filter-packed' } })).toMatchObject({ code: 'invalid', errors: [{ pointer: '#/suspect' }] })
+    expect(refusal(sound, { type: 'set-node', nodeId: 'n2', patch: { suspect: 'filter-packed' } })).toMatchObject({
+      code: 'invalid',
+      errors: [{ pointer: '#/suspect' }],
+    })
     expect(refusal(sound, { type: 'set-node', nodeId: 'n9', patch: { minutes: 1 } }).code).toBe('no-such-node')
   })
 
   test('id and kind stay; another kind is another node in its place, and edges of outcomes that it lacks go', () => {
     expect(edit(sound, { type: 'set-node', nodeId: 'n2', patch: { id: 'x', kind: 'step' } })).toBe(sound)
-    const replaced = edit(sound, { type: 'replace-node', node: reading('n2', { outcomes: [{ id: 'low', title: 'Low' }, { id: 'good', title: 'In limits', normal: true }] }) })
+    const replaced = edit(sound, {
+      type: 'replace-node',
+      node: reading('n2', {
+        outcomes: [
+          { id: 'low', title: 'Low' },
+          { id: 'good', title: 'In limits', normal: true },
+        ],
+      }),
+    })
     expect(nodeOf(replaced, 'n2')?.kind).toBe('reading')
     expect(edgesOf(replaced)).toContain('n2.good > ask')
     expect(edgesOf(replaced)).not.toContain('n2.bad > p2')
@@ -64,7 +75,15 @@ describe('nodes', () => {
 
   test('nodes come with their edges and places, or not at all', () => {
     const nodes = [step('w1'), step('w2')]
-    const added = edit(sound, { type: 'add-nodes', nodes, edges: [{ from: 'w1', to: 'w2' }, { from: 'w2', to: 'ask' }], positions: { w1: { x: 1, y: 2 } } })
+    const added = edit(sound, {
+      type: 'add-nodes',
+      nodes,
+      edges: [
+        { from: 'w1', to: 'w2' },
+        { from: 'w2', to: 'ask' },
+      ],
+      positions: { w1: { x: 1, y: 2 } },
+    })
     expect(edgesOf(added).slice(-2)).toEqual(['w1 > w2', 'w2 > ask'])
     expect(added.positions).toEqual({ w1: { x: 1, y: 2 } })
     expect(refusal(sound, { type: 'add-nodes', nodes: [step('n2')] }).code).toBe('id-taken')
@@ -97,7 +116,11 @@ describe('taking nodes out', () => {
   })
 
   test('hands the walks of other machines over too', () => {
-    const chart = sketched({ nodes: [check('n3', undefined, { onlyFor: { classes: ['mower'], otherwise: 'n2' } })], drop: ['n1.yes > n2'], edges: ['n1.yes > n3', 'n3.good > n2', 'n3.bad > ask'] })
+    const chart = sketched({
+      nodes: [check('n3', undefined, { onlyFor: { classes: ['mower'], otherwise: 'n2' } })],
+      drop: ['n1.yes > n2'],
+      edges: ['n1.yes > n3', 'n3.good > n2', 'n3.bad > ask'],
+    })
     expect(nodeOf(edit(chart, { type: 'remove-nodes', nodeIds: ['n2'], closeGap: true }), 'n3')?.onlyFor?.otherwise).toBe('ask')
   })
 

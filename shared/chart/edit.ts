@@ -2,9 +2,34 @@ import type { ZodType } from 'zod'
 import { assertNever } from '#shared/lib/assert-never.ts'
 import { ok } from '#shared/lib/result.ts'
 import type { ChartCommand, ChartField, EntryList, EntryLists } from './commands.ts'
-import { accessSchema, causeSchema, cautionSchema, chartDocumentSchema, nodeSchema, outcomeSchema, serviceItemSchema, specKeySchema, type ChartDocument, type Outcome } from './document.ts'
+import {
+  accessSchema,
+  causeSchema,
+  cautionSchema,
+  chartDocumentSchema,
+  nodeSchema,
+  outcomeSchema,
+  serviceItemSchema,
+  specKeySchema,
+  type ChartDocument,
+  type Outcome,
+} from './document.ts'
 import { chain, checked, idTaken, only, patched, refuse, without, type Edited } from './edit-checks.ts'
-import { addNodes, connect, disconnect, editNode, editOutcome, editOutcomes, insertNode, move, moved, place, removeNode, removeOutcome, replaceNode } from './edit-nodes.ts'
+import {
+  addNodes,
+  connect,
+  disconnect,
+  editNode,
+  editOutcome,
+  editOutcomes,
+  insertNode,
+  move,
+  moved,
+  place,
+  removeNode,
+  removeOutcome,
+  replaceNode,
+} from './edit-nodes.ts'
 
 /**
  * Makes one edit. Pure: the chart stays untouched, and whatever the edit does not concern is the very same object in the
@@ -35,7 +60,9 @@ export function applyCommand(chart: ChartDocument, command: ChartCommand): Edite
       return editOutcomes(chart, command.nodeId, (outcomes) => {
         const added = checked(outcomeSchema, command.outcome)
         if (!added.ok) return added
-        return outcomes.some((outcome) => outcome.id === added.value.id) ? idTaken(added.value.id) : ok(outcomes.toSpliced(Math.max(0, command.at ?? outcomes.length), 0, added.value))
+        return outcomes.some((outcome) => outcome.id === added.value.id)
+          ? idTaken(added.value.id)
+          : ok(outcomes.toSpliced(Math.max(0, command.at ?? outcomes.length), 0, added.value))
       })
     case 'set-outcome':
       return editOutcome(chart, command.nodeId, command.outcomeId, (outcomes, place) => {
@@ -71,7 +98,15 @@ export function applyCommand(chart: ChartDocument, command: ChartCommand): Edite
 // The chart itself
 
 const chartFields = ['title', 'searchWords', 'basis', 'appliesTo', 'contributing', 'safetyParts', 'source'] as const satisfies readonly ChartField[]
-const chartFieldsSchema = chartDocumentSchema.pick({ title: true, searchWords: true, basis: true, appliesTo: true, contributing: true, safetyParts: true, source: true })
+const chartFieldsSchema = chartDocumentSchema.pick({
+  title: true,
+  searchWords: true,
+  basis: true,
+  appliesTo: true,
+  contributing: true,
+  safetyParts: true,
+  source: true,
+})
 
 function setChart(chart: ChartDocument, patch: object): Edited {
   const others = Object.keys(chart).filter((field) => !chartFields.some((own) => own === field))
@@ -87,7 +122,7 @@ type Entry = EntryLists[EntryList]
 
 function entrySchema(list: EntryList): ZodType<Entry> {
   const schemas = { causes: causeSchema, serviceItems: serviceItemSchema, specKeys: specKeySchema, cautions: cautionSchema, access: accessSchema }
-  return schemas[list] as unknown as ZodType<Entry>
+  return schemas[list]
 }
 
 function editEntries(chart: ChartDocument, list: EntryList, change: (entries: readonly Entry[]) => Edited<readonly Entry[]>): Edited {
@@ -96,7 +131,7 @@ function editEntries(chart: ChartDocument, list: EntryList, change: (entries: re
   const changed = change(entries)
   if (!changed.ok) return changed
   if (changed.value === entries) return ok(chart)
-  return ok((isTop ? { ...chart, [list]: changed.value } : { ...chart, library: { ...chart.library, [list]: changed.value } }) as ChartDocument)
+  return ok((isTop ? { ...chart, [list]: changed.value } : { ...chart, library: { ...chart.library, [list]: changed.value } }))
 }
 
 function editEntry(chart: ChartDocument, list: EntryList, id: string, change: (entries: readonly Entry[], at: number) => Edited<readonly Entry[]>): Edited {
@@ -106,4 +141,10 @@ function editEntry(chart: ChartDocument, list: EntryList, id: string, change: (e
   })
 }
 
-const entryWords: Readonly<Record<EntryList, string>> = { causes: 'causes', serviceItems: 'service items', specKeys: 'spec keys', cautions: 'cautions', access: 'accesses' }
+const entryWords: Readonly<Record<EntryList, string>> = {
+  causes: 'causes',
+  serviceItems: 'service items',
+  specKeys: 'spec keys',
+  cautions: 'cautions',
+  access: 'accesses',
+}

@@ -10,7 +10,12 @@ describe('the index of a chart', () => {
   test('edges stand in the order of the outcomes, however the file has them', () => {
     const chart = index({ ...soundSketch, edges: [...soundSketch.edges].reverse() })
     expect(chart.edgesFrom.get(node('n2'))?.map((edge) => edge.outcome)).toEqual(['good', 'bad'])
-    expect(chart.edgesInto.get(node('ask'))?.map((edge) => edge.from).sort()).toEqual(['n2', 'p2'])
+    expect(
+      chart.edgesInto
+        .get(node('ask'))
+        ?.map((edge) => edge.from)
+        .sort(),
+    ).toEqual(['n2', 'p2'])
   })
 
   test('an outcome leads where its edge says, or nowhere', () => {
@@ -28,7 +33,10 @@ describe('the index of a chart', () => {
   })
 
   test('a jump into its own chart is a way on, and so is the node that takes over on another machine', () => {
-    const chart = index({ nodes: [start(), check('n1', undefined, { onlyFor: { classes: ['mower'], otherwise: 'ask' } }), jump('j', 'under-test', { at: 'n1' }), ask()], edges: ['s > n1', 'n1.bad > j'] })
+    const chart = index({
+      nodes: [start(), check('n1', undefined, { onlyFor: { classes: ['mower'], otherwise: 'ask' } }), jump('j', 'under-test', { at: 'n1' }), ask()],
+      edges: ['s > n1', 'n1.bad > j'],
+    })
     const { graph, ids } = toChartGraph(chart)
     const named = ids.map((id, number) => `${id}: ${[...graph.targets.slice(graph.rows[number], graph.rows[number + 1])].map((to) => ids[to]).join(' ')}`)
     expect(named).toEqual(['s: n1', 'n1: j ask', 'j: n1', 'ask: '])
@@ -41,10 +49,16 @@ describe('one physical check', () => {
     return chart.chart.nodes.filter(isDecision).map((entry) => physicalCheck(chart, entry))
   }
   test('is named by its own id, by the node that it is the same as, or by its place', () => {
-    expect(physical([check('a', undefined, { checkId: 'light' }), check('b', undefined, { sameAs: 'a' }), check('c', undefined, { sameAs: 'd' }), check('d')])).toEqual(['light', 'light', 'x/d', 'x/d'])
+    expect(
+      physical([check('a', undefined, { checkId: 'light' }), check('b', undefined, { sameAs: 'a' }), check('c', undefined, { sameAs: 'd' }), check('d')]),
+    ).toEqual(['light', 'light', 'x/d', 'x/d'])
   })
   test('survives a ring and a gap in the shorthand', () => {
-    expect(physical([check('a', undefined, { sameAs: 'b' }), check('b', undefined, { sameAs: 'a' }), check('c', undefined, { sameAs: 'nowhere' })])).toEqual(['x/b', 'x/a', 'x/c'])
+    expect(physical([check('a', undefined, { sameAs: 'b' }), check('b', undefined, { sameAs: 'a' }), check('c', undefined, { sameAs: 'nowhere' })])).toEqual([
+      'x/b',
+      'x/a',
+      'x/c',
+    ])
   })
 })
 

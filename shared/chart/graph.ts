@@ -67,7 +67,10 @@ function inOutcomeOrder(groups: Map<NodeId, ChartEdge[]>, nodes: ReadonlyMap<Nod
     if (node === undefined || !isDecision(node) || edges.length < 2) continue
     const rank = new Map(node.outcomes.map((outcome, index) => [outcome.id, index]))
     const rankOf = (edge: ChartEdge) => (edge.outcome === undefined ? -1 : (rank.get(edge.outcome) ?? node.outcomes.length))
-    groups.set(id, edges.toSorted((left, right) => rankOf(left) - rankOf(right)))
+    groups.set(
+      id,
+      edges.toSorted((left, right) => rankOf(left) - rankOf(right)),
+    )
   }
   return groups
 }
@@ -130,7 +133,12 @@ export function entryOf(index: ChartIndex, at: NodeId | undefined): NodeId | und
 }
 
 /** A chart as numbers for the graph algorithms: node `i` is the first node of `chart.nodes` with its id, edges are those of `successors`. */
-export type ChartGraph = { readonly graph: Digraph; readonly ids: readonly NodeId[]; readonly numberOf: ReadonlyMap<NodeId, number>; readonly starts: readonly number[] }
+export type ChartGraph = {
+  readonly graph: Digraph
+  readonly ids: readonly NodeId[]
+  readonly numberOf: ReadonlyMap<NodeId, number>
+  readonly starts: readonly number[]
+}
 
 /** Numbers a chart's nodes and edges. Ids that appear twice count once. */
 export function toChartGraph(index: ChartIndex): ChartGraph {

@@ -32,7 +32,10 @@ describe('undo and redo', () => {
 
   test('an edit that changes nothing, and one that is refused, are no steps', () => {
     expect(make(opened, rename('Look at n2'))).toBe(opened)
-    expect(applyToHistory(opened, { type: 'rename-node', nodeId: 'gone', title: 'x' } as unknown as ChartCommand)).toMatchObject({ ok: false, error: { code: 'no-such-node' } })
+    expect(applyToHistory(opened, { type: 'rename-node', nodeId: 'gone', title: 'x' } as unknown as ChartCommand)).toMatchObject({
+      ok: false,
+      error: { code: 'no-such-node' },
+    })
   })
 
   test('very old steps are forgotten', () => {

@@ -28,7 +28,10 @@ function toWords(issue: Issue, path: readonly PropertyKey[], json: unknown): str
     case 'invalid_union':
       return unionWords(issue, field, json, path)
     case 'unrecognized_keys':
-      return `${issue.keys.slice(0, 5).map((key) => `"${shorten(key)}"`).join(', ')} ${issue.keys.length === 1 ? 'is not a field' : 'are not fields'} here.`
+      return `${issue.keys
+        .slice(0, 5)
+        .map((key) => `"${shorten(key)}"`)
+        .join(', ')} ${issue.keys.length === 1 ? 'is not a field' : 'are not fields'} here.`
     case 'too_big':
       return `${field} is too ${issue.origin === 'string' ? 'long' : 'large'}: at most ${issue.maximum}${countedIn(issue.origin)}.`
     case 'too_small':
@@ -82,7 +85,10 @@ function fieldName(path: readonly PropertyKey[]): string {
 }
 
 function valueAt(json: unknown, path: readonly PropertyKey[]): unknown {
-  return path.reduce<unknown>((at, part) => (typeof at === 'object' && at !== null && Object.hasOwn(at, part) ? (at as Record<PropertyKey, unknown>)[part] : undefined), json)
+  return path.reduce<unknown>(
+    (at, part) => (typeof at === 'object' && at !== null && Object.hasOwn(at, part) ? (at as Record<PropertyKey, unknown>)[part] : undefined),
+    json,
+  )
 }
 
 function kindWords(expected: string): string {

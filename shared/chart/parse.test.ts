@@ -110,7 +110,9 @@ test('whatever comes in, the door answers and never throws', () => {
     fc.jsonValue(),
     fc.jsonValue().map((part) => ({ ...sound(), nodes: part })),
     fc.jsonValue().map((part) => ({ ...sound(), library: part, edges: [part] })),
-    fc.record({ id: fc.jsonValue(), kind: fc.constantFrom('check', 'reading', 'proof', 'jump'), outcomes: fc.jsonValue(), limits: fc.jsonValue() }).map((node) => ({ ...sound(), nodes: [node] })),
+    fc
+      .record({ id: fc.jsonValue(), kind: fc.constantFrom('check', 'reading', 'proof', 'jump'), outcomes: fc.jsonValue(), limits: fc.jsonValue() })
+      .map((node) => ({ ...sound(), nodes: [node] })),
     fc.dictionary(fc.string(), fc.jsonValue()).map((part) => ({ ...sound(), ...part })),
   )
   fc.assert(

@@ -41,7 +41,10 @@ export function parseChartText(text: string): Result<ChartDocument, ChartProblem
   try {
     json = JSON.parse(text.startsWith('\uFEFF') ? text.slice(1) : text)
   } catch (cause) {
-    const detail = text.trim() === '' ? 'This file is empty. Choose a chart file, exported as JSON.' : `This file is not JSON${whereIn(text, cause)}. Choose a chart file, exported as JSON.`
+    const detail =
+      text.trim() === ''
+        ? 'This file is empty. Choose a chart file, exported as JSON.'
+        : `This file is not JSON${whereIn(text, cause)}. Choose a chart file, exported as JSON.`
     return err({ code: 'not-a-chart', detail, errors: [{ pointer: '#', detail }] })
   }
   return parseChart(json)

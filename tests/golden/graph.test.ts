@@ -7,7 +7,14 @@ function graphOf(edges: string): { graph: Digraph; names: string[]; of: (name: s
   const pairs = edges.split(' ').map((edge) => edge.split('>') as [string, string])
   const names = [...new Set(pairs.flat())].sort()
   const of = (name: string) => names.indexOf(name)
-  return { graph: toDigraph(names.length, pairs.map(([from, to]) => [of(from), of(to)] as const)), names, of }
+  return {
+    graph: toDigraph(
+      names.length,
+      pairs.map(([from, to]) => [of(from), of(to)] as const),
+    ),
+    names,
+    of,
+  }
 }
 
 /** A dominator tree as { node: immediate dominator }, the roots left out. */

@@ -28,7 +28,10 @@ const goodPatch = fc.oneof(
   fc.record({ needs: fc.array(nodeId, { maxLength: 2 }), ifSkipped: fc.option(outcomeId) }),
   fc.record({ onlyFor: fc.record({ otherwise: nodeId }) }),
 )
-const oddPatch = fc.dictionary(fc.constantFrom('title', 'do', 'minutes', 'needs', 'onlyFor', 'ifSkipped', 'rows', 'bands', 'id', 'kind', 'outcomes', 'word', 'system', '__proto__'), value)
+const oddPatch = fc.dictionary(
+  fc.constantFrom('title', 'do', 'minutes', 'needs', 'onlyFor', 'ifSkipped', 'rows', 'bands', 'id', 'kind', 'outcomes', 'word', 'system', '__proto__'),
+  value,
+)
 const patch = mostly<object>(goodPatch, oddPatch)
 const point = fc.record({ x: number, y: number })
 const list = fc.constantFrom('causes', 'serviceItems', 'specKeys', 'cautions', 'access')
@@ -41,7 +44,11 @@ const entry = fc.oneof(
 /** Everything that an editor could send, and a good deal that it never should. */
 const command = fc.oneof(
   fc.record({ type: fc.constant('set-chart'), patch: fc.dictionary(fc.constantFrom('title', 'searchWords', 'basis', 'id', 'nodes', 'format'), value) }),
-  fc.record({ type: fc.constant('add-nodes'), nodes: fc.array(node, { maxLength: 2 }), edges: fc.array(fc.record({ from: nodeId, outcome: maybeOutcome, to: nodeId }), { maxLength: 2 }) }),
+  fc.record({
+    type: fc.constant('add-nodes'),
+    nodes: fc.array(node, { maxLength: 2 }),
+    edges: fc.array(fc.record({ from: nodeId, outcome: maybeOutcome, to: nodeId }), { maxLength: 2 }),
+  }),
   fc.record({ type: fc.constant('insert-node'), node, into: fc.record({ from: nodeId, outcome: maybeOutcome }), position: point }),
   fc.record({ type: fc.constant('remove-nodes'), nodeIds: fc.array(nodeId, { maxLength: 2 }), closeGap: fc.boolean() }),
   fc.record({ type: fc.constant('rename-node'), nodeId, title: fc.string() }),

@@ -6,7 +6,10 @@ import { commonDominators, dominanceFrontiers, dominators, dominatorsOf, unreach
 /** Small graphs with loops, parallel edges, unreachable parts and one to three roots. */
 const rooted = fc.integer({ min: 1, max: 9 }).chain((size) => {
   const node = fc.nat(size - 1)
-  return fc.record({ graph: fc.array(fc.tuple(node, node), { maxLength: 24 }).map((edges) => toDigraph(size, edges)), roots: fc.uniqueArray(node, { minLength: 1, maxLength: 3 }) })
+  return fc.record({
+    graph: fc.array(fc.tuple(node, node), { maxLength: 24 }).map((edges) => toDigraph(size, edges)),
+    roots: fc.uniqueArray(node, { minLength: 1, maxLength: 3 }),
+  })
 })
 
 const everyNode = (graph: Digraph) => Array.from({ length: graph.size }, (_, node) => node)
@@ -52,7 +55,9 @@ test('a dominance frontier is where dominance ends', () => {
       const frontiers = dominanceFrontiers(graph, tree, roots)
       for (const node of reached) {
         const reflexively = (other: number) => other === node || strictly.get(other)?.has(node) === true
-        const expected = reached.filter((join) => reached.some((source) => successorsOf(graph, source).includes(join) && reflexively(source)) && strictly.get(join)?.has(node) !== true)
+        const expected = reached.filter(
+          (join) => reached.some((source) => successorsOf(graph, source).includes(join) && reflexively(source)) && strictly.get(join)?.has(node) !== true,
+        )
         expect(frontiers[node]).toEqual(expected)
       }
     }),
@@ -65,7 +70,8 @@ test('two nodes share a component exactly when each reaches the other', () => {
     fc.property(rooted, ({ graph }) => {
       const { of } = strongComponents(graph)
       const reach = everyNode(graph).map((node) => reachableFrom(graph, [node]))
-      for (const left of everyNode(graph)) for (const right of everyNode(graph)) expect(of[left] === of[right]).toBe(reach[left]?.[right] === 1 && reach[right]?.[left] === 1)
+      for (const left of everyNode(graph))
+        for (const right of everyNode(graph)) expect(of[left] === of[right]).toBe(reach[left]?.[right] === 1 && reach[right]?.[left] === 1)
       for (const [from, to] of listEdges(graph)) expect(of[from]).toBeGreaterThanOrEqual(of[to] ?? 0)
     }),
   )
@@ -86,7 +92,17 @@ test('the forward graph has no cycle and reaches all that the graph reaches', ()
 test('a route of 200 000 nodes overflows nothing, and a node that all of them lead to costs one climb', () => {
   const size = 200_000
   const end = size - 1
-  const graph = toDigraph(size, everyNode({ size } as Digraph).flatMap((node) => (node >= end - 1 ? [[node, end] as const] : ([[node, node + 1], [node, end]] as const))))
+  const graph = toDigraph(
+    size,
+    everyNode({ size } as Digraph).flatMap((node) =>
+      node >= end - 1
+        ? [[node, end] as const]
+        : ([
+            [node, node + 1],
+            [node, end],
+          ] as const),
+    ),
+  )
   const tree = dominators(graph, [0])
   expect(tree[end]).toBe(0)
   expect(tree[end - 1]).toBe(end - 2)

@@ -38,7 +38,11 @@ export function sketchJson(sketch: ChartSketch): Record<string, unknown> {
     id: sketch.id ?? 'under-test',
     title: sketch.title ?? 'Chart under test',
     ...(sketch.basis === undefined ? {} : { basis: sketch.basis }),
-    cautions: withMissing(sketch.cautions ?? [], [...filled, ...(sketch.fill === false ? [] : (sketch.access ?? []))].flatMap((node) => strings(node['cautions'])), cautionOf),
+    cautions: withMissing(
+      sketch.cautions ?? [],
+      [...filled, ...(sketch.fill === false ? [] : (sketch.access ?? []))].flatMap((node) => strings(node['cautions'])),
+      cautionOf,
+    ),
     access: withMissing(sketch.access ?? [], filled.flatMap(accessNamed), accessOf),
     library: {
       causes: withMissing(sketch.causes ?? [], filled.flatMap(causesNamed), causeOf),
@@ -73,7 +77,14 @@ export const check = (id: string, outcomes: readonly (string | Json)[] = ['good'
 })
 /** The check that reproduces: outcomes `yes` (reproduced) and `no`. */
 export const reproducing = (id = 'n1', more: Json = {}): Json =>
-  check(id, [{ id: 'yes', title: 'It does it', reproduced: true }, { id: 'no', title: 'Runs well' }], { reproduces: true, ...more })
+  check(
+    id,
+    [
+      { id: 'yes', title: 'It does it', reproduced: true },
+      { id: 'no', title: 'Runs well' },
+    ],
+    { reproduces: true, ...more },
+  )
 /** A full-speed reading with one band: low under the lower limit, in from there up. */
 export const reading = (id: string, more: Json = {}): Json => ({
   id,
@@ -83,8 +94,14 @@ export const reading = (id: string, more: Json = {}): Json => ({
   quantity: 'rotational-speed',
   unit: '1/min',
   limits: { min: 11_000 },
-  outcomes: [{ id: 'low', title: 'Low' }, { id: 'in', title: 'In limits', normal: true }],
-  bands: [{ outcome: 'low', to: 'min' }, { outcome: 'in', from: 'min', fromIncluded: true }],
+  outcomes: [
+    { id: 'low', title: 'Low' },
+    { id: 'in', title: 'In limits', normal: true },
+  ],
+  bands: [
+    { outcome: 'low', to: 'min' },
+    { outcome: 'in', from: 'min', fromIncluded: true },
+  ],
   ...more,
 })
 /** A proof of a suspect: outcomes `gone` (confirms) and `still`. */
@@ -95,7 +112,10 @@ export const proof = (id: string, suspect: string, more: Json = {}): Json => ({
   minutes: 2,
   suspect,
   by: 'isolation',
-  outcomes: [{ id: 'gone', title: 'Gone', confirms: true }, { id: 'still', title: 'Still there' }],
+  outcomes: [
+    { id: 'gone', title: 'Gone', confirms: true },
+    { id: 'still', title: 'Still there' },
+  ],
   ...more,
 })
 /** A cause node. */

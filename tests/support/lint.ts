@@ -12,11 +12,16 @@ export function remarksOf(sketch: ChartSketch, others: readonly ChartSketch[] = 
 
 /** The same, each remark as "code", "code node" or "code from.outcome". */
 export function saysOf(sketch: ChartSketch, others: readonly ChartSketch[] = [], options: LintOptions = {}): string[] {
-  return remarksOf(sketch, others, options).map(({ code, node, edge }) => [code, edge?.outcome === undefined ? (node ?? edge?.from) : `${edge.from}.${edge.outcome}`].filter((part) => part !== undefined).join(' '))
+  return remarksOf(sketch, others, options).map(({ code, node, edge }) =>
+    [code, edge?.outcome === undefined ? (node ?? edge?.from) : `${edge.from}.${edge.outcome}`].filter((part) => part !== undefined).join(' '),
+  )
 }
 
 /** A sketch with some nodes replaced (by id) or added, and edges taken out and put in. */
-export function vary(sketch: ChartSketch, change: { nodes?: ChartSketch['nodes']; without?: readonly string[]; drop?: readonly string[]; edges?: readonly string[]; more?: Partial<ChartSketch> }): ChartSketch {
+export function vary(
+  sketch: ChartSketch,
+  change: { nodes?: ChartSketch['nodes']; without?: readonly string[]; drop?: readonly string[]; edges?: readonly string[]; more?: Partial<ChartSketch> },
+): ChartSketch {
   const changed = new Map((change.nodes ?? []).map((node) => [node['id'], node]))
   const kept = sketch.nodes.filter((node) => !change.without?.includes(String(node['id']))).map((node) => changed.get(node['id']) ?? node)
   const known = new Set(sketch.nodes.map((node) => node['id']))

@@ -12,7 +12,14 @@ const needing = (more: Record<string, unknown>, access: readonly Record<string, 
 describe('access', () => {
   test('a ring of needs is an error, an access that needs itself too', () => {
     const more = { needs: ['cover-off'] }
-    expect(saysOf(needing(more, [{ ...cover, needs: ['lead-off'] }, { ...lead, needs: ['cover-off'] }]))).toEqual(['access-ring'])
+    expect(
+      saysOf(
+        needing(more, [
+          { ...cover, needs: ['lead-off'] },
+          { ...lead, needs: ['cover-off'] },
+        ]),
+      ),
+    ).toEqual(['access-ring'])
     expect(saysOf(needing(more, [{ ...cover, needs: ['cover-off'] }]))).toEqual(['access-ring'])
     expect(saysOf(needing(more, [{ ...cover, needs: ['lead-off'] }, lead]))).toEqual([])
   })
@@ -32,7 +39,10 @@ describe('access', () => {
   })
 
   test('two alternatives may exclude each other, since only one of them is opened', () => {
-    const access = [{ ...cover, excludes: ['lead-off'] }, { ...lead, excludes: ['cover-off'] }]
+    const access = [
+      { ...cover, excludes: ['lead-off'] },
+      { ...lead, excludes: ['cover-off'] },
+    ]
     expect(saysOf(needing({ needsOneOf: [['cover-off'], ['lead-off']] }, access))).toEqual([])
   })
 
@@ -43,7 +53,12 @@ describe('access', () => {
 
   test('an access that a joined chart defines otherwise is worth a look; what is left out counts as nothing', () => {
     const here = vary(needing({ needs: ['cover-off'] }, [cover]), { nodes: [jump('j', 'other')], drop: ['n2.good > ask'], edges: ['n2.good > j'] })
-    const other = (access: Record<string, unknown>): ChartSketch => ({ id: 'other', nodes: [start(), check('k', undefined, { needs: ['cover-off'] }), ask()], edges: ['s > k', 'k.good > ask', 'k.bad > ask'], access: [access] })
+    const other = (access: Record<string, unknown>): ChartSketch => ({
+      id: 'other',
+      nodes: [start(), check('k', undefined, { needs: ['cover-off'] }), ask()],
+      edges: ['s > k', 'k.good > ask', 'k.bad > ask'],
+      access: [access],
+    })
     expect(saysOf(here, [other({ ...cover, minutes: 4 })])).toEqual(['access-defined-otherwise'])
     expect(saysOf(here, [other({ ...cover, closeMinutes: 0, needs: [], excludes: [] })])).toEqual([])
   })

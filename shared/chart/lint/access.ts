@@ -12,7 +12,12 @@ export const accessRings: Rule = function* ({ index }) {
   const edges = list.flatMap((access, from) => (access.needs ?? []).flatMap((id) => (numberOf.has(id) ? [[from, numberOf.get(id) ?? 0] as const] : [])))
   const marks = onCycle(toDigraph(list.length, edges))
   const ring = list.filter((_, number) => marks[number] === 1)
-  if (ring.length > 0) yield remark('access-ring', {}, `${titles(ring)} ${ring.length === 1 ? 'needs itself' : 'need each other'}, so none of them can ever be opened. Take one need out.`)
+  if (ring.length > 0)
+    yield remark(
+      'access-ring',
+      {},
+      `${titles(ring)} ${ring.length === 1 ? 'needs itself' : 'need each other'}, so none of them can ever be opened. Take one need out.`,
+    )
 }
 
 /** What a node needs can be open together, and is not what it wants closed. */
@@ -22,10 +27,23 @@ export const needsClash: Rule = function* ({ index }) {
     const own = node.needs ?? []
     const ways = node.needsOneOf !== undefined && node.needsOneOf.length > 0 ? node.needsOneOf.map((way) => [...own, ...way]) : [own]
     const shut = [...new Set(ways.flat())].filter((id) => closed.has(id))
-    for (const id of shut) yield remark('needs-clash', { node: node.id }, `${nameOf(index, node)} needs "${titleOf(index, id)}" and wants it closed. Take it out of one of the two lists.`)
-    const clashes = new Map(ways.flatMap((way) => pairs(way).flatMap(([left, right]) => (excludeEachOther(index, left, right) ? [[`${left} ${right}`, [left, right] as const] as const] : []))))
+    for (const id of shut)
+      yield remark(
+        'needs-clash',
+        { node: node.id },
+        `${nameOf(index, node)} needs "${titleOf(index, id)}" and wants it closed. Take it out of one of the two lists.`,
+      )
+    const clashes = new Map(
+      ways.flatMap((way) =>
+        pairs(way).flatMap(([left, right]) => (excludeEachOther(index, left, right) ? [[`${left} ${right}`, [left, right] as const] as const] : [])),
+      ),
+    )
     for (const [left, right] of clashes.values())
-      yield remark('needs-clash', { node: node.id }, `${nameOf(index, node)} needs both "${titleOf(index, left)}" and "${titleOf(index, right)}", which exclude each other. Take one out, or split the node.`)
+      yield remark(
+        'needs-clash',
+        { node: node.id },
+        `${nameOf(index, node)} needs both "${titleOf(index, left)}" and "${titleOf(index, right)}", which exclude each other. Take one out, or split the node.`,
+      )
   }
 }
 
@@ -42,7 +60,8 @@ export const unusedAccess: Rule = function* ({ index }) {
   const used = new Set<AccessId>()
   for (const node of index.nodes.values()) for (const id of [...(node.needs ?? []), ...(node.needsOneOf ?? []).flat()]) used.add(id)
   for (const id of used) for (const needed of index.access.get(id)?.needs ?? []) used.add(needed)
-  for (const access of index.access.values()) if (!used.has(access.id)) yield remark('unused-access', {}, `No node needs access "${access.title}". Take it out, or name it where it is needed.`)
+  for (const access of index.access.values())
+    if (!used.has(access.id)) yield remark('unused-access', {}, `No node needs access "${access.title}". Take it out, or name it where it is needed.`)
 }
 
 /** An access is one thing in all joined charts, so they describe it alike. */
@@ -52,7 +71,12 @@ export const sharedAccess: Rule = function* ({ index, charts }) {
     for (const access of index.access.values()) {
       const theirs = other.access.get(access.id)
       const fields = theirs === undefined ? [] : differences(access, theirs)
-      if (fields.length > 0) yield remark('access-defined-otherwise', {}, `Access "${access.title}" (${access.id}) has other ${fields.join(', ')} in chart "${other.chart.title}", which is joined to this one. A walk uses those of the chart it began with: make them alike.`)
+      if (fields.length > 0)
+        yield remark(
+          'access-defined-otherwise',
+          {},
+          `Access "${access.title}" (${access.id}) has other ${fields.join(', ')} in chart "${other.chart.title}", which is joined to this one. A walk uses those of the chart it began with: make them alike.`,
+        )
     }
   }
 }

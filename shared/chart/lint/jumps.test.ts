@@ -18,8 +18,12 @@ describe('jumps', () => {
   })
 
   test('into their own chart are followed there', () => {
-    expect(saysOf(vary(soundSketch, { nodes: [jump('j', 'sound', { at: 'n2' }), step('w')], drop: ['n2.good > ask'], edges: ['n2.good > w', 'w > j'] }))).toEqual([])
-    expect(saysOf(vary(soundSketch, { nodes: [jump('j', 'sound', { at: 'n9' })], drop: ['n2.good > ask'], edges: ['n2.good > j'] }))).toEqual(['jump-node-missing j'])
+    expect(
+      saysOf(vary(soundSketch, { nodes: [jump('j', 'sound', { at: 'n2' }), step('w')], drop: ['n2.good > ask'], edges: ['n2.good > w', 'w > j'] })),
+    ).toEqual([])
+    expect(saysOf(vary(soundSketch, { nodes: [jump('j', 'sound', { at: 'n9' })], drop: ['n2.good > ask'], edges: ['n2.good > j'] }))).toEqual([
+      'jump-node-missing j',
+    ])
   })
 
   test('to a chart that is not published are worth a look, on the command line a note', () => {
@@ -48,7 +52,11 @@ describe('jumps', () => {
 
 describe('rings of charts', () => {
   const callingHome = (returns: boolean) =>
-    vary(sub, { nodes: [jump('home', 'sound', returns ? { returns: true } : { at: 'n2' }), step('w')], drop: ['k1.bad > ask'], edges: ['k1.bad > w', 'w > home', ...(returns ? ['home > back'] : [])] })
+    vary(sub, {
+      nodes: [jump('home', 'sound', returns ? { returns: true } : { at: 'n2' }), step('w')],
+      drop: ['k1.bad > ask'],
+      edges: ['k1.bad > w', 'w > home', ...(returns ? ['home > back'] : [])],
+    })
   test('two charts that call each other and both come back are an error', () => {
     const here = vary(returning(), { nodes: [step('w'), back()], drop: ['j > ask'], edges: ['j > w', 'w > back'] })
     expect(saysOf(here, [callingHome(true)])).toEqual(['returning-ring j'])
@@ -59,12 +67,20 @@ describe('rings of charts', () => {
   })
 
   test('a chart that calls itself is a ring', () => {
-    const self = vary(soundSketch, { nodes: [jump('j', 'sound', { returns: true }), check('n3'), back()], drop: ['n2.good > ask'], edges: ['n2.good > n3', 'n3.good > j', 'n3.bad > back', 'j > ask'] })
+    const self = vary(soundSketch, {
+      nodes: [jump('j', 'sound', { returns: true }), check('n3'), back()],
+      drop: ['n2.good > ask'],
+      edges: ['n2.good > n3', 'n3.good > j', 'n3.bad > back', 'j > ask'],
+    })
     expect(saysOf(self)).toEqual(['returning-ring j'])
   })
 
   test('a ring among joined charts is told of the chart that leads into it', () => {
-    const third: ChartSketch = { id: 'third', nodes: [start(), check('m'), jump('again', 'sub', { returns: true }), back()], edges: ['s > m', 'm.good > back', 'm.bad > again', 'again > back'] }
+    const third: ChartSketch = {
+      id: 'third',
+      nodes: [start(), check('m'), jump('again', 'sub', { returns: true }), back()],
+      edges: ['s > m', 'm.good > back', 'm.bad > again', 'again > back'],
+    }
     const second = vary(sub, { nodes: [jump('on', 'third', { returns: true })], drop: ['k1.bad > ask'], edges: ['k1.bad > on', 'on > back'] })
     expect(saysOf(returning(), [second, third])).toEqual(['returning-ring'])
   })

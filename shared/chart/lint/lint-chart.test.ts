@@ -56,7 +56,10 @@ describe('the chart check as a whole', () => {
     }
     const [bench, seal] = [load('b-bench.json'), load('b-seal.json')]
     const remarks = lintChart(bench, { others: () => seal })
-    expect(remarks.map(({ code, node }) => [code, node])).toEqual([['unused-access', undefined], ['proof-without-access', 'p4']])
+    expect(remarks.map(({ code, node }) => [code, node])).toEqual([
+      ['unused-access', undefined],
+      ['proof-without-access', 'p4'],
+    ])
     expect(hasErrors(lintChart(seal))).toBe(false)
   })
 })

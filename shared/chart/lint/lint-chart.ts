@@ -58,7 +58,10 @@ export function lintChart(index: ChartIndex, options: LintOptions = {}): Remark[
     values,
     proofAccess,
   ]
-  return inOrder(rules.flatMap((rule) => [...rule(context)]), index.order)
+  return inOrder(
+    rules.flatMap((rule) => [...rule(context)]),
+    index.order,
+  )
 }
 
 /** Whether remarks forbid publishing. */

@@ -14,8 +14,18 @@ describe('names', () => {
 
   test.each([
     ['access', { needs: ['cover-off'] }, 'unknown-access n2', known],
-    ['access of an alternative', { needsOneOf: [['cover-off'], ['top-off']] }, 'unknown-access n2', { access: [{ id: 'top-off', title: 'Top off', minutes: 1 }, ...known.access] }],
-    ['caution', { cautions: ['edge'] }, 'unknown-caution n2', { cautions: [{ id: 'edge', word: 'CAUTION', harm: 'minor-injury', hazard: 'Sharp edge', avoid: 'Gloves on' }] }],
+    [
+      'access of an alternative',
+      { needsOneOf: [['cover-off'], ['top-off']] },
+      'unknown-access n2',
+      { access: [{ id: 'top-off', title: 'Top off', minutes: 1 }, ...known.access] },
+    ],
+    [
+      'caution',
+      { cautions: ['edge'] },
+      'unknown-caution n2',
+      { cautions: [{ id: 'edge', word: 'CAUTION', harm: 'minor-injury', hazard: 'Sharp edge', avoid: 'Gloves on' }] },
+    ],
   ])('a node may not name an %s that the chart lacks', (_, more, code, mend) => {
     const causes = [{ id: 'filter-packed', title: 'Filter packed', system: 'air', remedy: { text: 'Clean it' } }]
     const faulty = { ...vary(soundSketch, { nodes: [check('n2', undefined, more), proof('p2', 'filter-packed', { closed: ['x'] })] }), fill: false, causes }
@@ -25,12 +35,22 @@ describe('names', () => {
 
   test('what a node wants closed, and what an access excludes, may be foreign to the chart', () => {
     const access = [{ id: 'warm', title: 'Warm', minutes: 3, excludes: ['cool'] }]
-    expect(saysOf(vary(soundSketch, { nodes: [check('n2', undefined, { needs: ['warm'], closed: ['screen-out'] }), proof('p2', 'filter-packed', { needs: ['warm'] })], more: { access } }))).toEqual([])
+    expect(
+      saysOf(
+        vary(soundSketch, {
+          nodes: [check('n2', undefined, { needs: ['warm'], closed: ['screen-out'] }), proof('p2', 'filter-packed', { needs: ['warm'] })],
+          more: { access },
+        }),
+      ),
+    ).toEqual([])
   })
 
   test('an access may not need an access, or name a caution, that the chart lacks', () => {
     const access = [{ id: 'cover-off', title: 'Cover off', minutes: 2, needs: ['lead-off'], cautions: ['edge'] }]
-    const behind = vary(soundSketch, { nodes: [check('n2', undefined, { needs: ['cover-off'] }), proof('p2', 'filter-packed', { needs: ['cover-off'] })], more: { access } })
+    const behind = vary(soundSketch, {
+      nodes: [check('n2', undefined, { needs: ['cover-off'] }), proof('p2', 'filter-packed', { needs: ['cover-off'] })],
+      more: { access },
+    })
     const causes = [{ id: 'filter-packed', title: 'Filter packed', system: 'air', remedy: { text: 'Clean it' } }]
     expect(saysOf({ ...behind, fill: false, causes })).toEqual(['unknown-access', 'unknown-caution'])
   })
@@ -50,7 +70,11 @@ describe('names', () => {
     expect(saysOf(faulty)).toEqual(['unknown-service-item n2'])
     expect(saysOf({ ...faulty, serviceItems: [{ id: 'clean-filter', title: 'Clean the filter' }] })).toEqual([])
 
-    const speed = vary(soundSketch, { nodes: [reading('n2', { limits: { spec: 'fullSpeed' } })], drop: ['n2.good > ask', 'n2.bad > p2'], edges: ['n2.in > ask', 'n2.low > p2'] })
+    const speed = vary(soundSketch, {
+      nodes: [reading('n2', { limits: { spec: 'fullSpeed' } })],
+      drop: ['n2.good > ask', 'n2.bad > p2'],
+      edges: ['n2.in > ask', 'n2.low > p2'],
+    })
     expect(saysOf(speed)).toEqual(['unknown-spec-key n2'])
     expect(saysOf({ ...speed, specKeys: [{ id: 'fullSpeed', title: 'Full speed', quantity: 'rotational-speed', unit: '1/min' }] })).toEqual([])
 
@@ -62,11 +86,19 @@ describe('names', () => {
   test('a node speaks of outcomes that it has: where a skipped check goes, bands, grades', () => {
     expect(saysOf(vary(soundSketch, { nodes: [check('n2', undefined, { ifSkipped: 'odd' })] }))).toEqual(['unknown-outcome n2'])
     expect(saysOf(vary(soundSketch, { nodes: [check('n2', undefined, { rows: { 'filter-packed': { odd: 'mostly' } } })] }))).toEqual(['unknown-outcome n2'])
-    expect(saysOf(vary(soundSketch, { nodes: [check('n2', undefined, { ifSkipped: 'bad', rows: { 'filter-packed': { bad: 'mostly' }, unlisted: { good: 'even' } } })] }))).toEqual([])
+    expect(
+      saysOf(
+        vary(soundSketch, { nodes: [check('n2', undefined, { ifSkipped: 'bad', rows: { 'filter-packed': { bad: 'mostly' }, unlisted: { good: 'even' } } })] }),
+      ),
+    ).toEqual([])
   })
 
   test('grades may speak of a cause of a joined chart; while one is missing nobody can tell', () => {
-    const graded = vary(soundSketch, { nodes: [check('n2', undefined, { rows: { 'seal-leaks': { bad: 'mostly' } } }), jump('j', 'sub')], drop: ['n2.good > ask'], edges: ['n2.good > j'] })
+    const graded = vary(soundSketch, {
+      nodes: [check('n2', undefined, { rows: { 'seal-leaks': { bad: 'mostly' } } }), jump('j', 'sub')],
+      drop: ['n2.good > ask'],
+      edges: ['n2.good > j'],
+    })
     const sub: ChartSketch = { id: 'sub', nodes: [start(), step('w'), ask()], edges: ['s > w', 'w > ask'] }
     expect(saysOf(graded, [sub])).toEqual(['unknown-cause n2'])
     const sealLeaks = { id: 'seal-leaks', title: 'Seal leaks', system: 'compression', remedy: { text: 'New seal' } }

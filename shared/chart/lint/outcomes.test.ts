@@ -25,7 +25,10 @@ describe('outcomes', () => {
   })
 
   test('two outcomes that read alike cannot be told apart', () => {
-    const alike = [{ id: 'good', title: 'Dry', normal: true }, { id: 'bad', title: ' dry ' }]
+    const alike = [
+      { id: 'good', title: 'Dry', normal: true },
+      { id: 'bad', title: ' dry ' },
+    ]
     expect(saysOf(vary(soundSketch, { nodes: [check('n2', alike)] }))).toEqual(['outcome-titles-alike n2.bad'])
   })
 })
@@ -33,20 +36,37 @@ describe('outcomes', () => {
 describe('one physical check', () => {
   test('nodes with one check id have the same outcome ids, in whatever order', () => {
     const twice = (outcomes: string[]) =>
-      vary(soundSketch, { nodes: [check('n2', undefined, { checkId: 'light' }), check('n3', outcomes, { checkId: 'light' })], drop: ['n2.good > ask'], edges: ['n2.good > n3', ...outcomes.map((outcome) => `n3.${outcome} > ask`)] })
+      vary(soundSketch, {
+        nodes: [check('n2', undefined, { checkId: 'light' }), check('n3', outcomes, { checkId: 'light' })],
+        drop: ['n2.good > ask'],
+        edges: ['n2.good > n3', ...outcomes.map((outcome) => `n3.${outcome} > ask`)],
+      })
     expect(saysOf(twice(['good', 'none']))).toEqual(['same-check-other-outcomes n3'])
     expect(saysOf(twice(['bad', 'good']))).toEqual([])
   })
 
   test('the shorthand for one check counts alike', () => {
-    const copy = (outcomes: string[]) => vary(soundSketch, { nodes: [check('n3', outcomes, { sameAs: 'n2' })], drop: ['n2.good > ask'], edges: ['n2.good > n3', ...outcomes.map((outcome) => `n3.${outcome} > ask`)] })
+    const copy = (outcomes: string[]) =>
+      vary(soundSketch, {
+        nodes: [check('n3', outcomes, { sameAs: 'n2' })],
+        drop: ['n2.good > ask'],
+        edges: ['n2.good > n3', ...outcomes.map((outcome) => `n3.${outcome} > ask`)],
+      })
     expect(saysOf(copy(['good', 'worse']))).toEqual(['same-check-other-outcomes n3'])
     expect(saysOf(copy(['good', 'bad']))).toEqual([])
   })
 
   test('so do nodes of a joined chart', () => {
-    const here = vary(soundSketch, { nodes: [check('n2', undefined, { checkId: 'light' }), jump('j', 'other')], drop: ['n2.good > ask'], edges: ['n2.good > j'] })
-    const other = (outcomes: string[]): ChartSketch => ({ id: 'other', nodes: [start(), check('k', outcomes, { checkId: 'light' }), ask()], edges: ['s > k', ...outcomes.map((outcome) => `k.${outcome} > ask`)] })
+    const here = vary(soundSketch, {
+      nodes: [check('n2', undefined, { checkId: 'light' }), jump('j', 'other')],
+      drop: ['n2.good > ask'],
+      edges: ['n2.good > j'],
+    })
+    const other = (outcomes: string[]): ChartSketch => ({
+      id: 'other',
+      nodes: [start(), check('k', outcomes, { checkId: 'light' }), ask()],
+      edges: ['s > k', ...outcomes.map((outcome) => `k.${outcome} > ask`)],
+    })
     expect(saysOf(here, [other(['good', 'none'])])).toEqual(['same-check-other-outcomes n2'])
     expect(saysOf(here, [other(['good', 'bad'])])).toEqual([])
   })

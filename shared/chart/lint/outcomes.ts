@@ -14,11 +14,17 @@ export const outcomes: Rule = function* ({ index }) {
     if (!isDecision(node)) continue
     const count = node.outcomes.length
     const name = nameOf(index, node)
-    if (count < fewest) yield remark('outcome-count', { node: node.id }, `${name} has ${count === 0 ? 'no outcome' : 'one outcome'}. Give it at least two, or make it a step.`)
+    if (count < fewest)
+      yield remark('outcome-count', { node: node.id }, `${name} has ${count === 0 ? 'no outcome' : 'one outcome'}. Give it at least two, or make it a step.`)
     else if (count > most) yield remark('outcome-count', { node: node.id }, `${name} has ${count} outcomes; balloons go from 1 to 9. Split it into two checks.`)
-    else if (count > comfortable) yield remark('many-outcomes', { node: node.id }, `${name} has ${count} outcomes. Two to five are easy to tell apart; two checks may serve better.`)
+    else if (count > comfortable)
+      yield remark('many-outcomes', { node: node.id }, `${name} has ${count} outcomes. Two to five are easy to tell apart; two checks may serve better.`)
     for (const outcome of repeated(node.outcomes, ({ title }) => title.trim().toLowerCase()))
-      yield remark('outcome-titles-alike', { node: node.id, edge: { from: node.id, outcome: outcome.id } }, `Two outcomes of ${name} read ${outcomeName(outcome)}. Word one of them so that they can be told apart.`)
+      yield remark(
+        'outcome-titles-alike',
+        { node: node.id, edge: { from: node.id, outcome: outcome.id } },
+        `Two outcomes of ${name} read ${outcomeName(outcome)}. Word one of them so that they can be told apart.`,
+      )
   }
 }
 
@@ -34,7 +40,11 @@ export const sameCheck: Rule = function* ({ index, charts }) {
       if (first === undefined) firstOf.set(check, { owner, node, key })
       else if (first.key !== key && first.owner === index) {
         const [here, there, place] = owner === index ? [node, first.node, ''] : [first.node, node, ` of chart "${owner.chart.title}"`]
-        yield remark('same-check-other-outcomes', { node: here.id }, `${nameOf(index, here)} is the same check as ${nameOf(owner, there)}${place}, but its outcomes have other ids. Give both the same outcome ids, or make them two checks.`)
+        yield remark(
+          'same-check-other-outcomes',
+          { node: here.id },
+          `${nameOf(index, here)} is the same check as ${nameOf(owner, there)}${place}, but its outcomes have other ids. Give both the same outcome ids, or make them two checks.`,
+        )
       }
     }
   }

@@ -4,13 +4,24 @@ import { remarksOf, saysOf, vary } from '#tests/support/lint.ts'
 
 describe('proofs', () => {
   test('name their suspect', () => {
-    expect(saysOf(vary(soundSketch, { nodes: [proof('p2', 'filter-packed', { suspect: undefined })] }))).toEqual(['proof-without-suspect p2', 'cause-without-proof p2.gone'])
+    expect(saysOf(vary(soundSketch, { nodes: [proof('p2', 'filter-packed', { suspect: undefined })] }))).toEqual([
+      'proof-without-suspect p2',
+      'cause-without-proof p2.gone',
+    ])
   })
 
   test('have exactly one outcome that confirms', () => {
-    const outcomes = (first: boolean, second: boolean) => ({ outcomes: [{ id: 'gone', title: 'Gone', confirms: first }, { id: 'still', title: 'Still there', confirms: second }] })
+    const outcomes = (first: boolean, second: boolean) => ({
+      outcomes: [
+        { id: 'gone', title: 'Gone', confirms: first },
+        { id: 'still', title: 'Still there', confirms: second },
+      ],
+    })
     expect(saysOf(vary(soundSketch, { nodes: [proof('p2', 'filter-packed', outcomes(true, true))] }))).toEqual(['proof-confirming-outcomes p2'])
-    expect(saysOf(vary(soundSketch, { nodes: [proof('p2', 'filter-packed', outcomes(false, false))] }))).toEqual(['proof-confirming-outcomes p2', 'cause-without-proof p2.gone'])
+    expect(saysOf(vary(soundSketch, { nodes: [proof('p2', 'filter-packed', outcomes(false, false))] }))).toEqual([
+      'proof-confirming-outcomes p2',
+      'cause-without-proof p2.gone',
+    ])
   })
 
   test('compare with a check or a reading, and confirm by an outcome that it has', () => {
@@ -41,7 +52,10 @@ describe('a cause is proved before it is named', () => {
 
   test('neither does a node that passes the walk of another machine on to it', () => {
     const passing = vary(soundSketch, { nodes: [check('n2', undefined, { onlyFor: { classes: ['chain-saw'], otherwise: 'c2' } })] })
-    expect(remarksOf(passing).map(({ code, node }) => [code, node])).toEqual([['cause-without-proof', 'c2'], ['all-good-route', 'c2']])
+    expect(remarksOf(passing).map(({ code, node }) => [code, node])).toEqual([
+      ['cause-without-proof', 'c2'],
+      ['all-good-route', 'c2'],
+    ])
   })
 
   test('a printed table has no proofs and is spared', () => {
@@ -63,9 +77,28 @@ describe('a proof on a machine that was opened for the check before it', () => {
     expect(saysOf(vary(soundSketch, { nodes: [behindCover, proof('p2', 'filter-packed', { closed: ['cover-off'] })] }))).toEqual([])
   })
   test('looks back over steps', () => {
-    expect(saysOf(vary(soundSketch, { nodes: [behindCover, step('w')], drop: ['n2.bad > p2'], edges: ['n2.bad > w', 'w > p2'] }))).toEqual(['proof-without-access p2'])
+    expect(saysOf(vary(soundSketch, { nodes: [behindCover, step('w')], drop: ['n2.bad > p2'], edges: ['n2.bad > w', 'w > p2'] }))).toEqual([
+      'proof-without-access p2',
+    ])
   })
   test('is no matter where the check before it needs nothing', () => {
-    expect(saysOf({ nodes: [start(), check('n1', ['yes', 'no'], { reproduces: true, outcomes: [{ id: 'yes', title: 'Yes', reproduced: true }, { id: 'no', title: 'No' }] }), proof('p', 'worn'), cause('c', 'worn'), ask()], edges: ['s > n1', 'n1.yes > p', 'n1.no > ask', 'p.gone > c', 'p.still > ask'] })).toEqual([])
+    expect(
+      saysOf({
+        nodes: [
+          start(),
+          check('n1', ['yes', 'no'], {
+            reproduces: true,
+            outcomes: [
+              { id: 'yes', title: 'Yes', reproduced: true },
+              { id: 'no', title: 'No' },
+            ],
+          }),
+          proof('p', 'worn'),
+          cause('c', 'worn'),
+          ask(),
+        ],
+        edges: ['s > n1', 'n1.yes > p', 'n1.no > ask', 'p.gone > c', 'p.still > ask'],
+      }),
+    ).toEqual([])
   })
 })

@@ -11,7 +11,12 @@ export const proofs: Rule = function* ({ index }) {
     const name = nameOf(index, node)
     if (node.suspect === undefined) yield remark('proof-without-suspect', { node: node.id }, `${name} does not say which cause it proves. Name the suspect.`)
     const confirming = node.outcomes.filter((outcome) => outcome.confirms === true).length
-    if (confirming !== 1) yield remark('proof-confirming-outcomes', { node: node.id }, `${name} has ${confirming === 0 ? 'no outcome that confirms' : `${confirming} outcomes that confirm`} its suspect. Mark exactly one.`)
+    if (confirming !== 1)
+      yield remark(
+        'proof-confirming-outcomes',
+        { node: node.id },
+        `${name} has ${confirming === 0 ? 'no outcome that confirms' : `${confirming} outcomes that confirm`} its suspect. Mark exactly one.`,
+      )
     yield* comparison(index, node)
   }
 }
@@ -20,12 +25,20 @@ function* comparison(index: LintContext['index'], node: ProofNode): Iterable<Rem
   const compared = node.compares === undefined ? undefined : index.nodes.get(node.compares.node)
   if (node.compares === undefined || compared === undefined) return
   if (compared.kind !== 'reading' && compared.kind !== 'check') {
-    yield remark('proof-compares-wrongly', { node: node.id }, `${nameOf(index, node)} compares with ${nameOf(index, compared)}, which is neither a check nor a reading. Name one that is.`)
+    yield remark(
+      'proof-compares-wrongly',
+      { node: node.id },
+      `${nameOf(index, node)} compares with ${nameOf(index, compared)}, which is neither a check nor a reading. Name one that is.`,
+    )
     return
   }
   for (const id of node.compares.confirmsWhen ?? []) {
     if (!compared.outcomes.some((outcome) => outcome.id === id))
-      yield remark('unknown-outcome', { node: node.id }, `${nameOf(index, node)} confirms when ${nameOf(index, compared)} gives outcome ${id}, which it does not have. Add the outcome, or name another.`)
+      yield remark(
+        'unknown-outcome',
+        { node: node.id },
+        `${nameOf(index, node)} confirms when ${nameOf(index, compared)} gives outcome ${id}, which it does not have. Add the outcome, or name another.`,
+      )
   }
 }
 
@@ -58,13 +71,18 @@ function confirms(from: ChartNode, edge: ChartEdge, cause: NodeOf<'cause'>): boo
 function withoutProof(index: LintContext['index'], cause: NodeOf<'cause'>, from: ChartNode, edge: ChartEdge | undefined): Remark {
   const at = { node: cause.id, ...(edge === undefined ? {} : { edge: { from: edge.from, ...(edge.outcome === undefined ? {} : { outcome: edge.outcome }) } }) }
   const by = edge === undefined ? `${nameOf(index, from)} on another machine` : nameOf(index, from)
-  return remark('cause-without-proof', at, `A walk comes to cause ${nameOf(index, cause)} from ${by} without proof. Put a proof of it in between, by sight if it can be seen.`)
+  return remark(
+    'cause-without-proof',
+    at,
+    `A walk comes to cause ${nameOf(index, cause)} from ${by} without proof. Put a proof of it in between, by sight if it can be seen.`,
+  )
 }
 
 /** Whoever proves a cause knows how to put it right. */
 export const remedies: Rule = function* ({ chart }) {
   for (const cause of chart.library.causes ?? []) {
-    if (cause.contributing !== true && cause.remedy === undefined) yield remark('cause-without-remedy', {}, `Cause "${cause.title}" has no fix. Say what puts it right, and how many minutes that takes.`)
+    if (cause.contributing !== true && cause.remedy === undefined)
+      yield remark('cause-without-remedy', {}, `Cause "${cause.title}" has no fix. Say what puts it right, and how many minutes that takes.`)
   }
 }
 
@@ -74,7 +92,11 @@ export const proofAccess: Rule = function* (context) {
     if (node.kind !== 'proof' || lists(node) || (node.closed ?? []).length > 0) continue
     const before = checkBefore(context, node.id)
     if (before !== undefined)
-      yield remark('proof-without-access', { node: node.id }, `${nameOf(context.index, node)} lists nothing that must be off, though ${nameOf(context.index, before)} before it does. It counts as made on a closed machine: list what is off, if it is.`)
+      yield remark(
+        'proof-without-access',
+        { node: node.id },
+        `${nameOf(context.index, node)} lists nothing that must be off, though ${nameOf(context.index, before)} before it does. It counts as made on a closed machine: list what is off, if it is.`,
+      )
   }
 }
 

@@ -42,13 +42,21 @@ describe('routes', () => {
   })
 
   test('a knot of checks without a way out is one error, and one outcome that leads out mends it', () => {
-    const trap = vary(soundSketch, { nodes: [check('n3'), check('n4')], drop: ['n2.good > ask'], edges: ['n2.good > n3', 'n3.good > n4', 'n3.bad > n4', 'n4.good > n3', 'n4.bad > n4'] })
+    const trap = vary(soundSketch, {
+      nodes: [check('n3'), check('n4')],
+      drop: ['n2.good > ask'],
+      edges: ['n2.good > n3', 'n3.good > n4', 'n3.bad > n4', 'n4.good > n3', 'n4.bad > n4'],
+    })
     expect(saysOf(trap)).toEqual(['no-end-reachable n3'])
     expect(saysOf(vary(trap, { drop: ['n4.bad > n4'], edges: ['n4.bad > ask'] }))).toEqual([])
   })
 
   test('a call of a chart that has ends of its own is a way out', () => {
-    const ring = vary(soundSketch, { nodes: [jump('j', 'sub', { returns: true }), step('w')], drop: ['n2.good > ask'], edges: ['n2.good > j', 'j > w', 'w > j'] })
+    const ring = vary(soundSketch, {
+      nodes: [jump('j', 'sub', { returns: true }), step('w')],
+      drop: ['n2.good > ask'],
+      edges: ['n2.good > j', 'j > w', 'w > j'],
+    })
     const sub: ChartSketch = { id: 'sub', nodes: [start(), check('k'), back(), ask()], edges: ['s > k', 'k.good > back', 'k.bad > ask'] }
     expect(saysOf(ring, [sub])).toEqual([])
     expect(saysOf(ring, [vary(sub, { without: ['ask'], drop: ['k.bad > ask'], edges: ['k.bad > back'] })])).toEqual(['no-end-reachable j'])
@@ -67,7 +75,9 @@ describe('nodes that are not for every machine', () => {
   test('two normal outcomes leave it open, and a step has none', () => {
     const two = check('n2', ['good', 'bad', { id: 'fresh', title: 'Fresh', normal: true }], { onlyFor: saws })
     expect(saysOf(vary(soundSketch, { nodes: [two], edges: ['n2.fresh > ask'] }))).toEqual(['only-for-without-way n2'])
-    expect(saysOf(vary(soundSketch, { nodes: [step('w', { onlyFor: saws })], drop: ['n2.good > ask'], edges: ['n2.good > w', 'w > ask'] }))).toEqual(['only-for-without-way w'])
+    expect(saysOf(vary(soundSketch, { nodes: [step('w', { onlyFor: saws })], drop: ['n2.good > ask'], edges: ['n2.good > w', 'w > ask'] }))).toEqual([
+      'only-for-without-way w',
+    ])
   })
 
   test('the node that takes over exists', () => {
@@ -78,7 +88,10 @@ describe('nodes that are not for every machine', () => {
 describe('rings of nodes that take no event', () => {
   const passing = (engines: [string[], string[]]): ChartSketch =>
     vary(soundSketch, {
-      nodes: [check('n3', undefined, { onlyFor: { engines: engines[0], otherwise: 'n4' } }), check('n4', undefined, { onlyFor: { engines: engines[1], otherwise: 'n3' } })],
+      nodes: [
+        check('n3', undefined, { onlyFor: { engines: engines[0], otherwise: 'n4' } }),
+        check('n4', undefined, { onlyFor: { engines: engines[1], otherwise: 'n3' } }),
+      ],
       drop: ['n2.good > ask'],
       edges: ['n2.good > n3', 'n3.good > n4', 'n3.bad > ask', 'n4.good > ask', 'n4.bad > ask'],
     })
@@ -100,7 +113,11 @@ describe('rings of nodes that take no event', () => {
   })
 
   test('a call that asks nothing and comes back to where it was made is a ring', () => {
-    const here = vary(soundSketch, { nodes: [jump('j', 'sub', { returns: true }), jump('j2', 'sub', { returns: true })], drop: ['n2.good > ask'], edges: ['n2.good > j', 'j > j2', 'j2 > j'] })
+    const here = vary(soundSketch, {
+      nodes: [jump('j', 'sub', { returns: true }), jump('j2', 'sub', { returns: true })],
+      drop: ['n2.good > ask'],
+      edges: ['n2.good > j', 'j > j2', 'j2 > j'],
+    })
     const empty: ChartSketch = { id: 'sub', nodes: [start(), back()], edges: ['s > back'] }
     expect(saysOf(here, [empty])).toContain('silent-ring j')
     const asking = vary(empty, { nodes: [check('k'), ask()], drop: ['s > back'], edges: ['s > k', 'k.good > back', 'k.bad > ask'] })

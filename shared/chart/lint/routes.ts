@@ -11,7 +11,8 @@ export const reachability: Rule = function* ({ index, isReached }) {
     return
   }
   for (const node of index.nodes.values()) {
-    if (!isReached(node.id)) yield remark('unreachable-node', { node: node.id }, `No route leads to ${nameOf(index, node)}. Lead an outcome to it, or take it out.`)
+    if (!isReached(node.id))
+      yield remark('unreachable-node', { node: node.id }, `No route leads to ${nameOf(index, node)}. Lead an outcome to it, or take it out.`)
   }
 }
 
@@ -25,15 +26,26 @@ export const edges: Rule = function* ({ index, chart }) {
       continue
     }
     const here = { node: edge.from, ...at }
-    if (!index.nodes.has(edge.to)) yield remark('edge-to-nothing', here, `An edge of ${nameOf(index, from)} leads to node ${edge.to}, which does not exist. Lead it to another node.`)
-    if (isEnd(from)) yield remark('edge-out-of-end', here, `${nameOf(index, from)} ends the walk, yet an edge leads on from it. Nobody will walk it: take it out.`)
-    else if (isDecision(from) && edge.outcome === undefined) yield remark('edge-from-nothing', here, `An edge leads on from ${nameOf(index, from)} without saying from which outcome. Give it one.`)
+    if (!index.nodes.has(edge.to))
+      yield remark('edge-to-nothing', here, `An edge of ${nameOf(index, from)} leads to node ${edge.to}, which does not exist. Lead it to another node.`)
+    if (isEnd(from))
+      yield remark('edge-out-of-end', here, `${nameOf(index, from)} ends the walk, yet an edge leads on from it. Nobody will walk it: take it out.`)
+    else if (isDecision(from) && edge.outcome === undefined)
+      yield remark('edge-from-nothing', here, `An edge leads on from ${nameOf(index, from)} without saying from which outcome. Give it one.`)
     else if (edge.outcome !== undefined && !(isDecision(from) && from.outcomes.some((outcome) => outcome.id === edge.outcome)))
-      yield remark('edge-from-nothing', here, `An edge leads on from outcome ${edge.outcome} of ${nameOf(index, from)}, which has no such outcome. Take the edge out, or add the outcome.`)
+      yield remark(
+        'edge-from-nothing',
+        here,
+        `An edge leads on from outcome ${edge.outcome} of ${nameOf(index, from)}, which has no such outcome. Take the edge out, or add the outcome.`,
+      )
   }
   for (const edge of repeated(chart.edges, ({ from, outcome }) => `${from} ${outcome ?? ''}`)) {
     const where = edge.outcome === undefined ? nameOfId(index, edge.from) : `outcome ${edge.outcome} of ${nameOfId(index, edge.from)}`
-    yield remark('second-edge', { node: edge.from, edge: { from: edge.from, ...(edge.outcome === undefined ? {} : { outcome: edge.outcome }) } }, `Two edges lead on from ${where}. A walk can take one only: take the other out.`)
+    yield remark(
+      'second-edge',
+      { node: edge.from, edge: { from: edge.from, ...(edge.outcome === undefined ? {} : { outcome: edge.outcome }) } },
+      `Two edges lead on from ${where}. A walk can take one only: take the other out.`,
+    )
   }
   for (const node of index.nodes.values()) yield* waysOn(index, node)
 }
@@ -47,7 +59,11 @@ function* waysOn(index: LintContext['index'], node: ChartNode): Iterable<Remark>
   if (isDecision(node)) {
     for (const outcome of node.outcomes) {
       if (leading.has(outcome.id)) continue
-      yield remark('outcome-without-edge', { node: node.id, edge: { from: node.id, outcome: outcome.id } }, `Outcome ${outcomeName(outcome)} of ${nameOf(index, node)} leads nowhere. Lead it to the next node.`)
+      yield remark(
+        'outcome-without-edge',
+        { node: node.id, edge: { from: node.id, outcome: outcome.id } },
+        `Outcome ${outcomeName(outcome)} of ${nameOf(index, node)} leads nowhere. Lead it to the next node.`,
+      )
     }
   } else if ((node.kind === 'start' || node.kind === 'step') && !leading.has(undefined)) {
     yield remark('node-without-edge', { node: node.id, edge: { from: node.id } }, `Nothing follows ${nameOf(index, node)}. Lead it to the next node.`)
@@ -73,7 +89,11 @@ export const ends: Rule = function* (context) {
     const component = of[number] ?? 0
     if (isTrap[component] !== 1 || told.has(component) || !isReached(id)) continue
     told.add(component)
-    yield remark('no-end-reachable', { node: id }, `A walk that comes to ${nameOfId(index, id)} never ends: no cause and no other end can be reached from it. Lead one of its outcomes out.`)
+    yield remark(
+      'no-end-reachable',
+      { node: id },
+      `A walk that comes to ${nameOfId(index, id)} never ends: no cause and no other end can be reached from it. Lead one of its outcomes out.`,
+    )
   }
 }
 
@@ -93,11 +113,20 @@ export const onlyFor: Rule = function* ({ index }) {
     if (node.onlyFor === undefined) continue
     const { otherwise } = node.onlyFor
     if (otherwise !== undefined) {
-      if (!index.nodes.has(otherwise)) yield remark('edge-to-nothing', { node: node.id }, `On other machines ${nameOf(index, node)} hands over to node ${otherwise}, which does not exist. Name another node.`)
+      if (!index.nodes.has(otherwise))
+        yield remark(
+          'edge-to-nothing',
+          { node: node.id },
+          `On other machines ${nameOf(index, node)} hands over to node ${otherwise}, which does not exist. Name another node.`,
+        )
       continue
     }
     const normal = isDecision(node) ? node.outcomes.filter((outcome) => outcome.normal === true).length : 0
     if (normal !== 1)
-      yield remark('only-for-without-way', { node: node.id }, `${nameOf(index, node)} is not for every machine, and it does not say where the others go on. Name the node for other machines, or mark exactly one outcome as normal.`)
+      yield remark(
+        'only-for-without-way',
+        { node: node.id },
+        `${nameOf(index, node)} is not for every machine, and it does not say where the others go on. Name the node for other machines, or mark exactly one outcome as normal.`,
+      )
   }
 }

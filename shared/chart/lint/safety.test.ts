@@ -10,7 +10,9 @@ describe('safety parts', () => {
   test('what a node puts out of action it may put back itself', () => {
     expect(saysOf(sketchOf({ nodes: [proof('p2', 'filter-packed', { defeats: ['screen'], restores: ['screen'] })] }))).toEqual([])
     expect(saysOf(sketchOf({ nodes: [proof('p2', 'filter-packed', { defeats: ['screen'] })] }))).toEqual(['defeated-never-restored p2'])
-    expect(saysOf(sketchOf({ nodes: [proof('p2', 'filter-packed', { defeats: ['screen', 'stop-wire'], restores: ['screen'] })] }))).toEqual(['defeated-never-restored p2'])
+    expect(saysOf(sketchOf({ nodes: [proof('p2', 'filter-packed', { defeats: ['screen', 'stop-wire'], restores: ['screen'] })] }))).toEqual([
+      'defeated-never-restored p2',
+    ])
   })
 
   test('every way on must pass a node that puts it back, not some of them', () => {
@@ -29,7 +31,8 @@ describe('safety parts', () => {
 // ANSI Z535.4-2007, "Product Safety Signs and Labels", 4.14: definitions of the signal words (read).
 describe('signal words (ANSI Z535.4-2007, 4.14)', () => {
   const hazard = { id: 'h', hazard: 'Ring of carbon breaks off', avoid: 'Stop at once' }
-  const withCaution = (caution: Record<string, unknown>): ChartSketch => vary(soundSketch, { nodes: [check('n2', undefined, { cautions: ['h'] })], more: { cautions: [{ ...hazard, ...caution }] } })
+  const withCaution = (caution: Record<string, unknown>): ChartSketch =>
+    vary(soundSketch, { nodes: [check('n2', undefined, { cautions: ['h'] })], more: { cautions: [{ ...hazard, ...caution }] } })
 
   test.each(['DANGER', 'WARNING', 'CAUTION'])('damage alone is a NOTICE, never %s', (word) => {
     expect(saysOf(withCaution({ word, harm: 'damage' }))).toEqual(['word-contradicts-harm'])
@@ -63,7 +66,8 @@ describe('signal words (ANSI Z535.4-2007, 4.14)', () => {
 
 describe('a running engine', () => {
   const starts = { id: 'start', word: 'WARNING', harm: 'serious-injury', hazard: 'Chain moves', avoid: 'Brake set', again: ['running'] }
-  const running = (node: Record<string, unknown>, more: Partial<ChartSketch>): ChartSketch => vary(soundSketch, { nodes: [reproducing('n1', { machine: 'running', ...node })], more })
+  const running = (node: Record<string, unknown>, more: Partial<ChartSketch>): ChartSketch =>
+    vary(soundSketch, { nodes: [reproducing('n1', { machine: 'running', ...node })], more })
 
   test('needs a caution that comes again with the engine: on the node, on an access of it, or on the chart', () => {
     expect(saysOf(running({}, {}))).toEqual(['running-without-caution n1'])

@@ -19,7 +19,11 @@ export const restoring: Rule = function* (context) {
       const open = openEnds.get(part) ?? endsWithout(context, backward, part)
       openEnds.set(part, open)
       if (isTerminator(node) || successors(index, node).some((id) => open[context.graph.numberOf.get(id) ?? -1] === 1))
-        yield remark('defeated-never-restored', { node: node.id }, `${nameOf(index, node)} puts ${part} out of action, and a way on from it never puts ${part} back. Restore it in this node, or in one that every way on passes.`)
+        yield remark(
+          'defeated-never-restored',
+          { node: node.id },
+          `${nameOf(index, node)} puts ${part} out of action, and a way on from it never puts ${part} back. Restore it in this node, or in one that every way on passes.`,
+        )
     }
   }
 }
@@ -40,9 +44,17 @@ export const signalWords: Rule = function* ({ chart }) {
   for (const caution of chart.cautions ?? []) {
     const fitting = fittingWord(caution.harm)
     if (!fitsHarm(caution.word, caution.harm))
-      yield remark('word-contradicts-harm', {}, `Caution "${caution.hazard}" says ${caution.word}, but its harm is ${harmWords[caution.harm]}: that calls for ${fitting}. Change the word or the harm (ANSI Z535.4-2007, 4.14).`)
+      yield remark(
+        'word-contradicts-harm',
+        {},
+        `Caution "${caution.hazard}" says ${caution.word}, but its harm is ${harmWords[caution.harm]}: that calls for ${fitting}. Change the word or the harm (ANSI Z535.4-2007, 4.14).`,
+      )
     else if ((caution.word === 'CAUTION' || caution.word === 'NOTICE') && speaksOfDeath(caution))
-      yield remark('word-contradicts-harm', {}, `Caution "${caution.hazard}" says ${caution.word}, but speaks of death or serious injury: that calls for WARNING or DANGER. Change the word or the text (ANSI Z535.4-2007, 4.14).`)
+      yield remark(
+        'word-contradicts-harm',
+        {},
+        `Caution "${caution.hazard}" says ${caution.word}, but speaks of death or serious injury: that calls for WARNING or DANGER. Change the word or the text (ANSI Z535.4-2007, 4.14).`,
+      )
   }
 }
 
@@ -62,7 +74,11 @@ export const runningEngine: Rule = function* (context) {
   if ((chart.cautions ?? []).some((caution) => caution.standing === true && comesWithTheEngine(caution))) return
   for (const node of index.nodes.values()) {
     if (node.machine !== 'running' || hasRunningCaution(context, node)) continue
-    yield remark('running-without-caution', { node: node.id }, `${nameOf(index, node)} runs the engine, and no caution is shown when it starts. Add a caution with "running" among what brings it again, here or as a standing one.`)
+    yield remark(
+      'running-without-caution',
+      { node: node.id },
+      `${nameOf(index, node)} runs the engine, and no caution is shown when it starts. Add a caution with "running" among what brings it again, here or as a standing one.`,
+    )
   }
 }
 

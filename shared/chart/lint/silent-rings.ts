@@ -26,7 +26,11 @@ export const silentRings: Rule = function* ({ index, charts }) {
     const component = of[number] ?? 0
     if (chart !== index || told.has(component) || !marks.some((mark) => mark[number] === 1)) continue
     told.add(component)
-    yield remark('silent-ring', { node: node.id }, `From ${nameOf(index, node)} a walk comes back to the same place without anybody being asked anything: jumps, and nodes for other machines, lead round in a ring. Put a check or a step into the ring.`)
+    yield remark(
+      'silent-ring',
+      { node: node.id },
+      `From ${nameOf(index, node)} a walk comes back to the same place without anybody being asked anything: jumps, and nodes for other machines, lead round in a ring. Put a check or a step into the ring.`,
+    )
   }
 }
 
@@ -39,7 +43,11 @@ function silentWays(charts: ChartSet, joined: JoinedGraph): readonly Ways[] {
   const hubOf = new Map(ids.map((id, place) => [id, joined.nodes.length + place]))
   const returns = ids.map((): number[] => [])
   const numbers = (chart: ChartIndex, targets: readonly NodeId[]) => targets.flatMap((id) => joined.numberOf(chart.id, id) ?? [])
-  const edgesOf = (chart: ChartIndex, node: ChartNode) => numbers(chart, (chart.edgesFrom.get(node.id) ?? []).map((edge) => edge.to))
+  const edgesOf = (chart: ChartIndex, node: ChartNode) =>
+    numbers(
+      chart,
+      (chart.edgesFrom.get(node.id) ?? []).map((edge) => edge.to),
+    )
   const meant = (chart: ChartIndex, node: ChartNode): readonly number[] => {
     if (node.kind === 'start') return edgesOf(chart, node)
     if (node.kind === 'back') return [hubOf.get(chart.id) ?? 0]

@@ -15,19 +15,31 @@ describe('every start reproduces the symptom first', () => {
   })
 
   test('two of them, one on each way or one behind the other, are worth a look', () => {
-    const fork = vary(soundSketch, { nodes: [check('n0'), reproducing('n1b')], drop: ['s > n1'], edges: ['s > n0', 'n0.good > n1', 'n0.bad > n1b', 'n1b.yes > n2', 'n1b.no > a0'] })
+    const fork = vary(soundSketch, {
+      nodes: [check('n0'), reproducing('n1b')],
+      drop: ['s > n1'],
+      edges: ['s > n0', 'n0.good > n1', 'n0.bad > n1b', 'n1b.yes > n2', 'n1b.no > a0'],
+    })
     expect(saysOf(fork)).toEqual(['start-with-several-reproducing-checks s'])
     const chain = vary(soundSketch, { nodes: [reproducing('n1b')], drop: ['n1.yes > n2'], edges: ['n1.yes > n1b', 'n1b.yes > n2', 'n1b.no > a0'] })
     expect(saysOf(chain)).toEqual(['start-with-several-reproducing-checks s'])
   })
 
   test('a machine that does something else may go on to the check of another start', () => {
-    const other = vary(soundSketch, { nodes: [start('s2'), reproducing('n1b')], drop: ['n1.no > a0'], edges: ['n1.no > n1b', 's2 > n1b', 'n1b.yes > n2', 'n1b.no > a0'] })
+    const other = vary(soundSketch, {
+      nodes: [start('s2'), reproducing('n1b')],
+      drop: ['n1.no > a0'],
+      edges: ['n1.no > n1b', 's2 > n1b', 'n1b.yes > n2', 'n1b.no > a0'],
+    })
     expect(saysOf(other)).toEqual([])
   })
 
   test('looks that must be safe before a start may precede it, also where one of them leads to a proof', () => {
-    const safeFirst = vary(soundSketch, { nodes: [check('n0'), proof('p0', 'started-dry'), cause('c0', 'started-dry'), step('w')], drop: ['s > n1'], edges: ['s > w', 'w > n0', 'n0.good > n1', 'n0.bad > p0', 'p0.gone > c0', 'p0.still > n1'] })
+    const safeFirst = vary(soundSketch, {
+      nodes: [check('n0'), proof('p0', 'started-dry'), cause('c0', 'started-dry'), step('w')],
+      drop: ['s > n1'],
+      edges: ['s > w', 'w > n0', 'n0.good > n1', 'n0.bad > p0', 'p0.gone > c0', 'p0.still > n1'],
+    })
     expect(saysOf(safeFirst)).toEqual([])
   })
 
@@ -42,7 +54,8 @@ describe('every start reproduces the symptom first', () => {
 })
 
 describe('where all is good, nothing was found', () => {
-  const into = (node: Record<string, unknown>, id: string) => vary(soundSketch, { nodes: [node], without: ['ask'], drop: ['n2.good > ask', 'p2.still > ask'], edges: [`n2.good > ${id}`, `p2.still > ${id}`] })
+  const into = (node: Record<string, unknown>, id: string) =>
+    vary(soundSketch, { nodes: [node], without: ['ask'], drop: ['n2.good > ask', 'p2.still > ask'], edges: [`n2.good > ${id}`, `p2.still > ${id}`] })
 
   test('that route ends with the lead, on hold, back at the caller or in another chart', () => {
     const other: ChartSketch = { id: 'other', nodes: [start(), ask()], edges: ['s > ask'] }
@@ -52,14 +65,23 @@ describe('where all is good, nothing was found', () => {
   })
 
   test('a cause at its end is worth a look', () => {
-    const table = vary(soundSketch, { without: ['p2'], drop: ['n2.good > ask', 'n2.bad > p2', 'p2.gone > c2', 'p2.still > ask'], edges: ['n2.good > c2', 'n2.bad > ask'], more: { basis: 'printed-table' } })
+    const table = vary(soundSketch, {
+      without: ['p2'],
+      drop: ['n2.good > ask', 'n2.bad > p2', 'p2.gone > c2', 'p2.still > ask'],
+      edges: ['n2.good > c2', 'n2.bad > ask'],
+      more: { basis: 'printed-table' },
+    })
     expect(saysOf(table)).toEqual(['all-good-route n2.good'])
     expect(saysOf(vary(table, { drop: ['n2.good > c2', 'n2.bad > ask'], edges: ['n2.good > ask', 'n2.bad > c2'] }))).toEqual([])
   })
 
   test('what is dirty but not the cause counts as good, and the route goes on over steps and checks', () => {
     const dusty = { id: 'dusty', title: 'Dusty', serviceable: true }
-    const table = vary(soundSketch, { nodes: [check('n2', ['good', 'bad', dusty]), step('w')], edges: ['n2.dusty > w', 'w > c2'], more: { basis: 'printed-table' } })
+    const table = vary(soundSketch, {
+      nodes: [check('n2', ['good', 'bad', dusty]), step('w')],
+      edges: ['n2.dusty > w', 'w > c2'],
+      more: { basis: 'printed-table' },
+    })
     expect(saysOf(table)).toEqual(['all-good-route c2'])
   })
 })

@@ -14,14 +14,28 @@ export const reproducing: Rule = function* (context) {
   if (chart.basis === 'printed-table') return
   for (const node of index.nodes.values()) {
     if (reproduces(node) && !node.outcomes.some((outcome) => outcome.reproduced === true))
-      yield remark('nothing-reproduced', { node: node.id }, `${nameOf(index, node)} is to reproduce the symptom, but none of its outcomes says that it did. Mark those that do.`)
+      yield remark(
+        'nothing-reproduced',
+        { node: node.id },
+        `${nameOf(index, node)} is to reproduce the symptom, but none of its outcomes says that it did. Mark those that do.`,
+      )
   }
   if (chart.nodes.some((node) => node.kind === 'back')) return
   const firsts = firstReproducing(context)
   for (const start of index.starts) {
     const found = firsts.get(start.id) ?? []
-    if (found.length === 0) yield remark('start-without-reproducing-check', { node: start.id }, `No check after ${nameOf(index, start)} reproduces the symptom before something is proved. Add one, and mark it as the check that reproduces.`)
-    else if (found.length > 1) yield remark('start-with-several-reproducing-checks', { node: start.id }, `After ${nameOf(index, start)} more than one check can reproduce the symptom, ${found.map((id) => nameOfId(index, id)).join(' and ')} among them. Keep the mark on one.`)
+    if (found.length === 0)
+      yield remark(
+        'start-without-reproducing-check',
+        { node: start.id },
+        `No check after ${nameOf(index, start)} reproduces the symptom before something is proved. Add one, and mark it as the check that reproduces.`,
+      )
+    else if (found.length > 1)
+      yield remark(
+        'start-with-several-reproducing-checks',
+        { node: start.id },
+        `After ${nameOf(index, start)} more than one check can reproduce the symptom, ${found.map((id) => nameOfId(index, id)).join(' and ')} among them. Keep the mark on one.`,
+      )
   }
 }
 
@@ -35,7 +49,9 @@ function reproduces(node: ChartNode): node is Exclude<DecisionNode, NodeOf<'proo
  * backwards from the checks, so that many starts cost no more than one.
  */
 function firstReproducing({ index, graph }: LintContext): ReadonlyMap<NodeId, readonly NodeId[]> {
-  const edges = graph.ids.flatMap((id, from) => leadingOn(index, id).flatMap((to) => (graph.numberOf.has(to) ? [[graph.numberOf.get(to) ?? 0, from] as const] : [])))
+  const edges = graph.ids.flatMap((id, from) =>
+    leadingOn(index, id).flatMap((to) => (graph.numberOf.has(to) ? [[graph.numberOf.get(to) ?? 0, from] as const] : [])),
+  )
   const backwards = toDigraph(graph.ids.length, edges)
   const found = new Map<NodeId, NodeId[]>()
   const stack = [...index.nodes.values()].filter(reproduces).map((node) => ({ at: node.id, check: node.id }))
@@ -68,7 +84,11 @@ export const allGood: Rule = function* (context) {
       const target = index.nodes.get(to)
       if (target?.kind !== 'cause') continue
       const found = outcome === undefined ? '' : `, ${outcomeName(outcome)} included`
-      yield remark('all-good-route', { node: to, edge: { from: id, ...(outcome === undefined ? {} : { outcome: outcome.id }) } }, `Everything is as it should be${found}, and yet the walk ends in cause ${nameOf(index, target)}. Lead it to the lead, on hold or back instead.`)
+      yield remark(
+        'all-good-route',
+        { node: to, edge: { from: id, ...(outcome === undefined ? {} : { outcome: outcome.id }) } },
+        `Everything is as it should be${found}, and yet the walk ends in cause ${nameOf(index, target)}. Lead it to the lead, on hold or back instead.`,
+      )
     }
   }
 }

@@ -2,8 +2,17 @@ import { describe, expect, test } from 'vitest'
 import { check, proof, soundSketch, step, type ChartSketch } from '#tests/support/chart-builder.ts'
 import { saysOf, vary } from '#tests/support/lint.ts'
 
-const withStep = (more: Record<string, unknown>): ChartSketch => vary(soundSketch, { nodes: [step('w', more)], drop: ['n2.good > ask'], edges: ['n2.good > w', 'w > ask'] })
-const withOutcome = (title: string): ChartSketch => vary(soundSketch, { nodes: [check('n2', [{ id: 'good', title: 'Dry', normal: true }, { id: 'bad', title }])] })
+const withStep = (more: Record<string, unknown>): ChartSketch =>
+  vary(soundSketch, { nodes: [step('w', more)], drop: ['n2.good > ask'], edges: ['n2.good > w', 'w > ask'] })
+const withOutcome = (title: string): ChartSketch =>
+  vary(soundSketch, {
+    nodes: [
+      check('n2', [
+        { id: 'good', title: 'Dry', normal: true },
+        { id: 'bad', title },
+      ]),
+    ],
+  })
 const withText = (good: string): ChartSketch => vary(soundSketch, { nodes: [check('n2', undefined, { good })] })
 
 const twenty = Array.from({ length: 20 }, (_, index) => `word${index}`).join(' ')
@@ -54,8 +63,12 @@ describe('values', () => {
     expect(saysOf(withText('Step 5\nmore slack'))).toEqual([])
   })
   test('are looked at in cautions, accesses and fixes too', () => {
-    expect(saysOf({ ...soundSketch, cautions: [{ id: 'x', word: 'CAUTION', harm: 'minor-injury', hazard: 'Hot at about 90 degC', avoid: 'Wait' }] })).toEqual(['vague-value'])
-    expect(saysOf({ ...soundSketch, causes: [{ id: 'filter-packed', title: 'Filter packed', system: 'air', remedy: { text: 'Blow at 25 +- 2 psi' } }] })).toEqual(['plus-minus'])
+    expect(saysOf({ ...soundSketch, cautions: [{ id: 'x', word: 'CAUTION', harm: 'minor-injury', hazard: 'Hot at about 90 degC', avoid: 'Wait' }] })).toEqual([
+      'vague-value',
+    ])
+    expect(
+      saysOf({ ...soundSketch, causes: [{ id: 'filter-packed', title: 'Filter packed', system: 'air', remedy: { text: 'Blow at 25 +- 2 psi' } }] }),
+    ).toEqual(['plus-minus'])
   })
 })
 
@@ -63,7 +76,12 @@ describe('conditions', () => {
   test.each(['If the plug is wet and black or bridged, renew it', 'When it stalls or dies and smokes, stop'])('"%s" ties AND to OR', (text) => {
     expect(saysOf(withText(text))).toEqual(['and-with-or n2'])
   })
-  test.each(['If the plug is wet, dry it and pull or choke it', 'If chips or dust sit between band and drum, clean it', 'Wet and black or bridged', 'If it is wet and black, renew it'])('"%s" does not', (text) => {
+  test.each([
+    'If the plug is wet, dry it and pull or choke it',
+    'If chips or dust sit between band and drum, clean it',
+    'Wet and black or bridged',
+    'If it is wet and black, renew it',
+  ])('"%s" does not', (text) => {
     expect(saysOf(withText(text))).toEqual([])
   })
 })

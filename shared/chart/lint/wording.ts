@@ -11,20 +11,36 @@ const mostOutcomeWords = 4
 /** Steps are short, outcomes are named in words of their own, and every node that makes a page has a title. */
 export const wording: Rule = function* ({ index }) {
   for (const node of index.nodes.values()) {
-    if (needsTitle(node) && (node.title ?? '').trim() === '') yield remark('title-missing', { node: node.id }, `Node ${node.id} has no title. Say in a few words what is done or asked.`)
+    if (needsTitle(node) && (node.title ?? '').trim() === '')
+      yield remark('title-missing', { node: node.id }, `Node ${node.id} has no title. Say in a few words what is done or asked.`)
     for (const sentence of toDo(node).flatMap(sentences)) {
       const count = wordCount(sentence)
-      if (count > mostStepWords) yield remark('step-too-long', { node: node.id }, `A step of ${nameOf(index, node)} has ${count} words: "${shorten(sentence)}". Say it in ${mostStepWords}, or make it two steps.`)
+      if (count > mostStepWords)
+        yield remark(
+          'step-too-long',
+          { node: node.id },
+          `A step of ${nameOf(index, node)} has ${count} words: "${shorten(sentence)}". Say it in ${mostStepWords}, or make it two steps.`,
+        )
     }
     if (isDecision(node)) for (const outcome of node.outcomes) yield* outcomeWording(index, node, outcome)
   }
 }
 
-function* outcomeWording(index: LintContext['index'], node: ChartNode, outcome: { id: string; title: string } & Parameters<typeof outcomeName>[0]): Iterable<Remark> {
+function* outcomeWording(
+  index: LintContext['index'],
+  node: ChartNode,
+  outcome: { id: string; title: string } & Parameters<typeof outcomeName>[0],
+): Iterable<Remark> {
   const at = { node: node.id, edge: { from: node.id, outcome: outcome.id } }
   const count = wordCount(outcome.title)
-  if (count > mostOutcomeWords) yield remark('outcome-title-too-long', at, `Outcome ${outcomeName(outcome)} of ${nameOf(index, node)} has ${count} words. Say it in ${mostOutcomeWords}.`)
-  if (count === 0 || saysNothing(outcome.title)) yield remark('outcome-says-nothing', at, `Outcome ${outcomeName(outcome)} of ${nameOf(index, node)} does not say what was found. Name what is seen, heard or felt.`)
+  if (count > mostOutcomeWords)
+    yield remark('outcome-title-too-long', at, `Outcome ${outcomeName(outcome)} of ${nameOf(index, node)} has ${count} words. Say it in ${mostOutcomeWords}.`)
+  if (count === 0 || saysNothing(outcome.title))
+    yield remark(
+      'outcome-says-nothing',
+      at,
+      `Outcome ${outcomeName(outcome)} of ${nameOf(index, node)} does not say what was found. Name what is seen, heard or felt.`,
+    )
 }
 
 function saysNothing(title: string): boolean {
@@ -34,15 +50,20 @@ function saysNothing(title: string): boolean {
 /** Values are ranges with a unit on one line, and no condition ties AND to OR. */
 export const values: Rule = function* ({ index, chart }) {
   for (const node of index.nodes.values()) for (const text of nodeTexts(node)) yield* valueWording({ node: node.id }, nameOf(index, node), text)
-  for (const caution of chart.cautions ?? []) for (const text of [caution.hazard, caution.consequence, caution.avoid]) yield* valueWording({}, `caution "${shorten(caution.hazard)}"`, text)
+  for (const caution of chart.cautions ?? [])
+    for (const text of [caution.hazard, caution.consequence, caution.avoid]) yield* valueWording({}, `caution "${shorten(caution.hazard)}"`, text)
   for (const access of chart.access ?? []) for (const text of [access.title, access.trap]) yield* valueWording({}, `access "${access.title}"`, text)
-  for (const cause of chart.library.causes ?? []) for (const text of [cause.title, cause.advice, cause.remedy?.text]) yield* valueWording({}, `cause "${cause.title}"`, text)
+  for (const cause of chart.library.causes ?? [])
+    for (const text of [cause.title, cause.advice, cause.remedy?.text]) yield* valueWording({}, `cause "${cause.title}"`, text)
   for (const item of chart.library.serviceItems ?? []) yield* valueWording({}, `service item "${item.title}"`, item.title)
 }
 
 const vague = /\b(?:about|approx\.?|approximately|roughly|circa)\s+\d[\d.,]*/i
 const plusMinus = /±|\+\s?\/?\s?[-−–]\s?\d/
-const torn = new RegExp(`\\d[ \\t]*\\r?\\n\\s*(?:${[...units, 'rpm', 'min', 'cm', 'm'].map((unit) => unit.replaceAll('/', '\\/')).join('|')})(?![\\p{L}\\p{N}])`, 'u')
+const torn = new RegExp(
+  `\\d[ \\t]*\\r?\\n\\s*(?:${[...units, 'rpm', 'min', 'cm', 'm'].map((unit) => unit.replaceAll('/', '\\/')).join('|')})(?![\\p{L}\\p{N}])`,
+  'u',
+)
 
 function* valueWording(at: { readonly node?: ChartNode['id'] }, where: string, text: string | undefined): Iterable<Remark> {
   if (text === undefined || text === '') return
@@ -51,7 +72,8 @@ function* valueWording(at: { readonly node?: ChartNode['id'] }, where: string, t
   if (plusMinus.test(text)) yield remark('plus-minus', at, `In ${where} a value is written with plus and minus. Write the range out, as "2700 to 3100 rpm".`)
   if (torn.test(text)) yield remark('value-torn-from-unit', at, `In ${where} a line breaks between a value and its unit. Keep them on one line.`)
   for (const condition of conditions(text)) {
-    if (/\band\b/i.test(condition) && /\bor\b/i.test(condition)) yield remark('and-with-or', at, `In ${where} one condition uses both "and" and "or": "${shorten(condition)}". Make it a list, or two checks.`)
+    if (/\band\b/i.test(condition) && /\bor\b/i.test(condition))
+      yield remark('and-with-or', at, `In ${where} one condition uses both "and" and "or": "${shorten(condition)}". Make it a list, or two checks.`)
   }
 }
 
