@@ -20,6 +20,7 @@ export const peopleQueries = {
       queryKey: ['people', 'link', token],
       queryFn: ({ signal }) => request(paths.api.link(token), getLink.response, { signal }),
       retry: false,
+      retryOnMount: false,
       gcTime: 0,
     }),
 }
