@@ -35,7 +35,7 @@ describe('the chart check as a whole', () => {
   test('every message names its node by the title and ends as a sentence', () => {
     const remarks = remarksOf({ nodes: [start(), check('n1', ['only']), ask()], edges: ['s > n1', 'n1.only > n1'] })
     for (const { message, node } of remarks) {
-      expect(message).toMatch(/\.$/)
+      expect(message).toMatch(/^["A-Z].*\.$/)
       if (node !== undefined) expect(message).toMatch(/"(Start s|Look at n1|Ask the lead)"/)
     }
     expect(hasErrors(remarks)).toBe(true)

@@ -13,9 +13,9 @@ export type Remark = {
   readonly message: string
 }
 
-/** Makes a remark; its severity is that of its code. */
+/** Makes a remark; its severity is that of its code, and its message begins with a capital. */
 export function remark(code: RemarkCode, at: { readonly node?: NodeId; readonly edge?: RemarkEdge }, message: string): Remark {
-  return { code, severity: remarkCodes[code], ...at, message }
+  return { code, severity: remarkCodes[code], ...at, message: message.charAt(0).toUpperCase() + message.slice(1) }
 }
 
 /** Sorts remarks by severity, then by where their node stands in the chart (none: first); ties keep the order of the rules. */
