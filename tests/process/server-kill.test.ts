@@ -30,5 +30,5 @@ test(
     }
     expect(await server.end('SIGTERM')).toBe(0)
   },
-  600_000,
+  900_000,
 )

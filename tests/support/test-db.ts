@@ -74,6 +74,7 @@ async function makeTemplate(server: string, template: string): Promise<void> {
     await client.query('select pg_advisory_lock(1)')
     const { rowCount } = await client.query('select 1 from pg_database where datname = $1', [template])
     if (rowCount) return
+    await client.query(`drop database if exists ${template}_draft`)
     await client.query(`create database ${template}_draft`)
     const database = await openPostgres(withDatabase(server, `${template}_draft`), () => undefined)
     await database.close()
