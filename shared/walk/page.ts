@@ -182,7 +182,10 @@ export interface BeforePage {
   readonly outcomes: readonly OutcomeChoice[]
   readonly judging: Judging | null
   readonly noAnswer: NoAnswer
-  /** The proof's own page, shown next, with its `before` still to be filled in. */
+  /**
+   * The proof's own page, shown next, with its `before` still to be filled in. Was the proof answered before a step back, `proof.offered` is that
+   * answer with all that was taken for it: it can be recorded again at once, from here.
+   */
   readonly proof: ProofPage
 }
 

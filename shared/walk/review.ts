@@ -7,7 +7,7 @@ import type { WalkEvent, WalkEventType } from './events.ts'
 import type { CauseWords, NodeName } from './page.ts'
 import { accessOnStack, chartsOf, locate, type PinnedCharts } from './pinned-charts.ts'
 import { arrive, goOn } from './route.ts'
-import { newWalk, type SpentWhy, type StartedWalk, type TrailEntry, type WalkRecord, type WalkState } from './state.ts'
+import { newWalk, type SkipLine, type SpentWhy, type StartedWalk, type TrailEntry, type WalkRecord, type WalkState } from './state.ts'
 import { causeWords, nameAt } from './words.ts'
 
 /** What a finding says of the machine. `off` points on to a suspect; an outcome that says nothing of the kind has none. */
@@ -25,6 +25,8 @@ export interface ReviewLine {
   readonly outcome: { readonly title: string; readonly balloon: number | null } | null
   readonly reading: { readonly before: number | null; readonly values: readonly number[]; readonly unit: Unit } | null
   readonly judgement: Judgement | null
+  /** Why a check got no answer. */
+  readonly noAnswer: SkipLine['why'] | null
   readonly cause: CauseWords | null
   /** What was written: a note, a question, a reason, the titles of what was opened. */
   readonly text: string | null
@@ -75,7 +77,7 @@ export function toReview(charts: PinnedCharts, events: readonly WalkEvent[]): re
   }))
 }
 
-type Told = Pick<ReviewLine, 'node' | 'outcome' | 'reading' | 'judgement' | 'cause' | 'text' | 'photoIds'>
+type Told = Pick<ReviewLine, 'node' | 'outcome' | 'reading' | 'judgement' | 'noAnswer' | 'cause' | 'text' | 'photoIds'>
 
 /** What an event tells by itself, at the walk as it stood before. */
 function toldBy(charts: PinnedCharts, walk: StartedWalk, event: WalkEvent): Told {
@@ -86,7 +88,7 @@ function toldBy(charts: PinnedCharts, walk: StartedWalk, event: WalkEvent): Told
     node: nameAt(charts, walk, place),
     ...outcomeTold(charts, walk, place, outcome),
     reading: readingTold(event),
-    ...(event.type === 'check-skipped' ? { judgement: 'no-answer' as const } : {}),
+    ...(event.type === 'check-skipped' ? { judgement: 'no-answer' as const, noAnswer: event.payload.why } : { noAnswer: null }),
     cause: 'causeId' in payload && payload.causeId !== undefined ? causeWords(charts, walk, payload.causeId) : null,
     text: textOf(charts, walk, event),
     photoIds: photosOf(event),
@@ -125,8 +127,8 @@ function textOf(charts: PinnedCharts, walk: WalkRecord, event: WalkEvent): strin
       return event.payload.title ?? event.payload.note ?? null
     case 'escalated':
       return event.payload.reason
-    case 'closed':
-      return event.payload.why ?? null
+    case 'check-skipped':
+      return event.payload.note ?? null
     default:
       return writtenIn(event.payload)
   }

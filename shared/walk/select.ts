@@ -122,10 +122,7 @@ function workPage(charts: PinnedCharts, walk: WalkRecord, nodes: PageNodes): Wal
     return { kind: 'step', node: wordsOf(charts, walk, nodes.target), entering }
   }
   const check: LocatedDecision = { index, node }
-  if (node.kind === 'proof') {
-    const offered = offeredWords(charts, walk, check)
-    return nodes.before && offered === null ? beforePage(charts, walk, nodes, check, nodes.before) : proofPage(charts, walk, nodes, check)
-  }
+  if (node.kind === 'proof') return nodes.before ? beforePage(charts, walk, nodes, check, nodes.before) : proofPage(charts, walk, nodes, check)
   const judging = judgingOf(walk, check)
   const asking = askingOf(charts, walk, nodes, check)
   return node.kind === 'reading' && judging ? ({ ...asking, kind: 'reading', judging } satisfies ReadingPage) : ({ ...asking, kind: 'check' } satisfies CheckPage)

@@ -132,7 +132,7 @@ export function waysOfPage({ page, state, charts }: Bench): readonly (readonly E
       const asking = page.kind === 'before' ? page.proof : page
       const taken = page.kind === 'before' ? answerBefore(page, page.judging ? { values: [9000], unit: '1/min', seconds: 0 } : { outcome: page.outcomes[0]?.outcome as never, seconds: 0 }) : undefined
       const measured = asking.judging ? [[9000], [12_000]].map((values) => answerPage(asking, { values, unit: '1/min', note: 'Seen', seconds: 1 }, taken ?? undefined)) : asking.outcomes.map(({ outcome }) => answerPage(asking, { outcome, note: 'Seen', seconds: 1 }, taken ?? undefined))
-      return [...measured, ...(asking.offered && page.kind === 'proof' ? [answerAgain(asking, asking.offered, 1)] : []), [skipPage(page, 'not-sure')]].flatMap((way) => (way ? [way] : []))
+      return [...measured, ...(asking.offered ? [answerAgain(asking, asking.offered, 1)] : []), [skipPage(page, 'not-sure')]].flatMap((way) => (way ? [way] : []))
     }
     case 'pick':
       return page.starts.map(({ chartId, version, startId }) => [{ type: 'jumped', payload: { chartId, version, startId, pins: {} } }])
