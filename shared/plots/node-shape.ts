@@ -31,6 +31,7 @@ interface ShapeLine {
 const boxWidth = 190
 const terminatorMost = 172
 const terminatorLeast = 112
+/** Half the height and width of the decision tab on a check. */
 const tabRadius = 13
 const pentagonPoint = 15
 const padTop = 12
@@ -38,9 +39,6 @@ const padBottom = 11
 const padSide = 12
 const listGap = 9
 const barRoom = 10
-
-/** Half the height and width of the decision tab on a check. */
-export const tabSize = tabRadius
 
 function outlineOf(node: ChartNode): Outline {
   switch (node.kind) {
