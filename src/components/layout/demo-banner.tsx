@@ -22,7 +22,7 @@ export function DemoBanner() {
         </button>
       </p>
       <p id={id} hidden={!isOpen} className="max-w-words pb-2">
-        Stop this server, then start it with a folder of your own: <code className="figures">DEMO=0 PULLCORD_DATA=./my-shop npm start</code>. It prints a
+        Stop this server, then start it with a folder of your own: <code className="figures">DEMO=0 PULLCORD_DATA=./shop npm start</code>. It prints a
         one-time code for the first owner. The demo stays where it is.
       </p>
     </aside>
