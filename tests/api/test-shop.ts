@@ -121,7 +121,7 @@ export async function openTestShop({ config = {}, app = {}, withPeople = true }:
     },
     db: database.db,
     database,
-    log: createLog({ level: 'debug', destination: { write: (line: string) => void logLines.push(line) } }),
+    log: createLog({ level: 'debug', destination: { write: (line: string) => keepLine(logLines, line) } }),
     clock,
     newId: createIdSource(Date.now),
     randomToken,
@@ -157,6 +157,12 @@ export async function openTestShop({ config = {}, app = {}, withPeople = true }:
       await close()
     },
   }
+}
+
+/** Keeps a line of the log; an error that no test should cause is shown where the test runs. */
+function keepLine(lines: string[], line: string): void {
+  lines.push(line)
+  if (line.startsWith('{"level":"error"')) process.stderr.write(line)
 }
 
 async function addThree(deps: Deps): Promise<Record<Role, TestPerson>> {

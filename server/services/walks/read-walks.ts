@@ -100,7 +100,7 @@ export async function listSideEvents(deps: Deps, by: CurrentSession, walkId: Wal
     .select()
     .from(walkSideEvents)
     .where(and(eq(walkSideEvents.walkId, walkId), isLead ? undefined : eq(walkSideEvents.personId, by.person.id)))
-    .orderBy(asc(walkSideEvents.receivedAt), asc(walkSideEvents.id))
+    .orderBy(asc(walkSideEvents.receivedAt), asc(sql`(${walkSideEvents.event} ->> 'seq')::int`), asc(walkSideEvents.id))
   if (rows.length === 0 && (await getVisible(deps, by, walkId)) === null) throw notFound()
   return rows.map(({ event, status, code, receivedAt }) => ({ event, status, code, receivedAt: receivedAt.toISOString() }))
 }
