@@ -22,11 +22,17 @@ const phaseFields: Readonly<Record<KeyOfAny<Phase>, true>> = {
   last: true,
 }
 
-/** The walk in another phase, with some of its record changed; what belonged to the old phase is gone. */
-export function inPhase<P extends Phase>(walk: WalkRecord, phase: P, changes: Partial<WalkRecord> = {}): WalkRecord & P {
+/** The record alone, without what belongs to its phase. */
+function withoutPhase(walk: StartedWalk): WalkRecord {
+  // At a node, where walks are most of the time, a walk is its record and the name of that phase.
+  if (walk.phase === 'at-node') return walk
   // All that is left is the record: the fields of every phase are listed above.
-  const record = Object.fromEntries(Object.entries(walk).filter(([field]) => !Object.hasOwn(phaseFields, field))) as unknown as WalkRecord
-  return { ...record, ...changes, ...phase }
+  return Object.fromEntries(Object.entries(walk).filter(([field]) => !Object.hasOwn(phaseFields, field))) as unknown as WalkRecord
+}
+
+/** The walk in another phase, with some of its record changed; what belonged to the old phase is gone. */
+export function inPhase<P extends Phase>(walk: StartedWalk, phase: P, changes: Partial<WalkRecord> = {}): WalkRecord & P {
+  return { ...withoutPhase(walk), ...changes, ...phase }
 }
 
 /** The fields that a walk's phase adds to its record. */
