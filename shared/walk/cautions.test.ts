@@ -206,6 +206,15 @@ describe('cautions out of turn', () => {
     bench.given(...open).when(noticed('n2', 'bad')).then((walk) => expect(walk.noticed).toHaveLength(1))
   })
 
+  test('what was read for a check out of turn counts as read after the opening that it takes', () => {
+    const own = row([check('n1'), check('n2', ['good', 'bad'], { needs: ['cover-off'], cautions: ['dust'] })], {
+      cautions: [caution('dust', { again: ['cover-off'] })],
+      access: [{ id: 'cover-off', title: 'Cover off', minutes: 2 }],
+    })
+    own.given(started()).when(read('n2', 'dust'), access(['cover-off']), noticed('n2', 'bad')).thenAt('n1')
+    own.given(started(), access(['cover-off'])).when(noticed('n2', 'bad')).thenRefused('cautions-pending')
+  })
+
   test('what was changed out of turn makes the cautions of the page wait again', () => {
     bench.given(started(), readCautions).when(read('n1', 'edge', 'lead'), openCover, found('n1', 'good')).thenRefused('cautions-pending')
     bench.given(started(), readCautions, read('n1', 'edge', 'lead'), openCover).thenPage('caution', (page) => expect([page.guards.place, ...page.cautionIds]).toEqual(['saw/n1', 'hot']))

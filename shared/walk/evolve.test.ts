@@ -107,6 +107,15 @@ describe('proofs', () => {
     edges: ['s > n1', 'n1.good > n2', 'n1.dark > p1', 'n2.low > ask', 'n2.in > ask', 'p1.gone > c1', 'p1.still > n2'],
   })
 
+  test('a proof compares with the latest reading, where the walk came round to it again', () => {
+    const round = buildChart({
+      id: 'saw',
+      nodes: [start(), reading('n2'), check('n3', ['round', 'dark']), proof('p3', 'filter-packed', { compares: { node: 'n2', confirmsWhen: ['in'] } }), cause('c3', 'filter-packed'), ask()],
+      edges: ['s > n2', 'n2.low > n3', 'n2.in > ask', 'n3.round > n2', 'n3.dark > p3', 'p3.gone > c3', 'p3.still > ask'],
+    })
+    storiesOn(round).given(started(), revs(9000), tap('round'), revs(9500), tap('dark')).thenPage('proof', (page) => expect(page.before?.answer.value).toBe(9500))
+  })
+
   test('where nothing was measured yet the proof takes the reading first, pays for it, and it counts from then on', () => {
     storiesOn(bare).given(started(), tap('dark')).thenPage('before', (page) => expect(page.proof.before).toBeNull())
     storiesOn(bare).given(started(), tap('dark'), answer({ values: [12_100], unit: '1/min', before: { values: [9000], unit: '1/min' } }))

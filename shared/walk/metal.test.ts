@@ -19,6 +19,7 @@ const accesses = [
   { id: 'screen-out', title: 'Screen out', minutes: 3, closeMinutes: 3, needs: ['cool'] },
   { id: 'cover-off', title: 'Clutch cover off', minutes: 2, closeMinutes: 2, needs: ['lead-off'] },
   { id: 'chain-off', title: 'Chain off', minutes: 1, closeMinutes: 2, needs: ['cover-off'] },
+  { id: 'hatch-off', title: 'Hatch off', minutes: 0.7, closeMinutes: 0.3 },
   { id: 'loop-a', title: 'Needs the other', minutes: 1, needs: ['loop-b'] },
   { id: 'loop-b', title: 'Needs the first', minutes: 1, needs: ['loop-a'] },
 ]
@@ -61,7 +62,8 @@ describe('opening access', () => {
   })
 
   test('of ways in that cost the same the first is taken', () => {
-    expect(entering({}, { needsOneOf: [['lead-off'], ['loop-a']] }).opened).toEqual(ids('lead-off'))
+    expect(entering({}, { needsOneOf: [['lead-off'], ['hatch-off']] }).opened).toEqual(ids('lead-off'))
+    expect(entering({}, { needsOneOf: [['hatch-off'], ['lead-off']] }).opened).toEqual(ids('hatch-off'))
     expect(entering({ open: ids('lead-off') }, { needsOneOf: [['screen-out', 'lead-off'], ['screen-out']] }).opened).toEqual(ids('cool', 'screen-out'))
   })
 
