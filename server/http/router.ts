@@ -104,7 +104,7 @@ async function readBody({ body: schema }: Contract, request: Request, response: 
 }
 
 function isJson(request: Request): boolean {
-  return /^application\/json\s*(;|$)/i.test(request.get('content-type') ?? '')
+  return /^application\/json\s*(;\s*charset="?utf-8"?\s*)?$/i.test(request.get('content-type') ?? '')
 }
 
 function isBodyless(request: Request): boolean {
@@ -112,5 +112,5 @@ function isBodyless(request: Request): boolean {
 }
 
 function wrongType(): DoorError {
-  return new DoorError(415, 'not-json', 'Send JSON, with the content type application/json.')
+  return new DoorError(415, 'not-json', 'Send JSON in UTF-8, with the content type application/json.')
 }

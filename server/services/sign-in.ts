@@ -36,7 +36,7 @@ function limitsOf({ email, address, knownBrowser }: SignInAttempt, isKnown: bool
   if (isKnown && knownBrowser) return [{ kind: 'browser', of: `${knownBrowser.browser} ${account}`, tries: 10, windowSeconds }]
   return [
     { kind: 'account-address', of: `${account} ${address}`, tries: 10, windowSeconds },
-    { kind: 'address', of: address, tries: isLoopback(address) ? 120 : 60, windowSeconds },
+    { kind: 'address', of: address, tries: isLoopback(address) ? 100 : 50, windowSeconds },
     { kind: 'account', of: account, tries: 50, windowSeconds },
   ]
 }

@@ -26,7 +26,7 @@ async function begun(acts = [started(), tap('yes'), revs(9000)], person: TestPer
 }
 
 const logLength = async (walkId: WalkId) => (await clients.lead.get(`/api/walks/${walkId}`)).body['lastSeq']
-const sideEvents = async (client: Client, walkId: WalkId) => (await client.get(`/api/walks/${walkId}/side-events`)).body['sideEvents'] as unknown as { event: WalkEvent; status: string; code: string }[]
+const sideEvents = async (client: Client, walkId: WalkId) => (await client.get(`/api/walks/${walkId}/side-events`)).body['sideEvents'] as { event: WalkEvent; status: string; code: string }[]
 
 describe('a walk through the API', () => {
   test('a junior walks a chart to a proven cause, one batch a tap, and the row tells where it stands', async () => {
@@ -82,7 +82,7 @@ describe('what becomes of an event', () => {
   test('twenty starts of one walk at once start it once', async () => {
     const { walkId, events } = logOf(junior(), [started()])
     const answers = await Promise.all(Array.from({ length: 20 }, () => clients.junior.post('/api/walks', { id: walkId, event: events[0] })))
-    const all = answers.flatMap(({ body }) => statuses(body as unknown as { results: { status: string }[] }))
+    const all = answers.flatMap(({ body }) => statuses(body as { results: { status: string }[] }))
     expect(all.toSorted()).toEqual(['appended', ...Array.from({ length: 19 }, () => 'duplicate')])
   })
 
@@ -145,7 +145,7 @@ describe('what becomes of an event', () => {
     const changed = { ...next, payload: { text: 'as it was not', photoIds: [] } } as WalkEvent
     expect(statuses(await send(clients.junior, walkId, [changed]))).toEqual(['conflict'])
     const { body } = await clients.junior.get(`/api/walks/${walkId}`)
-    expect((body['events'] as unknown as WalkEvent[]).at(-1)).toEqual(next)
+    expect((body['events'] as WalkEvent[]).at(-1)).toEqual(next)
     expect(body['lastSeq']).toBe(events.length + 1)
     expect(await sideEvents(clients.junior, walkId)).toEqual([])
   })
@@ -215,7 +215,7 @@ describe('who holds a walk', () => {
     expect(statuses(await send(clients.lead, walkId, [taken]))).toEqual(['appended'])
     expect((await clients.junior.get(`/api/walks/${walkId}`)).body['walk']).toMatchObject({ heldBy: { name: 'Lena Marsh', deviceId: otherDevice } })
     expect(statuses(await send(clients.junior, walkId, [after(taken, note(), { personId: junior().id, deviceId: last?.deviceId ?? otherDevice })]))).toEqual(['fork'])
-    const mine = (await clients.lead.get('/api/walks?scope=mine')).body['walks'] as unknown as { id: string }[]
+    const mine = (await clients.lead.get('/api/walks?scope=mine')).body['walks'] as { id: string }[]
     expect(mine.map(({ id }) => id)).toContain(walkId)
   })
 
@@ -230,7 +230,7 @@ describe('who holds a walk', () => {
     const handed = after(last, { type: 'handed-over', payload: { to: mate.id } })
     expect(statuses(await send(clients.junior, walkId, [handed]))).toEqual(['appended'])
     expect((await mateClient.get(`/api/walks/${walkId}`)).status).toBe(200)
-    expect(((await mateClient.get('/api/walks')).body['walks'] as unknown as { id: string }[]).map(({ id }) => id)).toEqual([walkId])
+    expect(((await mateClient.get('/api/walks')).body['walks'] as { id: string }[]).map(({ id }) => id)).toEqual([walkId])
     expect(statuses(await send(mateClient, walkId, [{ ...taken, seq: handed.seq + 1 }]))).toEqual(['appended'])
   })
 
@@ -289,7 +289,7 @@ describe('the start of a walk', () => {
 
     const offline = logOf(junior(), [started(), tap('yes')])
     const draft = await clients.lead.get('/api/charts/saw/draft')
-    const document = { ...(draft.body['document'] as unknown as object), title: 'No guts at all' }
+    const document = { ...(draft.body['document'] as object), title: 'No guts at all' }
     const saved = await clients.lead.put('/api/charts/saw/draft', { document }, { 'if-match': draft.headers.get('etag') ?? '' })
     expect((await clients.lead.post('/api/charts/saw/publish', { revision: saved.body['revision'], changeNote: 'New title', acceptsWarnings: true })).body['version']).toBe(2)
     expect(new Set(statuses(await send(clients.junior, offline.walkId, offline.events)))).toEqual(new Set(['appended']))
