@@ -1,12 +1,13 @@
 import { createServer } from 'node:http'
 import type { Server } from 'node:http'
 import { isIP } from 'node:net'
+import { inspect } from 'node:util'
 
 import { holdFolder } from './db/folder-lock.ts'
 import type { FolderHold } from './db/folder-lock.ts'
 import { parseEnvironment } from './lib/config.ts'
 import type { Environment } from './lib/config.ts'
-import { createLog } from './lib/log.ts'
+import type { Log } from './lib/log.ts'
 import { StartRefusal } from './lib/start-refusal.ts'
 import type { OpenShop } from './open-shop.ts'
 
@@ -14,19 +15,13 @@ import type { OpenShop } from './open-shop.ts'
 const deadlineMs = { requests: 5_000, database: 8_000 }
 
 const isDev = process.argv.includes('--dev')
-// At a terminal people read; elsewhere programs do, and want every request.
-const log = createLog({ level: process.stderr.isTTY ? 'warn' : 'info' })
 const say = (words: string): void => void process.stdout.write(`${words}\n`)
-
-process.on('unhandledRejection', (error) => log.error({ err: error }, 'a promise was rejected and nobody looked'))
-process.on('uncaughtException', (error) => log.error({ err: error }, 'an error that nobody caught'))
 
 type Running = { readonly server: Server; readonly shop: OpenShop; readonly hold: FolderHold | null }
 
 /** What is running, or null when the start was refused; a signal that comes meanwhile waits for it. */
 const started: Promise<Running | null> = start().catch((error: unknown) => {
-  if (error instanceof StartRefusal) process.stderr.write(`${error.message}\n`)
-  else log.fatal({ err: error }, 'the start failed')
+  process.stderr.write(error instanceof StartRefusal ? `${error.message}\n` : `The start failed. ${inspect(error)}\n`)
   process.exitCode = 1
   return null
 })
@@ -44,7 +39,7 @@ if (running === null) process.exit()
 void running.shop.lost.then((error) => {
   if (isStopping) return
   isStopping = true
-  log.fatal({ err: error }, 'the database stopped')
+  running.shop.deps.log.fatal({ err: error }, 'the database stopped')
   return stop(running, 'The database stopped by itself. Everything that was acknowledged is stored; start again.', 1)
 })
 
@@ -52,7 +47,10 @@ async function start(): Promise<Running> {
   const environment = readEnvironment()
   const hold = environment.databaseUrl === null ? await holdFolder(environment.dataFolder, 'server') : null
   // Only now what takes time to load: somebody who finds the folder taken hears so at once.
-  const { openShop } = await import('./open-shop.ts')
+  const [{ openShop }, { createLog }] = await Promise.all([import('./open-shop.ts'), import('./lib/log.ts')])
+  // At a terminal people read; elsewhere programs do, and want every request.
+  const log = createLog({ level: process.stderr.isTTY ? 'warn' : 'info' })
+  keepGoing(log)
   try {
     const shop = await openShop({ environment, hold, log, say })
     const server = await serveShop(shop, environment)
@@ -61,6 +59,12 @@ async function start(): Promise<Running> {
     await hold?.release()
     throw error
   }
+}
+
+/** The last resort: an error that nobody handled is written down, and the shop goes on. */
+function keepGoing(log: Log): void {
+  process.on('unhandledRejection', (error) => log.error({ err: error }, 'a promise was rejected and nobody looked'))
+  process.on('uncaughtException', (error) => log.error({ err: error }, 'an error that nobody caught'))
 }
 
 async function serveShop(shop: OpenShop, environment: Environment): Promise<Server> {

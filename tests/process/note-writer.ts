@@ -32,16 +32,17 @@ export class NoteWriter {
   }
 
   /** Writes until the server is gone. An event whose answer was lost is sent again under the same id when it is back. */
-  async writeUntilGone(url: string): Promise<void> {
+  async writeUntilGone(url: string, pauseMs = 0): Promise<void> {
     const client = this.#newClient(url)
     for (;;) {
       const answer = await this.#send(client, this.#next).catch(() => null)
       if (answer === null) return
       expect(answer.status, answer.text).toBe(200)
-      const [result] = answer.body['results'] as unknown as { id: string; status: string }[]
-      expect(['appended', 'duplicate']).toContain(result?.status)
+      const { results } = answer.body as unknown as { results: { id: string; status: string }[] }
+      expect(['appended', 'duplicate']).toContain(results[0]?.status)
       this.acknowledged.push(this.#next.id)
       this.#next = { id: newId(), seq: this.#next.seq + 1 }
+      if (pauseMs > 0) await new Promise((resolve) => setTimeout(resolve, pauseMs))
     }
   }
 
@@ -49,7 +50,7 @@ export class NoteWriter {
   async expectWhole(url: string): Promise<void> {
     if (this.acknowledged.length === 0) return
     const { body } = await this.#newClient(url).get(`/api/walks/${this.walkId}`)
-    const events = body['events'] as unknown as { id: string; seq: number }[]
+    const { events } = body as unknown as { events: { id: string; seq: number }[] }
     expect(events.map(({ seq }) => seq)).toEqual(events.map((_, index) => index + 1))
     expect(events.slice(0, this.acknowledged.length).map(({ id }) => id)).toEqual(this.acknowledged)
     // One more may have been stored whose answer was lost.

@@ -15,7 +15,7 @@ test(
     const environment = { PULLCORD_DATA: folder }
     const server = await startServer(environment)
     const writer = new NoteWriter(await signInJunior(server.url))
-    const writing = writer.writeUntilGone(server.url)
+    const writing = writer.writeUntilGone(server.url, 25)
     const holder = await readFile(join(folder, 'holder.json'), 'utf8')
     for (let opener = 0; opener < openers; opener += 1) {
       const args = opener % 2 === 0 ? ['server/main.ts'] : ['server/cli.ts', opener % 4 === 1 ? 'doctor' : 'create-owner']
