@@ -131,7 +131,7 @@ function editEntries(chart: ChartDocument, list: EntryList, change: (entries: re
   const changed = change(entries)
   if (!changed.ok) return changed
   if (changed.value === entries) return ok(chart)
-  return ok((isTop ? { ...chart, [list]: changed.value } : { ...chart, library: { ...chart.library, [list]: changed.value } }))
+  return ok(isTop ? { ...chart, [list]: changed.value } : { ...chart, library: { ...chart.library, [list]: changed.value } })
 }
 
 function editEntry(chart: ChartDocument, list: EntryList, id: string, change: (entries: readonly Entry[], at: number) => Edited<readonly Entry[]>): Edited {

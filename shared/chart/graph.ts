@@ -1,6 +1,7 @@
-import type { AccessId, CauseId, CautionId, ChartId, CheckId, NodeId, OutcomeId, ServiceItemId, SpecKeyId } from '#shared/lib/ids.ts'
+import type { AccessId, CauseId, CautionId, ChartId, NodeId, OutcomeId, ServiceItemId, SpecKeyId } from '#shared/lib/ids.ts'
 import type { EngineKind, EquipmentClass } from '#shared/trade/equipment.ts'
-import { depthFirst, toDigraph, type Digraph } from './digraph.ts'
+import { depthFirst, type Digraph } from './digraph.ts'
+import { nodeMap } from './node-map.ts'
 import type { Access, Cause, Caution, ChartDocument, ChartEdge, ChartNode, DecisionNode, NodeOf, ServiceItem, SpecKey } from './document.ts'
 
 /**
@@ -26,16 +27,16 @@ export type ChartIndex = {
 
 /** Looks everything of a chart up by id, once; near-linear in its size. */
 export function indexChart(chart: ChartDocument): ChartIndex {
-  const nodes = byId(chart.nodes)
   const order = new Map<NodeId, number>()
-  chart.nodes.forEach((node, index) => order.has(node.id) || order.set(node.id, index))
+  for (const [place, node] of chart.nodes.entries()) if (!order.has(node.id)) order.set(node.id, place)
+  const nodes = nodeMap(order, chart.nodes)
   return {
     chart,
     id: chart.id,
     nodes,
     order,
-    edgesFrom: inOutcomeOrder(groupEdges(chart.edges, 'from'), nodes),
-    edgesInto: groupEdges(chart.edges, 'to'),
+    edgesFrom: edgesBy(chart, order, 'from'),
+    edgesInto: edgesBy(chart, order, 'to'),
     starts: chart.nodes.filter((node) => node.kind === 'start'),
     causes: byId(chart.library.causes ?? []),
     access: byId(chart.access ?? []),
@@ -51,28 +52,39 @@ function byId<T extends { readonly id: string }>(list: readonly T[]): ReadonlyMa
   return map
 }
 
-function groupEdges(edges: readonly ChartEdge[], end: 'from' | 'to'): Map<NodeId, ChartEdge[]> {
-  const groups = new Map<NodeId, ChartEdge[]>()
-  for (const edge of edges) {
-    const group = groups.get(edge[end])
-    if (group === undefined) groups.set(edge[end], [edge])
-    else group.push(edge)
+function edgesBy(chart: ChartDocument, order: ReadonlyMap<NodeId, number>, end: 'from' | 'to'): ReadonlyMap<NodeId, readonly ChartEdge[]> {
+  const lists = new Array<ChartEdge[] | undefined>(chart.nodes.length).fill(undefined)
+  const rest = new Map<NodeId, ChartEdge[]>()
+  for (const edge of chart.edges) {
+    const number = order.get(edge[end])
+    const list = number === undefined ? rest.get(edge[end]) : lists[number]
+    if (list !== undefined) list.push(edge)
+    else if (number === undefined) rest.set(edge[end], [edge])
+    else lists[number] = [edge]
   }
-  return groups
+  if (end === 'from') lists.forEach((list, number) => list !== undefined && list.length > 1 && sortByOutcome(list, chart.nodes[number]))
+  return nodeMap(order, lists, rest)
 }
 
-function inOutcomeOrder(groups: Map<NodeId, ChartEdge[]>, nodes: ReadonlyMap<NodeId, ChartNode>): ReadonlyMap<NodeId, readonly ChartEdge[]> {
-  for (const [id, edges] of groups) {
-    const node = nodes.get(id)
-    if (node === undefined || !isDecision(node) || edges.length < 2) continue
-    const rank = new Map(node.outcomes.map((outcome, index) => [outcome.id, index]))
-    const rankOf = (edge: ChartEdge) => (edge.outcome === undefined ? -1 : (rank.get(edge.outcome) ?? node.outcomes.length))
-    groups.set(
-      id,
-      edges.toSorted((left, right) => rankOf(left) - rankOf(right)),
-    )
+/** Most charts list edges in this order already, so that is looked at first. */
+function sortByOutcome(edges: ChartEdge[], node: ChartNode | undefined): void {
+  if (node === undefined || !isDecision(node)) return
+  let highest = -1
+  for (const edge of edges) {
+    const rank = rankOf(edge, node)
+    if (rank < highest) {
+      edges.sort((left, right) => rankOf(left, node) - rankOf(right, node))
+      return
+    }
+    highest = rank
   }
-  return groups
+}
+
+/** Where an edge's outcome stands; an edge without one comes first, one with an outcome that the node lacks last. */
+function rankOf({ outcome }: ChartEdge, { outcomes }: DecisionNode): number {
+  if (outcome === undefined) return -1
+  for (let place = 0; place < outcomes.length; place += 1) if (outcomes[place]?.id === outcome) return place
+  return outcomes.length
 }
 
 /** Whether a node has outcomes: a check, a reading or a proof. */
@@ -98,18 +110,22 @@ export function follow(index: ChartIndex, from: NodeId, outcome?: OutcomeId): No
 
 /**
  * The name of the physical check that a node asks: its own `checkId`, else that of the node it is `sameAs`, else
- * `chart/node` of the node at the end of the `sameAs` chain. Nodes with one name, in any chart, are one check.
+ * `chart/node` of the node at the end of the `sameAs` chain (of a ring, the node whose id comes first). Nodes with one
+ * name, in any chart, are one check. `known` keeps names between calls for one chart, so that long chains cost once.
  */
-export function physicalCheck(index: ChartIndex, node: DecisionNode): CheckId | `${ChartId}/${NodeId}` {
-  const seen = new Set<NodeId>()
-  let at = node
-  for (;;) {
-    if (at.checkId !== undefined) return at.checkId
-    seen.add(at.id)
-    const next = at.sameAs === undefined || seen.has(at.sameAs) ? undefined : index.nodes.get(at.sameAs)
-    if (next === undefined || !isDecision(next)) return `${index.id}/${at.id}`
-    at = next
+export function physicalCheck(index: ChartIndex, node: DecisionNode, known: Map<NodeId, string> = new Map()): string {
+  const path = new Set<NodeId>()
+  let name: string | undefined
+  for (let at = node; name === undefined;) {
+    path.add(at.id)
+    const next = at.checkId !== undefined || at.sameAs === undefined ? undefined : index.nodes.get(at.sameAs)
+    if (known.has(at.id) || at.checkId !== undefined) name = known.get(at.id) ?? at.checkId
+    else if (next === undefined || !isDecision(next)) name = `${index.id}/${at.id}`
+    else if (path.has(next.id)) name = `${index.id}/${[...path].slice([...path].indexOf(next.id)).sort()[0] ?? at.id}`
+    else at = next
   }
+  for (const id of path) known.set(id, name)
+  return name
 }
 
 /**
@@ -132,7 +148,10 @@ export function entryOf(index: ChartIndex, at: NodeId | undefined): NodeId | und
   return index.starts.length === 1 ? index.starts[0]?.id : undefined
 }
 
-/** A chart as numbers for the graph algorithms: node `i` is the first node of `chart.nodes` with its id, edges are those of `successors`. */
+/**
+ * A chart as numbers for the graph algorithms: node `i` is `chart.nodes[i]`, edges are those of `successors`. A node whose
+ * id was there before has a number of its own and no edge.
+ */
 export type ChartGraph = {
   readonly graph: Digraph
   readonly ids: readonly NodeId[]
@@ -140,15 +159,21 @@ export type ChartGraph = {
   readonly starts: readonly number[]
 }
 
-/** Numbers a chart's nodes and edges. Ids that appear twice count once. */
+/** Numbers a chart's nodes and edges. */
 export function toChartGraph(index: ChartIndex): ChartGraph {
-  const ids = [...index.nodes.keys()]
-  const numberOf = new Map(ids.map((id, number) => [id, number]))
-  const edges: (readonly [number, number])[] = []
-  for (const [id, node] of index.nodes) {
-    for (const target of successors(index, node)) edges.push([numberOf.get(id) ?? 0, numberOf.get(target) ?? 0])
+  const { nodes } = index.chart
+  const rows = new Int32Array(nodes.length + 1)
+  const targets: number[] = []
+  nodes.forEach((node, number) => {
+    if (index.order.get(node.id) === number) for (const target of successors(index, node)) targets.push(index.order.get(target) ?? 0)
+    rows[number + 1] = targets.length
+  })
+  return {
+    graph: { size: nodes.length, rows, targets: Int32Array.from(targets) },
+    ids: nodes.map((node) => node.id),
+    numberOf: index.order,
+    starts: index.starts.map((start) => index.order.get(start.id) ?? 0),
   }
-  return { graph: toDigraph(ids.length, edges), ids, numberOf, starts: index.starts.map((start) => numberOf.get(start.id) ?? 0) }
 }
 
 /**
@@ -156,14 +181,14 @@ export function toChartGraph(index: ChartIndex): ChartGraph {
  * or n9b, gives it; the others take, in depth-first order from the starts, the whole numbers that are still free.
  */
 export function chartNumbers(index: ChartIndex): ReadonlyMap<NodeId, string> {
-  const { graph, ids, starts } = toChartGraph(index)
+  const { graph, ids, numberOf, starts } = toChartGraph(index)
   const numbers = new Map<NodeId, string>()
   const taken = new Set<string>()
   const unnamed: NodeId[] = []
   const everyNode = Array.from({ length: ids.length }, (_, number) => number)
   for (const number of depthFirst(graph, [...starts, ...everyNode]).preorder) {
     const id = ids[number]
-    if (id === undefined || index.nodes.get(id)?.kind === 'start') continue
+    if (id === undefined || numberOf.get(id) !== number || index.nodes.get(id)?.kind === 'start') continue
     const named = /^n0*(\d{1,4}[a-z]?)$/.exec(id)?.[1]
     if (named === undefined || taken.has(named)) unnamed.push(id)
     else {

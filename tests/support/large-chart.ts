@@ -1,5 +1,6 @@
 import type { ChartDocument } from '#shared/chart/document.ts'
-import { ask, buildChart, cause, check, proof, reading, reproducing, start, step } from './chart-builder.ts'
+import { parseChartText } from '#shared/chart/parse.ts'
+import { ask, cause, check, proof, reading, reproducing, sketchJson, start, step, type ChartSketch } from './chart-builder.ts'
 
 /**
  * A sound chart of about `size` nodes, for measuring: a long line of checks and readings, each with a step, a proof and a
@@ -26,5 +27,12 @@ export function largeChart(size: number): ChartDocument {
     edges.push(`${id}.${isReading ? 'in' : 'good'} > ${next}`, `${id}.${isReading ? 'low' : 'bad'} > w${row}`)
     edges.push(`w${row} > p${row}`, `p${row}.gone > c${row}`, `p${row}.still > ${again}`)
   }
-  return buildChart({ id: 'large', nodes, edges, more: { safetyParts: ['screen'] } })
+  return fromText({ id: 'large', nodes, edges, more: { safetyParts: ['screen'] } })
+}
+
+/** As a stored chart comes: read from its text. */
+function fromText(sketch: ChartSketch): ChartDocument {
+  const parsed = parseChartText(JSON.stringify(sketchJson(sketch)))
+  if (!parsed.ok) throw new Error(parsed.error.detail)
+  return parsed.value
 }

@@ -23,6 +23,8 @@ export const accessRings: Rule = function* ({ index }) {
 /** What a node needs can be open together, and is not what it wants closed. */
 export const needsClash: Rule = function* ({ index }) {
   for (const node of index.nodes.values()) {
+    const mayClash = (node.needs?.length ?? 0) > 1 || node.needsOneOf !== undefined || node.closed !== undefined
+    if (!mayClash) continue
     const closed = new Set(node.closed)
     const own = node.needs ?? []
     const ways = node.needsOneOf !== undefined && node.needsOneOf.length > 0 ? node.needsOneOf.map((way) => [...own, ...way]) : [own]
@@ -58,7 +60,10 @@ function excludeEachOther(index: ChartIndex, left: AccessId, right: AccessId): b
 /** Every access serves some node, if only through another access. */
 export const unusedAccess: Rule = function* ({ index }) {
   const used = new Set<AccessId>()
-  for (const node of index.nodes.values()) for (const id of [...(node.needs ?? []), ...(node.needsOneOf ?? []).flat()]) used.add(id)
+  for (const node of index.nodes.values()) {
+    for (const id of node.needs ?? []) used.add(id)
+    for (const id of node.needsOneOf?.flat() ?? []) used.add(id)
+  }
   for (const id of used) for (const needed of index.access.get(id)?.needs ?? []) used.add(needed)
   for (const access of index.access.values())
     if (!used.has(access.id)) yield remark('unused-access', {}, `No node needs access "${access.title}". Take it out, or name it where it is needed.`)

@@ -2,7 +2,7 @@ import type { ChartId, NodeId } from '#shared/lib/ids.ts'
 import { chartsNamedBy, reachOf, resolveJump, type ChartLookup, type ChartSet } from '../chart-set.ts'
 import { reachableFrom } from '../digraph.ts'
 import type { ChartDocument, ChartNode, Outcome } from '../document.ts'
-import { toChartGraph, type ChartGraph, type ChartIndex } from '../graph.ts'
+import { entryOf, toChartGraph, type ChartGraph, type ChartIndex } from '../graph.ts'
 import type { Remark } from './remark.ts'
 
 /** What every rule reads: the chart, the charts joined to it, and the graph facts, each computed once. */
@@ -16,8 +16,10 @@ export type LintContext = {
   readonly graph: ChartGraph
   /** Whether a route leads to a node: from the chart's own starts, or by a jump of a joined chart. */
   readonly isReached: (id: NodeId) => boolean
-  /** Nodes to which a walk passes from a node that is not for its machine. */
+  /** For a node, those from which the walk of another machine is passed on to it (`onlyFor.otherwise`). */
   readonly passedFrom: ReadonlyMap<NodeId, readonly NodeId[]>
+  /** For a node, the fixed jumps of its own chart that arrive at it. */
+  readonly jumpsInto: ReadonlyMap<NodeId, readonly NodeId[]>
 }
 
 /** One rule of the chart check, or a close family of them. */
@@ -29,11 +31,11 @@ export function lintContext(index: ChartIndex, others: ChartLookup): LintContext
   const graph = toChartGraph(index)
   const reached = reachableFrom(graph.graph, [...graph.starts, ...enteredFromElsewhere(index, charts, graph)])
   const passedFrom = new Map<NodeId, NodeId[]>()
+  const jumpsInto = new Map<NodeId, NodeId[]>()
   for (const node of index.nodes.values()) {
-    if (node.onlyFor?.otherwise === undefined) continue
-    const sources = passedFrom.get(node.onlyFor.otherwise)
-    if (sources === undefined) passedFrom.set(node.onlyFor.otherwise, [node.id])
-    else sources.push(node.id)
+    if (node.onlyFor?.otherwise !== undefined) list(passedFrom, node.onlyFor.otherwise, node.id)
+    const arrival = node.kind === 'jump' && node.chart === index.id ? entryOf(index, node.at) : undefined
+    if (arrival !== undefined) list(jumpsInto, arrival, node.id)
   }
   return {
     index,
@@ -43,7 +45,14 @@ export function lintContext(index: ChartIndex, others: ChartLookup): LintContext
     graph,
     isReached: (id) => reached[graph.numberOf.get(id) ?? -1] === 1,
     passedFrom,
+    jumpsInto,
   }
+}
+
+function list(lists: Map<NodeId, NodeId[]>, key: NodeId, id: NodeId): void {
+  const known = lists.get(key)
+  if (known === undefined) lists.set(key, [id])
+  else known.push(id)
 }
 
 function enteredFromElsewhere(index: ChartIndex, charts: ChartSet, graph: ChartGraph): number[] {
@@ -74,12 +83,9 @@ export function outcomeName(outcome: Outcome): string {
 }
 
 /** Entries whose key was seen before, in order. */
-export function repeated<T>(entries: readonly T[], keyOf: (entry: T) => string): T[] {
+export function repeated<T>(entries: readonly T[], keyOf: (entry: T) => string): readonly T[] {
+  if (entries.length < 2) return []
+  if (entries.length === 2) return entries[0] !== undefined && entries[1] !== undefined && keyOf(entries[0]) === keyOf(entries[1]) ? [entries[1]] : []
   const seen = new Set<string>()
-  return entries.filter((entry) => {
-    const key = keyOf(entry)
-    if (seen.has(key)) return true
-    seen.add(key)
-    return false
-  })
+  return entries.filter((entry) => seen.size === seen.add(keyOf(entry)).size)
 }

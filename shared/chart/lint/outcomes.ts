@@ -1,3 +1,4 @@
+import type { NodeId } from '#shared/lib/ids.ts'
 import type { DecisionNode } from '../document.ts'
 import { isDecision, physicalCheck, type ChartIndex } from '../graph.ts'
 import { nameOf, outcomeName, repeated, type Rule } from './context.ts'
@@ -32,9 +33,7 @@ export const outcomes: Rule = function* ({ index }) {
 export const sameCheck: Rule = function* ({ index, charts }) {
   const firstOf = new Map<string, { readonly owner: ChartIndex; readonly node: DecisionNode; readonly key: string }>()
   for (const owner of [index, ...[...charts.values()].filter((other) => other !== index)]) {
-    for (const node of owner.nodes.values()) {
-      if (!isDecision(node)) continue
-      const check = physicalCheck(owner, node)
+    for (const { node, check } of sharedChecks(owner)) {
       const key = [...new Set(node.outcomes.map((outcome) => outcome.id))].sort().join(' ')
       const first = firstOf.get(check)
       if (first === undefined) firstOf.set(check, { owner, node, key })
@@ -48,4 +47,16 @@ export const sameCheck: Rule = function* ({ index, charts }) {
       }
     }
   }
+}
+
+/** The nodes of a chart whose check another node may ask too: those with a `checkId`, a `sameAs`, or one that a `sameAs` names. */
+function sharedChecks(owner: ChartIndex): { readonly node: DecisionNode; readonly check: string }[] {
+  const named = new Set<NodeId>()
+  for (const node of owner.nodes.values()) if (isDecision(node) && node.sameAs !== undefined) named.add(node.id).add(node.sameAs)
+  const known = new Map<NodeId, string>()
+  const shared: { node: DecisionNode; check: string }[] = []
+  for (const node of owner.nodes.values()) {
+    if (isDecision(node) && (node.checkId !== undefined || named.has(node.id))) shared.push({ node, check: physicalCheck(owner, node, known) })
+  }
+  return shared
 }

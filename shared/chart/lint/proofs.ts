@@ -2,7 +2,7 @@ import type { NodeId } from '#shared/lib/ids.ts'
 import type { ChartEdge, ChartNode, NodeOf, ProofNode } from '../document.ts'
 import { isDecision } from '../graph.ts'
 import { nameOf, type LintContext, type Rule } from './context.ts'
-import { remark, type Remark } from './remark.ts'
+import { edgeAt, remark, type Remark } from './remark.ts'
 
 /** A proof names its suspect, has one outcome that confirms it, and compares with a check or a reading. */
 export const proofs: Rule = function* ({ index }) {
@@ -45,7 +45,16 @@ function* comparison(index: LintContext['index'], node: ProofNode): Iterable<Rem
 /** Nothing is called a cause before a proof has confirmed it; looked at over the steps in between. A printed table has no proofs. */
 export const causesProven: Rule = function* (context) {
   if (context.chart.basis === 'printed-table') return
-  for (const node of context.index.nodes.values()) if (node.kind === 'cause') yield* unproven(context, node)
+  for (const node of context.index.nodes.values()) if (node.kind === 'cause' && !isProven(context, node)) yield* unproven(context, node)
+}
+
+/** The usual case at a glance: nothing but its own proofs leads to the cause. */
+function isProven({ index, passedFrom }: LintContext, cause: NodeOf<'cause'>): boolean {
+  if (passedFrom.has(cause.id)) return false
+  return (index.edgesInto.get(cause.id) ?? []).every((edge) => {
+    const from = index.nodes.get(edge.from)
+    return from !== undefined && confirms(from, edge, cause)
+  })
 }
 
 function* unproven({ index, isReached, passedFrom }: LintContext, cause: NodeOf<'cause'>): Iterable<Remark> {
@@ -69,7 +78,7 @@ function confirms(from: ChartNode, edge: ChartEdge, cause: NodeOf<'cause'>): boo
 }
 
 function withoutProof(index: LintContext['index'], cause: NodeOf<'cause'>, from: ChartNode, edge: ChartEdge | undefined): Remark {
-  const at = { node: cause.id, ...(edge === undefined ? {} : { edge: { from: edge.from, ...(edge.outcome === undefined ? {} : { outcome: edge.outcome }) } }) }
+  const at = { node: cause.id, ...(edge === undefined ? {} : { edge: edgeAt(edge) }) }
   const by = edge === undefined ? `${nameOf(index, from)} on another machine` : nameOf(index, from)
   return remark(
     'cause-without-proof',

@@ -1,8 +1,14 @@
 import type { NodeId, OutcomeId } from '#shared/lib/ids.ts'
+import type { ChartEdge } from '../document.ts'
 import { remarkCodes, severities, type RemarkCode, type Severity } from './codes.ts'
 
 /** The edge that a remark is about; without an outcome it is the single edge of a node that has none. */
 export type RemarkEdge = { readonly from: NodeId; readonly outcome?: OutcomeId }
+
+/** Names an edge for a remark. */
+export function edgeAt({ from, outcome }: ChartEdge): RemarkEdge {
+  return outcome === undefined ? { from } : { from, outcome }
+}
 
 /** What the chart check has to say. `node` and `edge` are where to look; a remark without either is about the chart as a whole. */
 export type Remark = {

@@ -1,8 +1,9 @@
+import type { OutcomeId } from '#shared/lib/ids.ts'
 import { reachableFrom, reverse, strongComponents, successorsOf } from '../digraph.ts'
-import type { ChartNode } from '../document.ts'
-import { isDecision, isTerminator } from '../graph.ts'
+import type { ChartEdge, ChartNode, Outcome } from '../document.ts'
+import { isDecision, isTerminator, type ChartIndex } from '../graph.ts'
 import { nameOf, nameOfId, outcomeName, repeated, type LintContext, type Rule } from './context.ts'
-import { remark, type Remark } from './remark.ts'
+import { edgeAt, remark, type Remark } from './remark.ts'
 
 /** Every node can be reached from a start. */
 export const reachability: Rule = function* ({ index, isReached }) {
@@ -17,67 +18,85 @@ export const reachability: Rule = function* ({ index, isReached }) {
 }
 
 /** Every outcome has one edge, and every edge has two ends. */
-export const edges: Rule = function* ({ index, chart }) {
-  for (const edge of chart.edges) {
-    const at = { edge: { from: edge.from, ...(edge.outcome === undefined ? {} : { outcome: edge.outcome }) } }
-    const from = index.nodes.get(edge.from)
-    if (from === undefined) {
-      yield remark('edge-from-nothing', at, `An edge begins at node ${edge.from}, which does not exist. Take the edge out, or add the node.`)
-      continue
+export const edges: Rule = function* ({ index }) {
+  for (const [id, leaving] of index.edgesFrom) {
+    const from = index.nodes.get(id)
+    for (const edge of leaving) if (from === undefined || !index.order.has(edge.to) || !isFitting(from, edge)) yield* edgeEnds(index, from, edge)
+    if (from !== undefined && leaving.length > 1) yield* secondEdges(index, from, leaving)
+  }
+  for (const node of index.nodes.values()) {
+    const leaving = index.edgesFrom.get(node.id) ?? []
+    if (isDecision(node)) {
+      for (const outcome of node.outcomes) if (!leads(leaving, outcome.id)) yield withoutEdge(index, node, outcome)
+    } else if ((node.kind === 'start' || node.kind === 'step') && !leads(leaving, undefined)) {
+      yield remark('node-without-edge', { node: node.id, edge: { from: node.id } }, `Nothing follows ${nameOf(index, node)}. Lead it to the next node.`)
     }
-    const here = { node: edge.from, ...at }
-    if (!index.nodes.has(edge.to))
-      yield remark('edge-to-nothing', here, `An edge of ${nameOf(index, from)} leads to node ${edge.to}, which does not exist. Lead it to another node.`)
-    if (isEnd(from))
-      yield remark('edge-out-of-end', here, `${nameOf(index, from)} ends the walk, yet an edge leads on from it. Nobody will walk it: take it out.`)
-    else if (isDecision(from) && edge.outcome === undefined)
-      yield remark('edge-from-nothing', here, `An edge leads on from ${nameOf(index, from)} without saying from which outcome. Give it one.`)
-    else if (edge.outcome !== undefined && !(isDecision(from) && from.outcomes.some((outcome) => outcome.id === edge.outcome)))
-      yield remark(
-        'edge-from-nothing',
-        here,
-        `An edge leads on from outcome ${edge.outcome} of ${nameOf(index, from)}, which has no such outcome. Take the edge out, or add the outcome.`,
-      )
   }
-  for (const edge of repeated(chart.edges, ({ from, outcome }) => `${from} ${outcome ?? ''}`)) {
-    const where = edge.outcome === undefined ? nameOfId(index, edge.from) : `outcome ${edge.outcome} of ${nameOfId(index, edge.from)}`
+}
+
+function leads(leaving: readonly ChartEdge[], outcome: OutcomeId | undefined): boolean {
+  for (const edge of leaving) if (edge.outcome === outcome) return true
+  return false
+}
+
+function withoutEdge(index: ChartIndex, node: ChartNode, outcome: Outcome): Remark {
+  const words = `Outcome ${outcomeName(outcome)} of ${nameOf(index, node)} leads nowhere. Lead it to the next node.`
+  return remark('outcome-without-edge', { node: node.id, edge: { from: node.id, outcome: outcome.id } }, words)
+}
+
+/** Whether an edge begins where its node lets one begin; an end lets none. */
+function isFitting(from: ChartNode, edge: ChartEdge): boolean {
+  if (isDecision(from)) return edge.outcome !== undefined && from.outcomes.some((outcome) => outcome.id === edge.outcome)
+  return edge.outcome === undefined && !isEnd(from)
+}
+
+function* edgeEnds(index: ChartIndex, from: ChartNode | undefined, edge: ChartEdge): Iterable<Remark> {
+  if (from === undefined) {
+    yield remark('edge-from-nothing', { edge: edgeAt(edge) }, `An edge begins at node ${edge.from}, which does not exist. Take the edge out, or add the node.`)
+    return
+  }
+  if (!index.nodes.has(edge.to))
     yield remark(
-      'second-edge',
-      { node: edge.from, edge: { from: edge.from, ...(edge.outcome === undefined ? {} : { outcome: edge.outcome }) } },
-      `Two edges lead on from ${where}. A walk can take one only: take the other out.`,
+      'edge-to-nothing',
+      { node: from.id, edge: edgeAt(edge) },
+      `An edge of ${nameOf(index, from)} leads to node ${edge.to}, which does not exist. Lead it to another node.`,
     )
+  if (isEnd(from)) {
+    yield remark(
+      'edge-out-of-end',
+      { node: from.id, edge: edgeAt(edge) },
+      `${nameOf(index, from)} ends the walk, yet an edge leads on from it. Nobody will walk it: take it out.`,
+    )
+    return
   }
-  for (const node of index.nodes.values()) yield* waysOn(index, node)
+  if (isFitting(from, edge)) return
+  const message =
+    edge.outcome === undefined
+      ? `An edge leads on from ${nameOf(index, from)} without saying from which outcome. Give it one.`
+      : `An edge leads on from outcome ${edge.outcome} of ${nameOf(index, from)}, which has no such outcome. Take the edge out, or add the outcome.`
+  yield remark('edge-from-nothing', { node: from.id, edge: edgeAt(edge) }, message)
+}
+
+function* secondEdges(index: ChartIndex, from: ChartNode, leaving: readonly ChartEdge[]): Iterable<Remark> {
+  for (const edge of repeated(leaving, ({ outcome }) => outcome ?? '')) {
+    const where = edge.outcome === undefined ? nameOf(index, from) : `outcome ${edge.outcome} of ${nameOf(index, from)}`
+    yield remark('second-edge', { node: from.id, edge: edgeAt(edge) }, `Two edges lead on from ${where}. A walk can take one only: take the other out.`)
+  }
 }
 
 function isEnd(node: ChartNode): boolean {
   return isTerminator(node) && node.kind !== 'jump'
 }
 
-function* waysOn(index: LintContext['index'], node: ChartNode): Iterable<Remark> {
-  const leading = new Set((index.edgesFrom.get(node.id) ?? []).map((edge) => edge.outcome))
-  if (isDecision(node)) {
-    for (const outcome of node.outcomes) {
-      if (leading.has(outcome.id)) continue
-      yield remark(
-        'outcome-without-edge',
-        { node: node.id, edge: { from: node.id, outcome: outcome.id } },
-        `Outcome ${outcomeName(outcome)} of ${nameOf(index, node)} leads nowhere. Lead it to the next node.`,
-      )
-    }
-  } else if ((node.kind === 'start' || node.kind === 'step') && !leading.has(undefined)) {
-    yield remark('node-without-edge', { node: node.id, edge: { from: node.id } }, `Nothing follows ${nameOf(index, node)}. Lead it to the next node.`)
-  }
-}
-
 /** From every node that a walk can reach, an end can be reached. One remark for each knot of nodes that has no way out. */
 export const ends: Rule = function* (context) {
   const { index, graph, isReached } = context
-  const exits = graph.ids.flatMap((id, number) => {
-    const node = index.nodes.get(id)
-    return node !== undefined && leadsOut(context, node) ? [number] : []
+  const exits: number[] = []
+  index.chart.nodes.forEach((node, number) => {
+    if (leadsOut(context, node)) exits.push(number)
   })
   const escapes = reachableFrom(reverse(graph.graph), exits)
+  if (!escapes.includes(0)) return
   const { of, count } = strongComponents(graph.graph)
   const isTrap = new Uint8Array(count).fill(1)
   graph.ids.forEach((_, number) => {
@@ -87,7 +106,7 @@ export const ends: Rule = function* (context) {
   const told = new Set<number>()
   for (const [number, id] of graph.ids.entries()) {
     const component = of[number] ?? 0
-    if (isTrap[component] !== 1 || told.has(component) || !isReached(id)) continue
+    if (isTrap[component] !== 1 || told.has(component) || graph.numberOf.get(id) !== number || !isReached(id)) continue
     told.add(component)
     yield remark(
       'no-end-reachable',

@@ -1,5 +1,4 @@
 import type { NodeId } from '#shared/lib/ids.ts'
-import { successorsOf, toDigraph } from '../digraph.ts'
 import type { ChartNode, DecisionNode, NodeOf, Outcome } from '../document.ts'
 import { follow, isDecision, isTerminator, successors, type ChartIndex } from '../graph.ts'
 import { nameOf, nameOfId, outcomeName, type LintContext, type Rule } from './context.ts'
@@ -48,45 +47,49 @@ function reproduces(node: ChartNode): node is Exclude<DecisionNode, NodeOf<'proo
  * reproducing check only what was reproduced counts: what it does instead may be another start's symptom. Carried
  * backwards from the checks, so that many starts cost no more than one.
  */
-function firstReproducing({ index, graph }: LintContext): ReadonlyMap<NodeId, readonly NodeId[]> {
-  const edges = graph.ids.flatMap((id, from) =>
-    leadingOn(index, id).flatMap((to) => (graph.numberOf.has(to) ? [[graph.numberOf.get(to) ?? 0, from] as const] : [])),
-  )
-  const backwards = toDigraph(graph.ids.length, edges)
+function firstReproducing(context: LintContext): ReadonlyMap<NodeId, readonly NodeId[]> {
   const found = new Map<NodeId, NodeId[]>()
-  const stack = [...index.nodes.values()].filter(reproduces).map((node) => ({ at: node.id, check: node.id }))
+  const stack = [...context.index.nodes.values()].filter(reproduces).map((node) => ({ at: node.id, check: node.id }))
   for (let next = stack.pop(); next !== undefined; next = stack.pop()) {
     const { at, check } = next
     const known = found.get(at) ?? []
     if (known.length === 2 || known.includes(check)) continue
     found.set(at, [...known, check])
-    for (const number of successorsOf(backwards, graph.numberOf.get(at) ?? 0)) stack.push({ at: graph.ids[number] ?? at, check })
+    for (const id of leadingInto(context, at)) stack.push({ at: id, check })
   }
   return found
 }
 
-function leadingOn(index: ChartIndex, id: NodeId): readonly NodeId[] {
-  const node = index.nodes.get(id)
-  if (node === undefined || node.kind === 'proof' || node.kind === 'cause') return []
-  if (!reproduces(node)) return successors(index, node)
-  return node.outcomes.filter((outcome) => outcome.reproduced === true).flatMap((outcome) => follow(index, id, outcome.id) ?? [])
+/** The nodes from which a walk that is still reproducing comes to a node. */
+function leadingInto({ index, passedFrom, jumpsInto }: LintContext, to: NodeId): NodeId[] {
+  const byEdge = (index.edgesInto.get(to) ?? []).filter(({ from, outcome }) => {
+    const node = index.nodes.get(from)
+    if (node === undefined || node.kind === 'proof' || node.kind === 'cause') return false
+    return !reproduces(node) || node.outcomes.some((other) => other.id === outcome && other.reproduced === true)
+  })
+  return [...byEdge.map(({ from }) => from), ...(passedFrom.get(to) ?? []), ...(jumpsInto.get(to) ?? [])]
 }
 
 /** Where every answer is as it should be, the chart has found nothing: that route ends with the lead, on hold or back at the caller, never in a cause. */
-export const allGood: Rule = function* (context) {
-  const { index } = context
-  const seen = new Set<NodeId>(index.starts.map((start) => start.id))
-  for (const id of seen) {
+export const allGood: Rule = function* ({ index, graph }) {
+  const seen = new Uint8Array(graph.ids.length)
+  const stack: ChartNode[] = []
+  const enter = (id: NodeId): ChartNode | undefined => {
     const node = index.nodes.get(id)
-    if (node === undefined || isTerminator(node)) continue
-    for (const { outcome, to } of goodWays(context, node)) {
-      seen.add(to)
-      const target = index.nodes.get(to)
+    const number = graph.numberOf.get(id) ?? 0
+    if (node !== undefined && seen[number] === 0 && !isTerminator(node)) stack.push(node)
+    seen[number] = 1
+    return node
+  }
+  for (const start of index.starts) enter(start.id)
+  for (let node = stack.pop(); node !== undefined; node = stack.pop()) {
+    for (const { outcome, to } of goodWays(index, node)) {
+      const target = enter(to)
       if (target?.kind !== 'cause') continue
       const found = outcome === undefined ? '' : `, ${outcomeName(outcome)} included`
       yield remark(
         'all-good-route',
-        { node: to, edge: { from: id, ...(outcome === undefined ? {} : { outcome: outcome.id }) } },
+        { node: to, edge: { from: node.id, ...(outcome === undefined ? {} : { outcome: outcome.id }) } },
         `Everything is as it should be${found}, and yet the walk ends in cause ${nameOf(index, target)}. Lead it to the lead, on hold or back instead.`,
       )
     }
@@ -94,7 +97,7 @@ export const allGood: Rule = function* (context) {
 }
 
 /** The ways on while nothing is wrong but the symptom: reproduced, normal or serviceable, not confirmed; past nodes for other machines. */
-function goodWays({ index }: LintContext, node: ChartNode): readonly { readonly outcome?: Outcome; readonly to: NodeId }[] {
+function goodWays(index: ChartIndex, node: ChartNode): readonly { readonly outcome?: Outcome; readonly to: NodeId }[] {
   if (!isDecision(node)) return successors(index, node).map((to) => ({ to }))
   const good = node.outcomes.filter((outcome) => {
     if (node.kind === 'proof') return outcome.confirms !== true
