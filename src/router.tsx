@@ -59,7 +59,11 @@ export function createRoutes(client: QueryClient): RouteObject[] {
           children: [
             { index: true, lazy: screenFor('junior', () => import('#src/routes/bench.tsx')) },
             { path: 'start/:chartId', lazy: screenFor('junior', () => import('#src/routes/start.tsx')) },
+            { path: 'walks', lazy: screenFor('junior', () => import('#src/routes/walks.tsx')) },
             { path: 'walks/:walkId', lazy: screenFor('junior', () => import('#src/routes/walk.tsx')) },
+            { path: 'walks/:walkId/review', lazy: screenFor('junior', () => import('#src/routes/walk-review.tsx')) },
+            { path: 'charts', lazy: screenFor('junior', () => import('#src/routes/charts.tsx')) },
+            { path: 'charts/:chartId', lazy: screenFor('junior', () => import('#src/routes/chart.tsx')) },
             { path: 'account', lazy: screenFor('junior', () => import('#src/routes/account.tsx')) },
             { path: 'people', lazy: screenFor('owner', () => import('#src/routes/people.tsx')) },
           ],

@@ -239,7 +239,7 @@ export class WalkLog<State, Rules extends WalkRules<State>> {
   /** No answer: asks again later, each time later. A refusal to read the batch: waits for a person. */
   #wait(error: unknown, again: () => Promise<void>): void {
     const count = this.#unsent.length
-    const why = error instanceof ProblemError ? error.message : 'this page stumbled over a fault of its own'
+    const why = toWhy(error)
     if (!canComeRight(error)) {
       this.#isStuck = true
       this.#set({ saved: { kind: 'stuck', count, why } })
@@ -261,6 +261,12 @@ function toSetAside(events: readonly WalkEvent[], results: BatchResult['results'
     if (result === undefined || result.status === 'appended' || result.status === 'duplicate') return []
     return [{ event, status: result.status === 'gap' ? 'fork' : result.status, code: result.code ?? result.status }]
   })
+}
+
+function toWhy(error: unknown): string {
+  if (!(error instanceof ProblemError)) return 'this page stumbled over a fault of its own.'
+  if (error.status === 0) return 'the server does not answer.'
+  return error.status >= 500 ? 'the server stumbled.' : error.message
 }
 
 /** Silence, a stumbling server, too many tries: these pass. A refusal does not. */

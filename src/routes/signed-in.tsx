@@ -11,6 +11,8 @@ import { toWords } from '#src/lib/problem-words.ts'
 
 const surfaces: readonly (NavItem & { readonly role: Role })[] = [
   { to: paths.bench(), words: 'Bench', role: 'junior' },
+  { to: paths.walks(), words: 'Walks', role: 'junior' },
+  { to: paths.charts(), words: 'Charts', role: 'junior' },
   { to: paths.people(), words: 'People', role: 'owner' },
 ]
 

@@ -110,7 +110,7 @@ function StartForm({ own, charts, models, startId, person }: StartFormProps) {
             <TextField label="Serial number" value={serial} onChange={(event) => setSerial(event.target.value)} maxLength={100} autoComplete="off" autoCapitalize="characters" className="figures" />
           </div>
         </RuledSection>
-        <div className="mt-auto grid gap-4">
+        <div className="mt-auto grid gap-3 max-md:sticky max-md:bottom-0 max-md:-mx-(--page-edge) max-md:border-t max-md:border-rule max-md:bg-paper max-md:px-(--page-edge) max-md:py-3">
           {problem !== null && (
             <Notice state="bad" title="Not started" role="alert">
               {problem}

@@ -2,7 +2,7 @@ import { useRef } from 'react'
 import { Link, useNavigate } from 'react-router-dom'
 
 import type { Symptom } from '#shared/api/charts.ts'
-import { equipmentClassWords } from '#shared/trade/equipment.ts'
+import { equipmentClasses, equipmentClassWords } from '#shared/trade/equipment.ts'
 import { Balloon } from '#src/components/knots/balloon.tsx'
 import { paths } from '#src/lib/paths.ts'
 import { useShortcut } from '#src/lib/shortcuts.ts'
@@ -38,8 +38,12 @@ function SymptomLink({ symptom, numeral, isSearch }: { readonly symptom: Symptom
   )
 }
 
+/** More machines than this are not all named. */
+const mostNamed = 4
+
 /** What tells this symptom from the others: the words that matched, its chart where that is called otherwise, the machines it is written for. */
 function toHint({ matched, title, chartTitle, classes }: Symptom, isSearch: boolean): string {
-  const machines = classes.length === 0 ? 'any machine' : classes.map((name) => equipmentClassWords[name].toLowerCase()).join(', ')
+  const named = classes.slice(0, classes.length > mostNamed ? mostNamed - 1 : mostNamed).map((name) => equipmentClassWords[name].toLowerCase())
+  const machines = classes.length === 0 || classes.length === equipmentClasses.length ? 'any machine' : [...named, ...(classes.length > mostNamed ? ['others'] : [])].join(', ')
   return [isSearch && matched !== null ? `“${matched}”` : null, title === chartTitle ? null : chartTitle, machines].filter(Boolean).join(' · ')
 }

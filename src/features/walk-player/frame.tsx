@@ -105,10 +105,12 @@ function Chevron() {
 /** The knots of the trail and how many checks are left. A strip of its own, so that the walk is seen to get somewhere. */
 function Strip() {
   const { walk, charts, page } = usePlayer()
+  // On a phone the pad needs the room more.
+  const givesWay = hasPad(page) && isOpen(walk) && backTo(charts, walk) !== null
   const tied = knots(charts, walk)
   const words = toLeftWords(page, isOpen(walk) ? checksLeft(charts, walk) : null)
   return (
-    <div className="border-b border-hair">
+    <div className={`border-b border-hair ${givesWay ? 'max-md:hidden' : ''}`}>
       <div className="corded flex min-h-11 items-center justify-between gap-4">
         <ol aria-label="Trail so far" className="flex min-w-0 items-center justify-end overflow-hidden">
           {tied.map(({ place, kind, number, title, isHere, eventId }, index) => (
@@ -126,11 +128,16 @@ function Strip() {
   )
 }
 
+/** Whether a value is typed on the page. */
+function hasPad(page: WalkPage): boolean {
+  return page.kind === 'reading' || ((page.kind === 'proof' || page.kind === 'before') && page.judging !== null)
+}
+
 /** The youngest knots stay where there is no room for all. */
 function toKnotClass(fromEnd: number): string {
   if (fromEnd > 24) return 'hidden'
   if (fromEnd > 14) return 'hidden lg:block'
-  return fromEnd > 6 ? 'hidden md:block' : 'block'
+  return fromEnd > 5 ? 'hidden md:block' : 'block'
 }
 
 function toLeftWords(page: WalkPage, left: ChecksLeft | null): string | null {
@@ -170,20 +177,19 @@ const footClass = 'flex min-h-14 items-center font-medium hover:underline hover:
 
 function Foot({ saved, onRetry, panel }: Pick<FrameProps, 'saved' | 'onRetry' | 'panel'>) {
   const { page, openPanel, noAnswer, walk } = usePlayer()
-  const hasPad = page.kind === 'reading' || ((page.kind === 'proof' || page.kind === 'before') && page.judging !== null)
-  const isAsking = isOpen(walk)
-  const isPlain = panel === null && isAsking
+  const isPlain = panel === null && isOpen(walk)
+  const isPad = isPlain && hasPad(page)
   useShortcut(isPlain ? 'n' : null, 'Write a note', () => openPanel('note'))
   useShortcut(isPlain ? '?' : null, 'List of keys', () => openPanel('keys'))
-  useShortcut(isPlain && hasPad ? '0' : null, 'No answer', noAnswer.toggle)
+  useShortcut(isPad ? '0' : null, 'No answer', noAnswer.toggle)
   const isLost = saved.kind === 'waiting' || saved.kind === 'stuck'
   return (
     <footer className="z-1 border-t border-rule bg-card [--mark-ground:var(--card)] [@media(min-height:520px)]:sticky [@media(min-height:520px)]:bottom-0">
       {isLost && <LostBar saved={saved} onRetry={onRetry} />}
-      <div className="corded flex min-h-14 flex-wrap items-center justify-between gap-x-5">
-        <nav aria-label="Beside the check" className="flex flex-wrap gap-x-6 text-[1.0625rem] md:gap-x-8">
+      <div className="corded flex min-h-14 flex-wrap items-center justify-between gap-x-4">
+        <nav aria-label="Beside the check" className="flex flex-wrap gap-x-4 text-[1rem] sm:gap-x-8 sm:text-[1.125rem]">
           {isPlain && page.kind === 'caution' && <Unsafe />}
-          {isPlain && hasPad && (
+          {isPad && (
             <button type="button" aria-expanded={noAnswer.isOpen} onClick={noAnswer.toggle} className={footClass}>
               No answer
             </button>
@@ -249,9 +255,9 @@ function LostBar({ saved, onRetry }: { readonly saved: Extract<SavedState, { kin
   return (
     <div role="status" className="border-b border-hair bg-care-wash [--mark-ground:var(--care-wash)]">
       <div className="corded flex flex-wrap items-center justify-between gap-x-4">
-        <p className="min-w-0 flex-1 basis-56 py-2 text-small leading-5">
+        <p className="min-w-0 flex-1 basis-48 py-2 text-small leading-5">
           <StateMark state="care">{saved.kind === 'waiting' ? `${saved.count} not sent yet` : 'not saved'}</StateMark>: {saved.why}{' '}
-          {saved.kind === 'waiting' ? 'It is sent by itself; go on.' : 'Leave this page open.'}
+          {saved.kind === 'waiting' ? 'Go on: it is sent by itself.' : 'Leave this page open.'}
         </p>
         <Button look="plain" onClick={onRetry}>
           Try now

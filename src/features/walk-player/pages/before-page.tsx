@@ -5,7 +5,7 @@ import { formatValue } from '#shared/units/format-value.ts'
 import { unitSchema } from '#shared/units/limits.ts'
 import type { BeforePage as Page, OutcomeChoice } from '#shared/walk/page.ts'
 import { AnswerList, NoAnswerList } from '#src/features/walk-player/parts/answer-list.tsx'
-import { DoFirst, NodeHelp, PageHead, Sheet, toMachineWords, toMinutesWords } from '#src/features/walk-player/parts/page-parts.tsx'
+import { DoFirst, NodeHelp, NodeReasons, PageHead, Sheet, toMachineWords, toMinutesWords } from '#src/features/walk-player/parts/page-parts.tsx'
 import { ReadingEntry } from '#src/features/walk-player/parts/reading-entry.tsx'
 import { Timer } from '#src/features/walk-player/parts/timer.tsx'
 import { useRecordAct, ValueAnswers } from '#src/features/walk-player/parts/value-answers.tsx'
@@ -96,6 +96,7 @@ function BeforeByValue({ page, judging, onTaken, skip }: StageProps & { readonly
           </ReadingEntry>
         )
       }
+      later={<NodeReasons node={page.node} />}
     />
   )
 }
@@ -104,7 +105,7 @@ function BeforeWhat({ page }: { readonly page: Page }) {
   const { node, entering, proof } = page
   return (
     <>
-      <DoFirst entering={entering} lines={[]} />
+      <DoFirst entering={entering} lines={proof.lines} />
       <PageHead
         knot={page.judging === null ? 'check' : 'reading'}
         stage="before"
@@ -112,7 +113,7 @@ function BeforeWhat({ page }: { readonly page: Page }) {
         title={node.title}
         tab={`Before: ${node.title}`}
       />
-      <NodeHelp node={node} showGood={page.judging === null} />
+      <NodeHelp node={node} showGood={page.judging === null} isShort={page.judging !== null} />
       {node.timer !== null && node.timer !== undefined && <Timer timer={node.timer} />}
       <p className="mt-4 border-t border-hair pt-3 text-small text-ink-2">
         Nothing is changed yet. Next: {proof.change ?? proof.node.title}, then the same again.

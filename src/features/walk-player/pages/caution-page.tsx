@@ -1,3 +1,4 @@
+import { signalWords } from '#shared/trade/signal-words.ts'
 import type { CautionPage as Page, CautionWords } from '#shared/walk/page.ts'
 import { PageHeading } from '#src/components/layout/page-heading.tsx'
 import { Button } from '#src/components/ui/button.tsx'
@@ -15,13 +16,13 @@ export function CautionPage({ page }: { readonly page: Page }) {
   const tap = useTapGuard(pageKey, cautionMs)
   const isAwake = useIsAwake(pageKey, cautionMs)
   const highest = page.cautions.filter(({ word }) => word === page.word)
-  const lower = page.cautions.filter(({ word }) => word !== page.word)
+  const lower = signalWords.flatMap((word) => (word === page.word ? [] : page.cautions.filter((caution) => caution.word === word)))
   const read = (): void => {
     record([{ type: 'caution-acknowledged', payload: { node: page.guards.place, cautionIds: [...page.cautionIds] } }])
   }
   return (
-    <div className="flex grow flex-col pt-5 pb-5">
-      <div className="max-w-[46rem]">
+    <div className="flex grow flex-col pt-4 pb-4 md:pt-6">
+      <div className="max-w-[60rem]">
         <PageHeading tab={`${toTitleWord(page.word)} · ${machineTitle}`} focusKey={pageKey} className="for-ears">
           {toTitleWord(page.word)}, read before you go on
         </PageHeading>
@@ -32,7 +33,7 @@ export function CautionPage({ page }: { readonly page: Page }) {
             ))}
           </div>
           {lower.length > 0 && (
-            <ul role="list" className="mt-4 grid gap-x-6 gap-y-3 border-t border-hair pt-3 sm:grid-cols-2">
+            <ul role="list" className="mt-4 grid gap-x-6 gap-y-3 border-t border-hair pt-3 sm:grid-cols-2 lg:grid-cols-3">
               {lower.map((caution) => (
                 <li key={caution.cautionId} className="text-small">
                   <p className="label text-ink!">{caution.word}</p>
@@ -43,9 +44,9 @@ export function CautionPage({ page }: { readonly page: Page }) {
             </ul>
           )}
         </CautionPanel>
-        <p className="mt-4 text-small text-ink-2">The maker’s manual, local codes and licensed practice come first.</p>
       </div>
-      <div className="mt-auto flex justify-end pt-8">
+      <div className="mt-auto flex flex-wrap items-center justify-end gap-x-6 gap-y-3 pt-4 md:pt-8">
+        <p className="min-w-0 flex-1 basis-32 text-small leading-5 text-ink-2">The maker’s manual, local codes and licensed practice come first.</p>
         <Button look="primary" size="large" aria-disabled={!isAwake} onClick={() => tap(read)} className="min-h-18 min-w-44 text-[1.25rem] md:min-h-22 md:min-w-64">
           Read it
         </Button>

@@ -11,8 +11,9 @@ export function EscalatedPage({ page }: { readonly page: Page }) {
     <Sheet
       what={
         <>
-          <PageHead knot="escalate" over={['The lead is asked', page.at.title]} title={page.reasonWords} />
-          <p className="mt-3">Leave the machine as it stands. The answer appears here by itself.</p>
+          <PageHead knot="escalate" over={['Waiting', page.at.title]} title="The lead is asked" />
+          <p className="mt-3">{page.reasonWords}</p>
+          <p className="mt-2 text-ink-2">Leave the machine as it stands. The answer appears here by itself.</p>
           <QuestionList questions={page.questions} />
           {page.ruledOut.length > 0 && (
             <RuledSection title="Ruled out" className="mt-6">
@@ -29,7 +30,12 @@ export function EscalatedPage({ page }: { readonly page: Page }) {
           <SkippedList skipped={page.skipped} />
         </>
       }
-      answers={<CloseActs results={page.results} />}
+      answers={
+        <details className="border-t border-hair">
+          <summary className="flex min-h-14 items-center font-medium text-cord underline underline-offset-4">Close it without an answer</summary>
+          <CloseActs results={page.results} leads={false} />
+        </details>
+      }
     />
   )
 }

@@ -46,7 +46,7 @@ export function PickPage({ page }: { readonly page: Page }) {
       what={
         <>
           <PageHead knot="jump" over={['Something else']} title={page.node.title} />
-          <p className="mt-3">Pick what the machine does. What was found so far stays on record.</p>
+          <p className="mt-3">What was found so far stays on record.</p>
           {problem !== null && (
             <Notice state="care" title="Not picked yet" role="alert" className="mt-4">
               {problem}

@@ -9,7 +9,7 @@ import { StateMark } from '#src/components/ui/state-mark.tsx'
 import { AnswerList, NoAnswerList } from '#src/features/walk-player/parts/answer-list.tsx'
 import { NoteField, toLengthWords } from '#src/features/walk-player/parts/note-field.tsx'
 import { OutcomeButton } from '#src/features/walk-player/parts/outcome-button.tsx'
-import { DoFirst, NodeHelp, PageHead, Sheet, toMachineWords, toMinutesWords } from '#src/features/walk-player/parts/page-parts.tsx'
+import { DoFirst, NodeHelp, NodeReasons, PageHead, Sheet, toMachineWords, toMinutesWords } from '#src/features/walk-player/parts/page-parts.tsx'
 import { ReadingEntry } from '#src/features/walk-player/parts/reading-entry.tsx'
 import { Timer } from '#src/features/walk-player/parts/timer.tsx'
 import { useRecordAct, ValueAnswers } from '#src/features/walk-player/parts/value-answers.tsx'
@@ -63,6 +63,7 @@ function ProofByValue({ page, judging, taken }: ProofPageProps & { readonly judg
           </div>
         )
       }
+      later={<NodeReasons node={page.node} />}
     />
   )
 }
@@ -152,7 +153,7 @@ function ProofWhat({ page, taken, stage }: { readonly page: Page; readonly taken
   const { node, entering, suspect, before, change, afterwards } = page
   return (
     <>
-      <DoFirst entering={entering} lines={page.lines} />
+      <DoFirst entering={entering} lines={taken === undefined ? page.lines : []} />
       <PageHead
         knot="proof"
         stage={stage}
@@ -177,7 +178,7 @@ function ProofWhat({ page, taken, stage }: { readonly page: Page; readonly taken
           </ProofRow>
         )}
       </dl>
-      <NodeHelp node={node} />
+      <NodeHelp node={node} isShort={page.judging !== null} />
       {node.timer !== null && node.timer !== undefined && <Timer timer={node.timer} />}
     </>
   )
@@ -185,9 +186,9 @@ function ProofWhat({ page, taken, stage }: { readonly page: Page; readonly taken
 
 function ProofRow({ lead, children }: { readonly lead: string; readonly children: ReactNode }) {
   return (
-    <div className="grid grid-cols-[5.5rem_1fr] items-center gap-x-3 py-2">
+    <div className="grid grid-cols-[4.5rem_1fr] items-center gap-x-3 py-2 md:grid-cols-[7rem_1fr]">
       <dt className="label">{lead}</dt>
-      <dd className="flex flex-wrap items-center justify-between gap-x-4">{children}</dd>
+      <dd className="flex flex-wrap items-center justify-between gap-x-2">{children}</dd>
     </div>
   )
 }
@@ -200,8 +201,10 @@ function AnswerWords({ answer, title, page }: { readonly answer: Answer; readonl
   const mark = page.judging === null ? null : toValueMark(page.judging, value, unit)
   return (
     <>
-      <span className="figures text-[1.5rem] leading-8">{formatValue(value, unit, format)}</span>
-      <StateMark state={mark?.state ?? 'open'}>{mark?.words ?? title}</StateMark>
+      <span className="figures text-[1.25rem] leading-8 md:text-[1.5rem]">{formatValue(value, unit, format)}</span>
+      <StateMark state={mark?.state ?? 'open'} className="text-[0.9375rem] md:text-[1.125rem]">
+        {mark?.words ?? title}
+      </StateMark>
     </>
   )
 }

@@ -12,17 +12,19 @@ import { PageHead, Sheet } from '#src/features/walk-player/parts/page-parts.tsx'
 import { TickRow } from '#src/features/walk-player/parts/tick-row.tsx'
 import { usePlayer } from '#src/features/walk-player/player-context.ts'
 import { formatMinutes } from '#src/lib/format.ts'
+import { toLineWords } from '#src/lib/walk-words.ts'
 
 /** The cause is proven: the fix, what led to it, what else the machine needs on the way out. */
 export function ProvenPage({ page }: { readonly page: Page }) {
-  const { cause, fix, proof, contributing, service, serviceChoices } = page
+  const { cause, fix, contributing, service, serviceChoices } = page
+  const found = useProof()
   return (
     <Sheet
       what={
         <>
           <PageHead knot="cause" over={['Proven', cause.system === null ? null : systemWords[cause.system]]} title={cause.title} tab={`Proven: ${cause.title}`} />
           <p className="mt-2 flex flex-wrap gap-x-4">
-            <StateMark state="good">{proof === null ? 'proven by a second look' : `proven: ${proof.title}`}</StateMark>
+            <StateMark state="good">{found === null ? 'proven by a second look' : `proven: ${found}`}</StateMark>
             {cause.isUnsafe && <StateMark state="bad">not safe to use until it is put right</StateMark>}
           </p>
           <FixList fix={fix} />
@@ -37,6 +39,14 @@ export function ProvenPage({ page }: { readonly page: Page }) {
       }
     />
   )
+}
+
+/** What the proof found, in words; `null` where a second look proved it. */
+function useProof(): string | null {
+  const { walk, charts, format } = usePlayer()
+  const proof = walk.phase === 'proven' ? walk.cause.proof : null
+  const line = proof?.by === 'finding' ? walk.trail.find(({ eventId }) => eventId === proof.eventId) : undefined
+  return line === undefined ? null : toLineWords({ charts, walk, format }, line).found
 }
 
 function FixList({ fix }: { readonly fix: Page['fix'] }) {

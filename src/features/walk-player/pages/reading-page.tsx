@@ -3,7 +3,7 @@ import { judgeTries } from '#shared/walk/judging.ts'
 import type { OutcomeChoice, ReadingPage as Page } from '#shared/walk/page.ts'
 import { OutcomeButton } from '#src/features/walk-player/parts/outcome-button.tsx'
 import { NoAnswerList, toOutcomeWords } from '#src/features/walk-player/parts/answer-list.tsx'
-import { DoFirst, NodeHelp, PageHead, Sheet, toKindWords, toMachineWords, toMinutesWords } from '#src/features/walk-player/parts/page-parts.tsx'
+import { DoFirst, NodeHelp, NodeReasons, PageHead, Sheet, toKindWords, toMachineWords, toMinutesWords } from '#src/features/walk-player/parts/page-parts.tsx'
 import { ReadingEntry } from '#src/features/walk-player/parts/reading-entry.tsx'
 import { Timer } from '#src/features/walk-player/parts/timer.tsx'
 import { ValueAnswers, useRecordAct } from '#src/features/walk-player/parts/value-answers.tsx'
@@ -34,7 +34,7 @@ export function ReadingPage({ page }: { readonly page: Page }) {
             over={[toKindWords('reading', node.number), toMinutesWords(node.minutes, entering.minutes), toMachineWords(entering.machine)]}
             title={node.title}
           />
-          <NodeHelp node={node} showGood={judging.limits === null} />
+          <NodeHelp node={node} showGood={judging.limits === null} isShort />
           {node.timer !== null && node.timer !== undefined && <Timer timer={node.timer} />}
         </>
       }
@@ -50,6 +50,7 @@ export function ReadingPage({ page }: { readonly page: Page }) {
           </div>
         )
       }
+      later={<NodeReasons node={node} />}
     />
   )
 }

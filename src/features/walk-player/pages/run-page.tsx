@@ -170,7 +170,7 @@ function RunRow({ item, run, onKeep, onMark }: RunRowProps) {
         </li>
       )}
       {isEntering && item.reading !== undefined && (
-        <li className="border-b border-hair py-3">
+        <li ref={(row) => row?.scrollIntoView({ block: 'nearest' })} className="border-b border-hair py-3">
           <RunValue
             item={item}
             reading={item.reading}

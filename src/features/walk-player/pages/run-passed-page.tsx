@@ -30,7 +30,7 @@ export function RunPassedPage({ page }: { readonly page: Page }) {
               ...(led.length === 0 ? [] : [{ name: 'What led to it', value: led.join(', ') }]),
               ...(parts.length === 0 ? [] : [{ name: 'Parts', value: parts.join('; ') }]),
               { name: 'The fix took', value: formatMinutes(page.repair.minutes) },
-              ...(readings.length === 0 ? [] : [{ name: 'Readings', value: <span className="figures">{readings.join('; ')}</span> }]),
+              ...(readings.length === 0 ? [] : [{ name: 'Readings', value: readings.join('; ') }]),
               { name: 'Minutes used', value: formatMinutes(walk.minutesUsed) },
             ]}
           />

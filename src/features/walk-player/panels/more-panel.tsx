@@ -44,13 +44,13 @@ export function MorePanel() {
         )}
         <Way name="keys" words="Keys" openPanel={openPanel} />
         <Row>
-          <TextLink to={paths.bench()} className="flex min-h-14 items-center">
-            To the bench; this walk stays open
+          <TextLink to={paths.bench()} className="flex min-h-14 items-center py-2 leading-7">
+            To the bench: this walk stays open
           </TextLink>
         </Row>
         <Row>
-          <TextLink to={paths.walkReview(walk.walkId)} className="flex min-h-14 items-center">
-            The log of this walk, and its way on the chart
+          <TextLink to={paths.walkReview(walk.walkId)} className="flex min-h-14 items-center py-2 leading-7">
+            Log and chart of this walk
           </TextLink>
         </Row>
       </ul>
@@ -76,7 +76,7 @@ function Row({ children }: { readonly children: ReactNode }) {
 
 function RowButton({ onClick, children }: { readonly onClick: () => void; readonly children: ReactNode }) {
   return (
-    <button type="button" onClick={onClick} className="flex min-h-14 w-full items-center justify-between gap-4 text-left font-medium hover:bg-cord-wash">
+    <button type="button" onClick={onClick} className="flex min-h-14 w-full items-center justify-between gap-4 py-2 text-left leading-7 font-medium hover:bg-cord-wash">
       {children}
     </button>
   )

@@ -33,7 +33,7 @@ export function TrailPanel() {
               return (
                 <RuledRow key={line.eventId} className="flex flex-wrap items-center justify-between gap-x-4">
                   <Tie kind={node.kind} />
-                  <span className="grid min-w-0 flex-1 basis-56">
+                  <span className="grid min-w-0 flex-1 basis-40">
                     <span className="text-small text-ink-2">
                       {node.number} {node.title}
                     </span>

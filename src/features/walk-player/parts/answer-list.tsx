@@ -85,16 +85,21 @@ type NoAnswerListProps = {
 export function NoAnswerList({ question, noAnswer, onPick, onClose }: NoAnswerListProps) {
   const { pageKey } = usePlayer()
   const tap = useTapGuard(`${pageKey} no answer`)
-  const on = noAnswer.ifSkipped === null ? 'the lead is asked' : `goes on as “${noAnswer.ifSkipped.title}”, shown again before the lead is asked`
+  const { ifSkipped, endsWalk } = noAnswer
   return (
     <div role="group" aria-label={`No answer to: ${question}`} className="grid gap-3">
-      <p className="label">No answer: why?</p>
+      <div>
+        <p className="label">No answer: why?</p>
+        <p className="text-small text-ink-2">
+          {ifSkipped === null ? 'Without an answer the chart ends here: the lead is asked.' : `The walk goes on as “${ifSkipped.title}”; this is shown again before the lead is asked.`}
+        </p>
+      </div>
       {reasons.map((why, index) => {
-        const words = why === 'not-reproduced' && noAnswer.endsWalk ? 'nothing to find on a machine that runs right: the walk ends here' : on
+        const words = why === 'not-reproduced' && endsWalk ? 'nothing to find on a machine that runs right: the walk ends here' : undefined
         const pick = (): void => tap(() => onPick(why))
         return (
           <div key={why}>
-            <OutcomeButton numeral={index + 1} title={skipWords[why]} words={words} onPress={pick} />
+            <OutcomeButton numeral={index + 1} title={skipWords[why]} {...(words === undefined ? {} : { words })} onPress={pick} />
             <AnswerKey numeral={index + 1} words={skipWords[why]} run={pick} />
           </div>
         )

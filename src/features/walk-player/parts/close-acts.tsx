@@ -7,8 +7,15 @@ import { usePlayer } from '#src/features/walk-player/player-context.ts'
 import { resultHints } from '#src/features/walk-player/words.ts'
 import { resultWords } from '#src/lib/walk-words.ts'
 
+type CloseActsProps = {
+  readonly results: readonly WalkResult[]
+  readonly withNote?: boolean
+  /** Whether closing is what the page is for. */
+  readonly leads?: boolean
+}
+
 /** The ends that the walk can come to from here. Closing is the one act that has no way back, so it says so. */
-export function CloseActs({ results, withNote = true }: { readonly results: readonly WalkResult[]; readonly withNote?: boolean }) {
+export function CloseActs({ results, withNote = true, leads = true }: CloseActsProps) {
   const { record } = usePlayer()
   const [why, setWhy] = useState('')
   if (results.length === 0) return null
@@ -25,7 +32,7 @@ export function CloseActs({ results, withNote = true }: { readonly results: read
           key: result,
           title: `Close: ${resultWords[result].toLowerCase()}`,
           words: resultHints[result],
-          look: index === 0 ? 'leading' : 'plain',
+          look: leads && index === 0 ? 'leading' : 'plain',
           onPress: () => close(result),
         }))}
       />

@@ -29,27 +29,30 @@ function toEnds(limits: SpecLimit, unit: Unit): Ends {
   return { min: toUnit(range?.min), max: toUnit(range?.max) }
 }
 
-/** Where the scale begins and ends: the limits with room on both sides. A value beyond it stands at its end. */
-function toScale({ min, max }: Ends): { readonly low: number; readonly high: number } {
-  const low = min ?? 0
-  const high = max ?? (min === null ? 1 : min * 1.4)
-  const width = high - low || Math.abs(high) || 1
-  return { low: min === null ? Math.min(0, high - width) : low - width * 0.9, high: max === null ? high + width * 0.2 : high + width * 0.6 }
+/** Where the scale begins and ends: the limits with room on both sides, more where the value wants it. One that is far off stands at the end. */
+function toScale({ min, max }: Ends, value: number | null): { readonly low: number; readonly high: number } {
+  const from = min ?? 0
+  const to = max ?? (min === null ? 1 : min * 1.4)
+  const width = Math.abs(to - from) || Math.abs(to) || 1
+  const low = min === null ? Math.min(0, to - width) : from - width * 0.9
+  const high = max === null ? to + width * 0.2 : to + width * 0.6
+  if (value === null) return { low, high }
+  return { low: Math.min(low, Math.max(value - width * 0.3, from - width * 4)), high: Math.max(high, Math.min(value + width * 0.3, to + width * 4)) }
 }
 
 /** A value on the line of its limits: where it lies, before any word is read. The words beside it say the same. */
 export function LimitsBar({ limits, unit, value, state, format }: LimitsBarProps) {
   const ends = toEnds(limits, unit)
   if (ends.min === null && ends.max === null) return null
-  const { low, high } = toScale(ends)
+  const { low, high } = toScale(ends, value)
   const toShare = (point: number): number => Math.min(1, Math.max(0, (point - low) / (high - low)))
   const from = ends.min === null ? 0 : toShare(ends.min)
   const to = ends.max === null ? 1 : toShare(ends.max)
   const at = value === null ? null : toShare(value)
   const tone = state === null ? 'text-ink-2' : markerColours[state]
   return (
-    <div aria-hidden="true" className="pt-1">
-      <div className="relative h-7">
+    <div aria-hidden="true" className="pt-0.5">
+      <div className="relative h-6">
         <span className="absolute inset-x-0 top-1/2 border-t-2 border-rule" />
         <span
           className="absolute top-1/2 h-3 -translate-y-1/2 border-2 border-good bg-good-wash"
@@ -61,7 +64,7 @@ export function LimitsBar({ limits, unit, value, state, format }: LimitsBarProps
           </svg>
         )}
       </div>
-      <div className="figures relative h-6 text-small leading-6">
+      <div className="figures relative h-5 text-small leading-5">
         {ends.min !== null && <BarLabel at={from}>{ends.max === null ? formatValue(ends.min, unit, format) : formatNumber(ends.min, format)}</BarLabel>}
         {ends.max !== null && <BarLabel at={to}>{ends.min === null ? formatValue(ends.max, unit, format) : formatNumber(ends.max, format)}</BarLabel>}
         {at !== null && value !== null && isClear(at, from, to) && (

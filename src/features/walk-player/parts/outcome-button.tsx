@@ -26,7 +26,10 @@ const looks = {
 export function OutcomeButton({ numeral, title, words, look = 'plain', disabled = false, expanded, onPress }: OutcomeButtonProps) {
   return (
     <div className="relative">
-      <Branch look={look === 'open' ? 'dashed' : 'solid'} />
+      {/* In two columns the answers stand away from the cord. */}
+      <span className="lg:hidden">
+        <Branch look={look === 'open' ? 'dashed' : 'solid'} />
+      </span>
       <button
         type="button"
         onClick={onPress}

@@ -1,6 +1,7 @@
 import type { ReactNode } from 'react'
 
 import type { Entering, NodeWords, StepLineWords } from '#shared/walk/page.ts'
+import { accessOnStack } from '#shared/walk/pinned-charts.ts'
 import { Tie } from '#src/components/knots/cord.tsx'
 import type { KnotKind } from '#src/components/knots/knot.tsx'
 import { PageHeading } from '#src/components/layout/page-heading.tsx'
@@ -13,14 +14,19 @@ type SheetProps = {
   readonly what: ReactNode
   /** The answers: low on a phone, in reach of the thumb; the right column where there is room for two. */
   readonly answers: ReactNode
+  /** What can wait: below the answers on a phone, beside them where there is room. */
+  readonly later?: ReactNode
 }
 
 /** One page of the walk: the question above or to the left, the answers below or to the right. */
-export function Sheet({ what, answers }: SheetProps) {
+export function Sheet({ what, answers, later }: SheetProps) {
   return (
-    <div className="grid grow grid-rows-[auto_1fr] gap-y-6 pt-4 pb-5 lg:grid-cols-[minmax(0,1fr)_minmax(0,1fr)] lg:grid-rows-1 lg:gap-x-12 lg:pt-6 lg:pb-6">
-      <div className="max-w-words min-w-0">{what}</div>
-      <div className="flex min-w-0 flex-col justify-end">{answers}</div>
+    <div
+      className={`grid grow gap-x-12 gap-y-4 pt-3 pb-4 md:gap-y-6 md:pt-4 lg:grid-cols-[minmax(0,1fr)_minmax(0,1fr)] lg:pt-6 lg:pb-6 ${later === undefined ? 'grid-rows-[auto_1fr] lg:grid-rows-1' : 'grid-rows-[auto_1fr_auto] lg:grid-rows-[auto_1fr]'}`}
+    >
+      <div className="max-w-words min-w-0 lg:col-start-1 lg:row-start-1">{what}</div>
+      <div className="flex min-w-0 flex-col justify-end lg:sticky lg:bottom-20 lg:col-start-2 lg:row-span-full lg:self-end">{answers}</div>
+      {later !== undefined && <div className="max-w-words min-w-0 lg:col-start-1 lg:row-start-2">{later}</div>}
     </div>
   )
 }
@@ -68,12 +74,15 @@ export function toMachineWords(machine: Entering['machine']): string | null {
 
 /** What has to be done before the question can be answered: what comes off, what goes back on, then the steps, in this order. */
 export function DoFirst({ entering, lines }: { readonly entering: Entering; readonly lines: readonly StepLineWords[] }) {
-  const { opens, closes, defeats, restores, waitMinutes } = entering
+  const { walk, charts } = usePlayer()
+  const { opens, defeats, restores, waitMinutes } = entering
+  // What costs nothing to close has nothing to put back: an engine that cools down, or warms up.
+  const closes = entering.closes.filter(({ accessId }) => (accessOnStack(charts, walk, accessId)?.closeMinutes ?? 0) > 0)
   if (opens.length + closes.length + defeats.length + restores.length + lines.length === 0) return null
   return (
     <dl className="mb-4 grid gap-y-2 border-b border-hair pb-3">
-      {closes.length > 0 && <DoFirstRow lead="Back on">{closes.map(({ title }) => title).join(', ')}</DoFirstRow>}
-      {restores.length > 0 && <DoFirstRow lead="Put back">{restores.map(toWordsOfId).join(', ')}</DoFirstRow>}
+      {closes.length > 0 && <DoFirstRow lead="Put back">{toList(closes.map(({ title }) => toPart(title)))}</DoFirstRow>}
+      {restores.length > 0 && <DoFirstRow lead="In action">{toList(restores.map(toWordsOfId))}: back in place</DoFirstRow>}
       {opens.length > 0 && (
         <DoFirstRow lead="What’s off">
           {opens.map(({ accessId, title, minutes, trap }) => (
@@ -81,7 +90,7 @@ export function DoFirst({ entering, lines }: { readonly entering: Entering; read
               {title}
               {minutes > 0 && <span className="text-small whitespace-nowrap text-ink-2"> {formatMinutes(minutes)}</span>}
               {trap !== null && (
-                <StateMark state="care" className="block! text-small">
+                <StateMark state="care" className="flex! text-small leading-5">
                   {trap}
                 </StateMark>
               )}
@@ -118,16 +127,34 @@ function DoFirstRow({ lead, children }: { readonly lead: string; readonly childr
   )
 }
 
+/** An access is called by what is off; put back is the part: "Clutch cover off" -> "Clutch cover". */
+function toPart(title: string): string {
+  return title.replace(/ (off|out)$/i, '')
+}
+
+/** "Plug lead, plug, clutch cover": the first as it is written, the others in running text. */
+function toList(titles: readonly string[]): string {
+  return titles.map((title, index) => (index === 0 ? title : title.charAt(0).toLowerCase() + title.slice(1))).join(', ')
+}
+
 /** Safety parts have ids and no titles: "spark-screen" is read as "spark screen". */
 export function toWordsOfId(id: string): string {
   return id.replaceAll(/[-_.]+/g, ' ')
 }
 
+type NodeHelpProps = {
+  readonly node: NodeWords
+  /** Where limits judge, they say what good is. */
+  readonly showGood?: boolean
+  /** Why it is asked and with what stand elsewhere on the page. */
+  readonly isShort?: boolean
+}
+
 /** The act before the question, what good looks like, why it is asked, and with what. */
-export function NodeHelp({ node, showGood = true }: { readonly node: NodeWords; readonly showGood?: boolean }) {
+export function NodeHelp({ node, showGood = true, isShort = false }: NodeHelpProps) {
   return (
     <>
-      {node.do !== null && <p className="mt-3">{node.do}</p>}
+      {node.do !== null && <p className={`mt-2 ${isShort ? 'max-md:text-small' : ''}`}>{node.do}</p>}
       {showGood && node.good !== null && (
         <div className="mt-4 border-l-4 border-good py-0.5 pl-3">
           <p className="label text-good!">What good looks like</p>
@@ -135,12 +162,18 @@ export function NodeHelp({ node, showGood = true }: { readonly node: NodeWords; 
         </div>
       )}
       {node.picture?.alt !== undefined && <p className="mt-3 border border-hair bg-well p-3 text-small text-ink-2">{node.picture.alt}</p>}
-      {(node.why !== null || node.tools.length > 0) && (
-        <div className="mt-4 grid gap-1 text-small text-ink-2">
-          {node.why !== null && <p>{node.why}</p>}
-          {node.tools.length > 0 && <p>With: {node.tools.join(', ')}</p>}
-        </div>
-      )}
+      {!isShort && <NodeReasons node={node} className="mt-4" />}
     </>
+  )
+}
+
+/** Why it is asked, and with what it is done. */
+export function NodeReasons({ node, className = '' }: { readonly node: NodeWords; readonly className?: string }) {
+  if (node.why === null && node.tools.length === 0) return null
+  return (
+    <div className={`grid gap-1 text-small text-ink-2 ${className}`}>
+      {node.why !== null && <p>{node.why}</p>}
+      {node.tools.length > 0 && <p>With: {node.tools.map((tool) => tool.charAt(0).toLowerCase() + tool.slice(1)).join(', ')}</p>}
+    </div>
   )
 }

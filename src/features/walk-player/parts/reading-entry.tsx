@@ -65,7 +65,7 @@ function Tries({ entry }: { readonly entry: Entry }) {
 function toTriesWords(verdict: Entry['verdict'], taken: number, repeat: NonNullable<Entry['judging']['repeat']>, within: string): string {
   switch (verdict.kind) {
     case 'more':
-      return verdict.wanted === 1 && taken > 0 ? `one more ${within} settles it` : `${verdict.wanted} more ${within}`
+      return taken > 0 && verdict.wanted === 1 ? `one more ${within} settles it` : `then ${verdict.wanted === 1 ? 'one' : verdict.wanted} more ${within}`
     case 'no-value':
       return taken > 0 ? `one more ${within} settles it` : `repeat until ${repeat.equal} are ${within}, ${repeat.atMost} tries at most`
     case 'unsettled':

@@ -39,7 +39,7 @@ export function Timer({ timer }: { readonly timer: NonNullable<NodeWords['timer'
   }
 
   return (
-    <div role="group" aria-label="Timer" className="mt-4 grid gap-2 border-y border-hair py-2">
+    <div role="group" aria-label="Timer" className="mt-3 grid gap-1 border-y border-hair py-1">
       <div className="flex items-center gap-4">
         <Button onClick={toggle} className="min-w-28">
           {isRunning ? 'Stop' : run === null ? 'Start' : 'Again'}

@@ -49,7 +49,7 @@ export function ValueEntry(props: ValueEntryProps) {
     onEnter()
   }
   return (
-    <form onSubmit={submit} className="grid gap-3" noValidate>
+    <form onSubmit={submit} className="grid gap-2" noValidate>
       <div>
         <div className="flex items-center gap-3 border-b-3 border-ink focus-within:border-focus">
           <label htmlFor={id} className="for-ears">
@@ -72,12 +72,12 @@ export function ValueEntry(props: ValueEntryProps) {
           />
           <UnitChoice units={unitsOfQuantity[quantity]} unit={unit} onUnit={onUnit} />
           {mark !== null && typed?.ok === true && (
-            <StateMark state={mark.state} className="ml-auto text-right text-[1.25rem] leading-6">
+            <StateMark state={mark.state} className="ml-auto text-right text-[1.0625rem] leading-5 md:text-[1.25rem] md:leading-6">
               {mark.words}
             </StateMark>
           )}
         </div>
-        <div id={`${id}-under`} className="grid gap-1 pt-1 text-small">
+        <div id={`${id}-under`} className="grid text-small">
           <UnderValue {...props} />
           {under}
         </div>
