@@ -5,7 +5,10 @@ import { demoSignIns } from '#server/services/demo-sign-ins.ts'
 import { createIdSource } from '#server/lib/ids.ts'
 
 const newId = createIdSource(Date.now)
-type Sent = { readonly id: string; readonly seq: number }
+type Sent = { readonly id: string; readonly seq: number; readonly at: string }
+
+/** An event keeps its id and its moment however often it is sent. */
+const toNext = (seq: number): Sent => ({ id: newId(), seq, at: new Date().toISOString() })
 
 /** Who writes: a session of the junior's; it outlives the server. */
 export type Session = { readonly personId: string; readonly cookies: ReadonlyMap<string, string> }
@@ -25,7 +28,7 @@ export class NoteWriter {
   readonly acknowledged: string[] = []
   readonly #deviceId = newId()
   readonly #session: Session
-  #next: Sent = { id: newId(), seq: 1 }
+  #next = toNext(1)
 
   constructor(session: Session) {
     this.#session = session
@@ -41,7 +44,7 @@ export class NoteWriter {
       const { results } = answer.body as unknown as { results: { id: string; status: string }[] }
       expect(['appended', 'duplicate']).toContain(results[0]?.status)
       this.acknowledged.push(this.#next.id)
-      this.#next = { id: newId(), seq: this.#next.seq + 1 }
+      this.#next = toNext(this.#next.seq + 1)
       if (pauseMs > 0) await new Promise((resolve) => setTimeout(resolve, pauseMs))
     }
   }
@@ -63,8 +66,8 @@ export class NoteWriter {
     return client
   }
 
-  #send(client: Client, { id, seq }: Sent) {
-    const envelope = { id, walkId: this.walkId, seq, at: new Date().toISOString(), deviceId: this.#deviceId, personId: this.#session.personId }
+  #send(client: Client, { id, seq, at }: Sent) {
+    const envelope = { id, walkId: this.walkId, seq, at, deviceId: this.#deviceId, personId: this.#session.personId }
     if (seq > 1) return client.post(`/api/walks/${this.walkId}/events`, { events: [{ ...envelope, type: 'note-added', payload: { text: `Note ${seq}`, photoIds: [] } }] })
     const chartId = 'hard-to-start-printed'
     const payload = { kind: 'bench', chartId, startId: 's', pins: { [chartId]: 1 }, machine: { class: 'chain-saw', engine: 'two-stroke' }, limits: {} }
