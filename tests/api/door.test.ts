@@ -173,7 +173,7 @@ describe('headers', () => {
     expect(answer.headers.getSetCookie()).toHaveLength(2)
     expect(Number(/max-age=(\d+)/.exec(answer.headers.get('strict-transport-security') ?? '')?.[1])).toBeGreaterThanOrEqual(365 * 86_400)
     await secure.close()
-  })
+  }, 90_000)
 })
 
 describe('pages', () => {
