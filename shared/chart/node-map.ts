@@ -30,15 +30,17 @@ export function nodeMap<V>(
     }
     yield* rest.values()
   }
+  // Every id has a value and every value an id: the list itself can be walked, which costs far less.
+  const isWhole = rest.size === 0 && numbers.size === values.length && !values.includes(undefined)
   const map: ReadonlyMap<NodeId, V> = {
     get,
     has: (id) => get(id) !== undefined,
     get size() {
-      return [...list()].length
+      return isWhole ? values.length : [...list()].length
     },
     entries,
     keys,
-    values: list,
+    values: isWhole ? () => (values as readonly V[]).values() : list,
     [Symbol.iterator]: entries,
     forEach: (act) => {
       for (const [id, value] of entries()) act(value, id, map)
