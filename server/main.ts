@@ -3,10 +3,13 @@ import type { Server } from 'node:http'
 import { isIP } from 'node:net'
 import { inspect } from 'node:util'
 
+import type { Database } from './db/client.ts'
 import { holdFolder } from './db/folder-lock.ts'
 import type { FolderHold } from './db/folder-lock.ts'
+import { openDatabase } from './db/open-database.ts'
 import { parseEnvironment } from './lib/config.ts'
 import type { Environment } from './lib/config.ts'
+import type { Deps } from './lib/deps.ts'
 import type { Log } from './lib/log.ts'
 import { StartRefusal } from './lib/start-refusal.ts'
 import type { OpenShop } from './open-shop.ts'
@@ -17,7 +20,8 @@ const deadlineMs = { requests: 5_000, database: 8_000 }
 const isDev = process.argv.includes('--dev')
 const say = (words: string): void => void process.stdout.write(`${words}\n`)
 
-type Running = { readonly server: Server; readonly shop: OpenShop; readonly hold: FolderHold | null }
+type CreateApp = typeof import('./app.ts').createApp
+type Running = { readonly server: Server; readonly database: Database; readonly hold: FolderHold | null; readonly log: Log }
 
 /** What is running, or null when the start was refused; a signal that comes meanwhile waits for it. */
 const started: Promise<Running | null> = start().catch((error: unknown) => {
@@ -36,25 +40,34 @@ for (const signal of ['SIGTERM', 'SIGINT'] as const) {
 }
 const running = await started
 if (running === null) process.exit()
-void running.shop.lost.then((error) => {
+void running.database.lost.then((error) => {
   if (isStopping) return
   isStopping = true
-  running.shop.deps.log.fatal({ err: error }, 'the database stopped')
+  running.log.fatal({ err: error }, 'the database stopped')
   return stop(running, 'The database stopped by itself. Everything that was acknowledged is stored; start again.', 1)
 })
 
 async function start(): Promise<Running> {
   const environment = readEnvironment()
-  const hold = environment.databaseUrl === null ? await holdFolder(environment.dataFolder, 'server') : null
-  // Only now what takes time to load: somebody who finds the folder taken hears so at once.
-  const [{ openShop }, { createLog }] = await Promise.all([import('./open-shop.ts'), import('./lib/log.ts')])
-  // At a terminal people read; elsewhere programs do, and want every request.
-  const log = createLog({ level: process.stderr.isTTY ? 'warn' : 'info' })
-  keepGoing(log)
+  const { dataFolder, databaseUrl } = environment
+  const hold = databaseUrl === null ? await holdFolder(dataFolder, 'server') : null
   try {
-    const shop = await openShop({ environment, hold, log, say })
-    const server = await serveShop(shop, environment)
-    return { server, shop, hold }
+    // Whoever finds the folder taken hears so before anything that takes time is loaded; and that is loaded while the database opens.
+    const opening = openDatabase(hold === null ? { databaseUrl: databaseUrl ?? '' } : { hold }, say)
+    const [database, { openShop }, { createLog }, { createApp }] = await Promise.all([opening, import('./open-shop.ts'), import('./lib/log.ts'), import('./app.ts')])
+    // At a terminal people read; elsewhere programs do, and want every request.
+    const log = createLog({ level: process.stderr.isTTY ? 'warn' : 'info' })
+    keepGoing(log)
+    try {
+      const shop = await openShop(database, environment, log)
+      await loadDemoWhenNew(shop)
+      const server = await serve(shop.deps, environment, createApp)
+      await welcome(shop.deps, server)
+      return { server, database, hold, log }
+    } catch (error) {
+      await database.close()
+      throw error
+    }
   } catch (error) {
     await hold?.release()
     throw error
@@ -65,18 +78,6 @@ async function start(): Promise<Running> {
 function keepGoing(log: Log): void {
   process.on('unhandledRejection', (error) => log.error({ err: error }, 'a promise was rejected and nobody looked'))
   process.on('uncaughtException', (error) => log.error({ err: error }, 'an error that nobody caught'))
-}
-
-async function serveShop(shop: OpenShop, environment: Environment): Promise<Server> {
-  try {
-    await loadDemoWhenNew(shop)
-    const server = await serve(shop, environment)
-    await welcome(shop, server)
-    return server
-  } catch (error) {
-    await shop.close()
-    throw error
-  }
 }
 
 function readEnvironment(): Environment {
@@ -92,8 +93,7 @@ async function loadDemoWhenNew({ deps, isUntouched }: OpenShop): Promise<void> {
   await loadDemo(deps)
 }
 
-async function serve({ deps }: OpenShop, { host, port }: Environment): Promise<Server> {
-  const { createApp } = await import('./app.ts')
+async function serve(deps: Deps, { host, port }: Environment, createApp: CreateApp): Promise<Server> {
   const server = createServer()
   const devPages = isDev ? await (await import('./dev-pages.ts')).createDevPages(server) : null
   server.on('request', createApp(deps, devPages === null ? {} : { devPages }))
@@ -112,7 +112,7 @@ function toListenRefusal(error: NodeJS.ErrnoException, host: string, port: numbe
 }
 
 /** Says where the shop is and how to get in. */
-async function welcome({ deps }: OpenShop, server: Server): Promise<void> {
+async function welcome(deps: Deps, server: Server): Promise<void> {
   const { config } = deps
   say(`\nPullcord is ready at ${toOpenAddress(server, config.publicUrl)}`)
   if (config.demo && !config.isProduction) {
@@ -142,7 +142,7 @@ function isLoopback(host: string): boolean {
 }
 
 /** Takes no more requests, lets those under way end, closes the database, lets go of the folder. */
-async function stop({ server, shop, hold }: Running, words: string, status: number): Promise<void> {
+async function stop({ server, database, hold }: Running, words: string, status: number): Promise<void> {
   say(words)
   const timer = setTimeout(() => server.closeAllConnections(), deadlineMs.requests)
   await new Promise<void>((resolve) => {
@@ -150,7 +150,7 @@ async function stop({ server, shop, hold }: Running, words: string, status: numb
     server.closeIdleConnections()
   })
   clearTimeout(timer)
-  await shop.close(deadlineMs.database)
+  await database.close(deadlineMs.database)
   await hold?.release()
   if (status === 0) say('Stopped. Everything is stored.')
   process.exit(status)

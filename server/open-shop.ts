@@ -1,7 +1,5 @@
 import { createBcryptPasswords } from './adapters/passwords/bcrypt-passwords.ts'
-import type { Db } from './db/client.ts'
-import type { FolderHold } from './db/folder-lock.ts'
-import { openDatabase } from './db/open-database.ts'
+import type { Database, Db } from './db/client.ts'
 import { oneTimeLinks, people } from './db/schema/people.ts'
 import { shops } from './db/schema/shops.ts'
 import { settleConfig } from './lib/config.ts'
@@ -14,41 +12,21 @@ import { StartRefusal } from './lib/start-refusal.ts'
 import { bcryptCost } from './services/password-hash.ts'
 import { isDemoShop } from './services/shop.ts'
 
-/** A shop's database, open, with everything that services need around it. */
+/** Everything that services need, over an open database. */
 export type OpenShop = {
   readonly deps: Deps
   /** True when nobody has set up anything yet. */
   readonly isUntouched: boolean
-  /** Settles when the database has stopped by itself. */
-  readonly lost: Promise<Error>
-  readonly close: (deadlineMs?: number) => Promise<void>
 }
 
-type Opening = {
-  readonly environment: Environment
-  /** The data folder, held by this process; null when the database is on a server. */
-  readonly hold: FolderHold | null
-  readonly log: Log
-  readonly say?: (words: string) => void
-}
-
-/** Opens the database in the data folder or on its server, and settles what the environment leaves open. */
-export async function openShop({ environment, hold, log, say }: Opening): Promise<OpenShop> {
-  const { dataFolder, databaseUrl } = environment
-  const place = hold === null ? { databaseUrl: databaseUrl ?? '' } : { hold }
-  const database = await openDatabase(place, say)
-  try {
-    const isUntouched = await hasNothing(database.db)
-    const demo = await decideDemo(environment, database.db, isUntouched)
-    const config = settleConfig(environment, { sessionSecret: environment.sessionSecret ?? (await keepSessionSecret(dataFolder)), demo })
-    const deps = {
-      config, db: database.db, database, log, clock: () => new Date(), newId: createIdSource(Date.now), randomToken, passwords: createBcryptPasswords(bcryptCost),
-    }
-    return { deps, isUntouched, lost: database.lost, close: database.close }
-  } catch (error) {
-    await database.close()
-    throw error
-  }
+/** Settles what the environment leaves open, over an open database. */
+export async function openShop(database: Database, environment: Environment, log: Log): Promise<OpenShop> {
+  const { db } = database
+  const isUntouched = await hasNothing(db)
+  const demo = await decideDemo(environment, db, isUntouched)
+  const config = settleConfig(environment, { sessionSecret: environment.sessionSecret ?? (await keepSessionSecret(environment.dataFolder)), demo })
+  const deps = { config, db, database, log, clock: () => new Date(), newId: createIdSource(Date.now), randomToken, passwords: createBcryptPasswords(bcryptCost) }
+  return { deps, isUntouched }
 }
 
 /** Before the first owner, or the code for one, or the demo shop, these three tables are empty. */

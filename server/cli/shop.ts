@@ -3,6 +3,7 @@ import { readdir, stat, statfs } from 'node:fs/promises'
 import { join } from 'node:path'
 
 import { holdFolder } from '#server/db/folder-lock.ts'
+import { openDatabase } from '#server/db/open-database.ts'
 import { parseEnvironment } from '#server/lib/config.ts'
 import type { Environment } from '#server/lib/config.ts'
 import type { OpenShop } from '#server/open-shop.ts'
@@ -44,7 +45,7 @@ export const shopVerbs: VerbTable = {
     does: 'whether the database opens and its walk logs are whole; status 1 when not',
     run: async (args) => {
       refuseArguments('doctor', args)
-      return withShop(examine, refuseToMake)
+      return withShop(report, refuseToMake)
     },
   },
 }
@@ -65,34 +66,23 @@ async function withShop(act: (shop: OpenShop, environment: Environment) => Promi
   before(environment)
   const hold = environment.databaseUrl === null ? await holdFolder(environment.dataFolder, 'command line') : null
   try {
-    const [{ openShop }, { createLog }] = await Promise.all([import('#server/open-shop.ts'), import('#server/lib/log.ts')])
-    const shop = await openShop({ environment, hold, log: createLog({ level: 'warn' }) })
+    const database = await openDatabase(hold === null ? { databaseUrl: environment.databaseUrl ?? '' } : { hold })
     try {
-      return await act(shop, environment)
+      const [{ openShop }, { createLog }] = await Promise.all([import('#server/open-shop.ts'), import('#server/lib/log.ts')])
+      return await act(await openShop(database, environment, createLog({ level: 'warn' })), environment)
     } finally {
-      await shop.close()
+      await database.close()
     }
   } finally {
     await hold?.release()
   }
 }
 
-async function examine({ deps: { db, database, config } }: OpenShop, { dataFolder }: Environment): Promise<Answer> {
-  const [{ sql }, { people }, { walkEvents, walks }] = await Promise.all([import('drizzle-orm'), import('#server/db/schema/people.ts'), import('#server/db/schema/walks.ts')])
-  const { rows } = await db.execute<{ walk: string }>(sql`
-    select w.id::text as walk from ${walks} w left join ${walkEvents} e on e.walk_id = w.id
-    group by w.id, w.last_seq having count(e.id) <> w.last_seq or max(e.seq) <> w.last_seq or min(e.seq) <> 1 order by 1`)
-  const isInFolder = database.engine === 'pglite'
-  const json = {
-    engine: database.engine,
-    isDemo: config.demo,
-    people: await db.$count(people),
-    walks: await db.$count(walks),
-    events: await db.$count(walkEvents),
-    ...(isInFolder ? await measureFolder(dataFolder) : {}),
-    walksWithHoles: rows.map((row) => row.walk),
-  }
-  return { json, failed: rows.length > 0 }
+async function report({ deps: { db, database, config } }: OpenShop, { dataFolder }: Environment): Promise<Answer> {
+  const { examine } = await import('#server/db/examine.ts')
+  const findings = await examine(db)
+  const folder = database.engine === 'pglite' ? await measureFolder(dataFolder) : {}
+  return { json: { engine: database.engine, isDemo: config.demo, ...folder, ...findings }, failed: findings.walksWithHoles.length > 0 }
 }
 
 async function measureFolder(folder: string): Promise<Readonly<Record<string, unknown>>> {

@@ -1,4 +1,5 @@
 import type { Database } from './client.ts'
+import { startFolderEngine } from './folder-engine.ts'
 import type { FolderHold } from './folder-lock.ts'
 
 /** Where the database is: in the data folder that this process holds, or on a PostgreSQL server. */
@@ -10,6 +11,7 @@ export async function openDatabase(place: DatabasePlace, say: (words: string) =>
     const { openPostgres } = await import('./postgres.ts')
     return openPostgres(place.databaseUrl, say)
   }
-  const { openFolder } = await import('./pglite.ts')
-  return openFolder(place.hold, say)
+  // The engine starts in its thread while this one loads what speaks to it.
+  const [client, { toDatabase }] = await Promise.all([startFolderEngine(place.hold, say), import('./pglite.ts')])
+  return toDatabase(client, say)
 }

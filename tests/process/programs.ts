@@ -1,6 +1,7 @@
 import { spawn } from 'node:child_process'
 import type { ChildProcess } from 'node:child_process'
-import { mkdtemp, rm } from 'node:fs/promises'
+import { rmSync } from 'node:fs'
+import { cp, mkdtemp, rm } from 'node:fs/promises'
 import { createServer } from 'node:net'
 import type { Server } from 'node:net'
 import { tmpdir } from 'node:os'
@@ -19,6 +20,26 @@ type User = { readonly uid: number; readonly gid: number }
 export async function makeFolder(): Promise<string> {
   const folder = await mkdtemp(join(tmpdir(), 'pullcord-process-'))
   onTestFinished(() => rm(folder, { recursive: true, force: true }))
+  return folder
+}
+
+const made = new Map<'demo' | 'own', Promise<string>>()
+
+/** A data folder in which a server has run before: the demo shop, or a shop of one's own that has no owner yet. Made once, then copied. */
+export async function makeUsedFolder(kind: 'demo' | 'own'): Promise<string> {
+  const original = made.get(kind) ?? runOnce(kind)
+  made.set(kind, original)
+  const folder = await makeFolder()
+  await cp(await original, folder, { recursive: true })
+  return folder
+}
+
+async function runOnce(kind: 'demo' | 'own'): Promise<string> {
+  const folder = await mkdtemp(join(tmpdir(), 'pullcord-used-'))
+  process.once('exit', () => rmSync(folder, { recursive: true, force: true }))
+  const server = await startServer({ PULLCORD_DATA: folder, DEMO: kind === 'demo' ? '1' : '0' })
+  const status = await server.end('SIGTERM')
+  if (status !== 0) throw new Error(`The server ended with status ${status}.`)
   return folder
 }
 

@@ -4,14 +4,14 @@ import { join } from 'node:path'
 import { expect, test } from 'vitest'
 
 import { NoteWriter, signInJunior } from './note-writer.ts'
-import { makeFolder, runToEnd, startServer } from './programs.ts'
+import { makeUsedFolder, runToEnd, startServer } from './programs.ts'
 
 const openers = 20
 
 test(
   `${openers} second openers of a live folder, servers and commands in turn, are refused within 2 seconds with the holder's name and harm nothing`,
   async () => {
-    const folder = await makeFolder()
+    const folder = await makeUsedFolder('demo')
     const environment = { PULLCORD_DATA: folder }
     const server = await startServer(environment)
     const writer = new NoteWriter(await signInJunior(server.url))

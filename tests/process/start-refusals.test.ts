@@ -1,10 +1,10 @@
 import { spawnSync } from 'node:child_process'
-import { chmod, cp, mkdir, readdir, readFile, rm, writeFile } from 'node:fs/promises'
+import { chmod, mkdir, readdir, readFile, rm, writeFile } from 'node:fs/promises'
 import { join } from 'node:path'
 
 import { describe, expect, onTestFinished, test } from 'vitest'
 
-import { makeFolder, occupyPort, runToEnd, startServer } from './programs.ts'
+import { makeFolder, makeUsedFolder, occupyPort, runToEnd, startServer } from './programs.ts'
 import type { Environment } from './programs.ts'
 
 const nobody = { uid: 65_534, gid: 65_534 }
@@ -44,7 +44,7 @@ describe('a start that can\'t be is refused in words, and nothing is changed', (
   })
 
   test('a port in use, and the next start with a free one goes well', async () => {
-    const PULLCORD_DATA = await makeFolder()
+    const PULLCORD_DATA = await makeUsedFolder('own')
     const port = await occupyPort()
     expect(await refusalOf({ PULLCORD_DATA, PORT: String(port) })).toBe(
       `Port ${port} on 127.0.0.1 is in use by another program. Stop that one, or name another port: PORT=${port + 1} npm start\n`,
@@ -53,8 +53,7 @@ describe('a start that can\'t be is refused in words, and nothing is changed', (
   })
 
   test('a database of another PostgreSQL version, and a half-made one', async () => {
-    const PULLCORD_DATA = await makeFolder()
-    expect(await (await startServer({ PULLCORD_DATA, DEMO: '0' })).end('SIGINT')).toBe(0)
+    const PULLCORD_DATA = await makeUsedFolder('own')
     const version = join(PULLCORD_DATA, 'database/PG_VERSION')
     await writeFile(version, '17\n')
     const before = await readTree(PULLCORD_DATA)
@@ -66,8 +65,7 @@ describe('a start that can\'t be is refused in words, and nothing is changed', (
   })
 
   test('a database whose control file is damaged is not made anew', async () => {
-    const PULLCORD_DATA = await makeFolder()
-    await (await startServer({ PULLCORD_DATA, DEMO: '0' })).end('SIGTERM')
+    const PULLCORD_DATA = await makeUsedFolder('own')
     const control = join(PULLCORD_DATA, 'database/global/pg_control')
     await writeFile(control, 'damaged')
     expect(await refusalOf({ PULLCORD_DATA })).toMatch(/could not be opened: .*The folder was left as it is/)
@@ -85,12 +83,8 @@ describe('a start that can\'t be is refused in words, and nothing is changed', (
   })
 
   test('the demo shop where a shop of your own is asked for, and the other way round', async () => {
-    const PULLCORD_DATA = await makeFolder()
-    await (await startServer({ PULLCORD_DATA })).end('SIGTERM')
-    expect(await refusalOf({ PULLCORD_DATA, DEMO: '0' })).toMatch(/DEMO is 0, and the data folder .* holds the demo shop.*PULLCORD_DATA=\.\/shop/)
-    const own = await makeFolder()
-    await (await startServer({ PULLCORD_DATA: own, DEMO: '0' })).end('SIGTERM')
-    expect(await refusalOf({ PULLCORD_DATA: own, DEMO: '1' })).toMatch(/DEMO is 1, and .* holds a shop of your own/)
+    expect(await refusalOf({ PULLCORD_DATA: await makeUsedFolder('demo'), DEMO: '0' })).toMatch(/DEMO is 0, and the data folder .* holds the demo shop.*PULLCORD_DATA=\.\/shop/)
+    expect(await refusalOf({ PULLCORD_DATA: await makeUsedFolder('own'), DEMO: '1' })).toMatch(/DEMO is 1, and .* holds a shop of your own/)
   })
 
   // Only root may make a disk of 60 MB, and not in every container.
@@ -107,13 +101,16 @@ describe('a start that can\'t be is refused in words, and nothing is changed', (
   }
 })
 
-test('what was refused opens again as soon as the cause is gone', async () => {
-  const PULLCORD_DATA = await makeFolder()
-  await (await startServer({ PULLCORD_DATA, DEMO: '0' })).end('SIGTERM')
-  const database = join(PULLCORD_DATA, 'database')
-  await cp(join(database, 'PG_VERSION'), join(PULLCORD_DATA, 'kept'))
-  await rm(join(database, 'PG_VERSION'))
+test('what was refused opens again as soon as the cause is gone, and is closed as cleanly by Ctrl-C as by SIGTERM', async () => {
+  const PULLCORD_DATA = await makeUsedFolder('own')
+  const version = join(PULLCORD_DATA, 'database/PG_VERSION')
+  await rm(version)
   await refusalOf({ PULLCORD_DATA })
-  await cp(join(PULLCORD_DATA, 'kept'), join(database, 'PG_VERSION'))
-  expect(await (await startServer({ PULLCORD_DATA })).end('SIGTERM')).toBe(0)
+  await writeFile(version, '18\n')
+  for (const signal of ['SIGINT', 'SIGTERM'] as const) {
+    const server = await startServer({ PULLCORD_DATA })
+    expect(await server.end(signal)).toBe(0)
+    expect(server.stdout()).toContain('Stopped. Everything is stored.')
+    expect(await readdir(PULLCORD_DATA)).not.toContain('holder.json')
+  }
 })
