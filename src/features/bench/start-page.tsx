@@ -87,8 +87,8 @@ function StartForm({ own, charts, models, startId, person }: StartFormProps) {
     if (start !== undefined) void begin(start.id, machine, model)
   }
   return (
-    <form onSubmit={submit} className="mx-auto grid w-full max-w-sheet gap-x-16 gap-y-8 pt-5 pb-6 md:pt-8 lg:grid-cols-[minmax(0,7fr)_minmax(0,5fr)]">
-      <div className="grid content-start gap-8">
+    <form onSubmit={submit} className="mx-auto grid w-full max-w-sheet gap-x-16 gap-y-5 pt-4 pb-6 md:gap-y-8 md:pt-8 lg:grid-cols-[minmax(0,7fr)_minmax(0,5fr)]">
+      <div className="grid content-start gap-4 md:gap-8">
         <p className="text-small text-ink-2">
           {document.title}, version {own.version}
         </p>
@@ -97,20 +97,20 @@ function StartForm({ own, charts, models, startId, person }: StartFormProps) {
           <ChoiceGrid legend="Engine" name="engine" choices={engines.map((value) => ({ value, words: engineKindWords[value] }))} value={engine} onChange={setEngine} />
         )}
       </div>
-      <div className="flex flex-col gap-8">
+      <div className="flex flex-col gap-5 md:gap-8">
         <RuledSection title="If you know it">
-          <div className="grid gap-5 pt-4">
+          <div className="grid gap-3 pt-3 md:gap-5 md:pt-4">
             <SelectField<string>
               label="Model, for its spec sheet"
               value={model?.id ?? ''}
               choices={[{ value: '', words: fitting.length === 0 ? 'No spec sheet for this kind' : 'Not known' }, ...fitting.map(({ id, maker, name }) => ({ value: id, words: `${maker} ${name}` }))]}
-              hint={model === null ? 'Without one, readings are judged by general values.' : 'Readings are judged by this model’s own values.'}
+              hint={model === null ? 'Else readings go by general values.' : 'Readings go by this model’s own values.'}
               onChange={(event) => setModelId(fitting.find(({ id }) => id === event.target.value)?.id ?? null)}
             />
             <TextField label="Serial number" value={serial} onChange={(event) => setSerial(event.target.value)} maxLength={100} autoComplete="off" autoCapitalize="characters" className="figures" />
           </div>
         </RuledSection>
-        <div className="mt-auto grid gap-3 max-md:sticky max-md:bottom-0 max-md:-mx-(--page-edge) max-md:border-t max-md:border-rule max-md:bg-paper max-md:px-(--page-edge) max-md:py-3">
+        <div className="mt-auto grid gap-3">
           {problem !== null && (
             <Notice state="bad" title="Not started" role="alert">
               {problem}
@@ -119,7 +119,7 @@ function StartForm({ own, charts, models, startId, person }: StartFormProps) {
           <Button type="submit" look="primary" size="large" busy={isStarting && 'Starting'} className="min-h-18 w-full text-[1.375rem] md:min-h-22">
             Start
           </Button>
-          <p className="text-small text-ink-2">First the cautions, then the first check. The maker’s manual, local codes and licensed practice come first.</p>
+          <p className="text-small text-ink-2 max-md:hidden">First the cautions, then the first check. The maker’s manual, local codes and licensed practice come first.</p>
         </div>
       </div>
     </form>
@@ -200,14 +200,14 @@ function ChoiceGrid<Value extends string>({ legend, name, choices, value, onChan
   const id = useId()
   return (
     <fieldset aria-labelledby={id}>
-      <legend id={id} className="label mb-2 w-full border-b border-rule pb-2">
+      <legend id={id} className="label mb-2 w-full border-b border-rule pb-1">
         {legend}
       </legend>
       <div className="grid grid-cols-2 gap-2 sm:gap-3 md:grid-cols-3">
         {choices.map((choice) => (
           <label
             key={choice.value}
-            className="flex min-h-16 cursor-pointer items-center gap-3 rounded-control border border-rule bg-card px-4 py-2 text-[1.125rem] leading-6 hover:border-ink has-checked:border-cord has-checked:bg-cord-wash has-checked:font-semibold has-checked:outline-1 has-checked:outline-cord has-focus-visible:outline-3 has-focus-visible:outline-offset-2 has-focus-visible:outline-focus"
+            className="flex min-h-14 cursor-pointer md:min-h-16 items-center gap-3 rounded-control border border-rule bg-card px-4 py-2 text-[1.125rem] leading-6 hover:border-ink has-checked:border-cord has-checked:bg-cord-wash has-checked:font-semibold has-checked:outline-1 has-checked:outline-cord has-focus-visible:outline-3 has-focus-visible:outline-offset-2 has-focus-visible:outline-focus"
           >
             <input type="radio" name={name} value={choice.value} checked={choice.value === value} onChange={() => onChange(choice.value)} className="size-5 shrink-0 accent-cord" />
             {choice.words}

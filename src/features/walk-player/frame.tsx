@@ -1,4 +1,5 @@
 import type { ReactNode } from 'react'
+import { useEffect, useRef } from 'react'
 import { Link } from 'react-router-dom'
 
 import type { ChecksLeft } from '#shared/walk/checks-left.ts'
@@ -31,25 +32,37 @@ type FrameProps = {
   readonly children: ReactNode
 }
 
-/** Around every page of a walk: the way back, where the walk stands, what was just recorded, and whether it is saved. */
+/**
+ * Around every page of a walk: the way back, where the walk stands, what was just recorded, and whether it is saved. The foot stays in
+ * sight while the page scrolls above it, so that nothing ever lies behind it.
+ */
 export function Frame({ saved, onRetry, panel, notices, children }: FrameProps) {
   const { isDemo } = useShell()
   const { pageKey } = usePlayer()
+  const shown = panel ?? pageKey
+  const sheet = useRef<HTMLDivElement>(null)
+  useEffect(() => {
+    sheet.current?.scrollTo({ top: 0 })
+  }, [shown])
   return (
-    <div data-mode="bench" className="flex min-h-dvh flex-col">
+    <div data-mode="bench" className="flex min-h-dvh flex-col [@media(min-height:520px)]:h-dvh">
       <SkipLink />
-      {isDemo && (
-        <div className="order-last md:order-none">
-          <DemoBanner />
-        </div>
-      )}
-      <Header panel={panel} />
-      {panel === null && <Strip />}
-      {panel === null && <Undo />}
-      <main id="content" key={panel ?? pageKey} className="corded flex grow flex-col">
-        {notices}
-        {children}
-      </main>
+      <div ref={sheet} className="flex min-h-0 grow flex-col overflow-x-hidden [@media(min-height:520px)]:overflow-y-auto">
+        {isDemo && (
+          <div className="order-last md:order-none">
+            <DemoBanner />
+          </div>
+        )}
+        <header>
+          <Header panel={panel} />
+          {panel === null && <Strip />}
+          {panel === null && <Undo />}
+        </header>
+        <main id="content" key={shown} className="corded flex grow flex-col">
+          {notices}
+          {children}
+        </main>
+      </div>
       <Foot saved={saved} onRetry={onRetry} panel={panel} />
     </div>
   )
@@ -58,13 +71,13 @@ export function Frame({ saved, onRetry, panel, notices, children }: FrameProps) 
 function Header({ panel }: { readonly panel: PanelName | null }) {
   const { walk, machineTitle } = usePlayer()
   return (
-    <header className="border-b border-rule bg-card [--knot-ground:var(--card)] [--mark-ground:var(--card)]">
+    <div className="border-b border-rule bg-card [--knot-ground:var(--card)] [--mark-ground:var(--card)]">
       <div className="corded flex min-h-(--bar-height) items-stretch justify-between gap-x-4">
         <BackButton panel={panel} />
         <p className="ml-auto min-w-0 self-center truncate text-small font-medium">{machineTitle}</p>
         <p className="label shrink-0 self-center">{formatMinutes(walk.minutesUsed)} used</p>
       </div>
-    </header>
+    </div>
   )
 }
 
@@ -184,7 +197,7 @@ function Foot({ saved, onRetry, panel }: Pick<FrameProps, 'saved' | 'onRetry' | 
   useShortcut(isPad ? '0' : null, 'No answer', noAnswer.toggle)
   const isLost = saved.kind === 'waiting' || saved.kind === 'stuck'
   return (
-    <footer className="z-1 border-t border-rule bg-card [--mark-ground:var(--card)] [@media(min-height:520px)]:sticky [@media(min-height:520px)]:bottom-0">
+    <footer className="border-t border-rule bg-card [--mark-ground:var(--card)]">
       {isLost && <LostBar saved={saved} onRetry={onRetry} />}
       <div className="corded flex min-h-14 flex-wrap items-center justify-between gap-x-4">
         <nav aria-label="Beside the check" className="flex flex-wrap gap-x-4 text-[1rem] sm:gap-x-8 sm:text-[1.125rem]">

@@ -25,7 +25,7 @@ export function Sheet({ what, answers, later }: SheetProps) {
       className={`grid grow gap-x-12 gap-y-4 pt-3 pb-4 md:gap-y-6 md:pt-4 lg:grid-cols-[minmax(0,1fr)_minmax(0,1fr)] lg:pt-6 lg:pb-6 ${later === undefined ? 'grid-rows-[auto_1fr] lg:grid-rows-1' : 'grid-rows-[auto_1fr_auto] lg:grid-rows-[auto_1fr]'}`}
     >
       <div className="max-w-words min-w-0 lg:col-start-1 lg:row-start-1">{what}</div>
-      <div className="flex min-w-0 flex-col justify-end lg:sticky lg:bottom-20 lg:col-start-2 lg:row-span-full lg:self-end">{answers}</div>
+      <div className="flex min-w-0 flex-col justify-end lg:sticky lg:bottom-6 lg:col-start-2 lg:row-span-full lg:self-end">{answers}</div>
       {later !== undefined && <div className="max-w-words min-w-0 lg:col-start-1 lg:row-start-2">{later}</div>}
     </div>
   )
