@@ -20,10 +20,10 @@ const reportSchema = z.object({
 const hasPostgres = existsSync('/usr/lib/postgresql')
 const isQuick = process.argv.includes('--quick')
 const counts: Count[] = []
-if (isQuick) {
-  counts.push(runPart({ words: 'Architecture and units', args: ['--project', 'unit'] }))
-} else {
-  counts.push(runPart({ words: 'Units, screens and the API on PGlite', args: ['--project', 'unit', '--project', 'ui', '--project', 'api'] }))
+// Units share their processes: most are over before a process of their own would have started.
+counts.push(runPart({ words: 'Architecture and units', args: ['--project', 'unit', '--no-isolate'] }))
+if (!isQuick) {
+  counts.push(runPart({ words: 'Screens and the API on PGlite', args: ['--project', 'ui', '--project', 'api'] }))
   counts.push(...(await runOnPostgres()))
   counts.push(runPart({ words: 'Processes', args: ['--project', 'process', ...(hasPostgres ? [] : ['--exclude', '**/postgres.test.ts'])] }))
   if (existsSync('/usr/bin/chromium')) counts.push(runPart({ words: 'Journeys in the browser', args: ['--project', 'e2e'] }))
@@ -44,7 +44,7 @@ async function runOnPostgres(): Promise<Count[]> {
     const environment = { PULLCORD_TEST_DATABASE_URL: server.url }
     return [
       runPart({ words: 'The API on PostgreSQL', args: ['--project', 'api'], environment }),
-      runPart({ words: 'The data layer on PostgreSQL', args: ['--project', 'unit', 'server/db'], environment }),
+      runPart({ words: 'The data layer on PostgreSQL', args: ['--project', 'unit', '--no-isolate', 'server/db'], environment }),
     ]
   } finally {
     await server.stop()

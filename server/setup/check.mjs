@@ -20,6 +20,7 @@ function run({ command, args }) {
 }
 
 const startedAt = Date.now()
+const running = run(node('--import', 'tsx', 'tests/run.ts', '--quick'))
 const results = await Promise.all(
   checks.map(async ([words, command]) => {
     const { isFine, output } = await run(command)
@@ -27,7 +28,7 @@ const results = await Promise.all(
     return isFine
   }),
 )
-const tests = await run(node('--import', 'tsx', 'tests/run.ts', '--quick'))
+const tests = await running
 process.stdout.write(tests.output)
 const [, unitsPassed = '0', unitsFailed = '1'] = /(\d+) passed, (\d+) failed\s*$/.exec(tests.output) ?? []
 const passed = results.filter(Boolean).length + Number(unitsPassed)
