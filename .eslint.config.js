@@ -12,7 +12,7 @@ export default tseslint.config(
     rules: {
       // A statement of the query builder is a thenable: without an await it is never sent.
       '@typescript-eslint/no-floating-promises': ['error', { checkThenables: true }],
-      '@typescript-eslint/no-misused-promises': ['error', { checksVoidReturn: { attributes: false, arguments: false, properties: false } }],
+      '@typescript-eslint/no-misused-promises': ['error', { checksVoidReturn: { attributes: false, arguments: false, properties: false }, checksSpreads: false }],
       '@typescript-eslint/await-thenable': 'error',
       '@typescript-eslint/no-explicit-any': 'error',
       '@typescript-eslint/no-non-null-assertion': 'error',

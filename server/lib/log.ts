@@ -14,7 +14,7 @@ const redactedPaths = secretFields.flatMap((field) => {
   return [field, `*${step}`, `*.*${step}`]
 })
 
-export type LogOptions = { readonly destination?: DestinationStream; readonly level?: 'debug' | 'info' | 'warn' }
+export type LogOptions = { readonly destination?: DestinationStream; readonly level?: 'debug' | 'info' | 'warn' | 'silent' }
 
 /**
  * Makes the log. Line breaks in what a person typed stay inside JSON strings, so no input can forge a line. Standard error by

@@ -10,6 +10,7 @@ import express from 'express'
 import { loadDemo } from '#seeds-demo/load-demo.ts'
 import { createApp } from '#server/app.ts'
 import { holdFolder } from '#server/db/folder-lock.ts'
+import { openDatabase } from '#server/db/open-database.ts'
 import { parseEnvironment } from '#server/lib/config.ts'
 import { createLog } from '#server/lib/log.ts'
 import { openShop } from '#server/open-shop.ts'
@@ -17,8 +18,9 @@ import { openShop } from '#server/open-shop.ts'
 const environment = parseEnvironment(process.env)
 if (!environment.ok) throw new Error(environment.error.join('\n'))
 const hold = await holdFolder(environment.value.dataFolder, 'server')
-const shop = await openShop({ environment: environment.value, hold, log: createLog({ level: 'silent' }) })
-const { db } = shop.deps
+const database = await openDatabase({ hold })
+const shop = await openShop(database, environment.value, createLog({ level: 'silent' }))
+const { db } = database
 await loadDemo(shop.deps)
 
 const rows = pgTable('bench_rows', { id: uuid().primaryKey(), walkId: uuid('walk_id').notNull(), seq: integer().notNull(), event: jsonb().notNull() })
@@ -37,7 +39,7 @@ const [app, reference] = await Promise.all(servers.map(listen))
 process.stdout.write(`${JSON.stringify({ app, reference })}\n`)
 process.once('SIGTERM', () => {
   for (const server of servers) server.closeAllConnections()
-  void shop.close().then(() => process.exit(0))
+  void database.close().then(() => process.exit(0))
 })
 
 async function listen(server: Server): Promise<string> {
