@@ -15,6 +15,7 @@ afterEach(() => {
 
 // What jsdom lacks and screens may ask for; what they measure is tried in a real browser.
 window.scrollTo = () => undefined
+Element.prototype.scrollIntoView ??= () => undefined
 globalThis.ResizeObserver ??= class {
   observe(): void {}
   unobserve(): void {}

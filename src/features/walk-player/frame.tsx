@@ -42,7 +42,7 @@ export function Frame({ saved, onRetry, panel, notices, children }: FrameProps) 
   const shown = panel ?? pageKey
   const sheet = useRef<HTMLDivElement>(null)
   useEffect(() => {
-    sheet.current?.scrollTo({ top: 0 })
+    if (sheet.current !== null) sheet.current.scrollTop = 0
   }, [shown])
   return (
     <div data-mode="bench" className="flex min-h-dvh flex-col [@media(min-height:520px)]:h-dvh">

@@ -10,6 +10,9 @@ import { usePlayer } from '#src/features/walk-player/player-context.ts'
 import { newId } from '#src/lib/device.ts'
 import type { EventDraft } from '#src/lib/walk-log.ts'
 
+/** What is asked where nothing was written: an answer of the lead always answers a question. */
+const plainQuestion = 'How do I go on from here?'
+
 /** The end of what the chart knows: what was skipped is shown once more, then the lead is asked. */
 export function AskPage({ page }: { readonly page: Page }) {
   const { record } = usePlayer()
@@ -18,8 +21,8 @@ export function AskPage({ page }: { readonly page: Page }) {
     if (toLengthWords(text) !== undefined) return
     // Made by newId, a UUID.
     const questionId = newId() as QuestionId
-    const question: readonly EventDraft[] = text.trim() === '' ? [] : [{ type: 'asked', payload: { questionId, text: text.trim(), photoIds: [] } }]
-    record([...question, { type: 'escalated', payload: { reason: page.reason } }], 'The lead is asked.')
+    const question: EventDraft = { type: 'asked', payload: { questionId, text: text.trim() === '' ? plainQuestion : text.trim(), photoIds: [] } }
+    record([question, { type: 'escalated', payload: { reason: page.reason } }], 'The lead is asked.')
   }
   return (
     <Sheet

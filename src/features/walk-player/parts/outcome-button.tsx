@@ -37,9 +37,10 @@ export function OutcomeButton({ numeral, title, words, look = 'plain', disabled 
         aria-expanded={expanded}
         className={`flex min-h-18 md:min-h-22 w-full items-center gap-4 rounded-control px-4 py-2 text-left transition-colors select-none hover:border-ink active:bg-cord-wash sm:gap-5 sm:px-5 ${looks[look]} ${disabled ? 'border-dashed text-ink-2' : ''}`}
       >
-        {numeral !== null && <Balloon numeral={numeral} look={look === 'open' ? 'open' : 'plain'} />}
+        {numeral !== null && <Balloon numeral={numeral} look={look === 'open' ? 'open' : 'plain'} />}{' '}
+        {/* The spaces are for ears: number, outcome and what it means are three things. */}
         <span className="grid min-w-0 gap-0.5">
-          <span className={`text-body leading-7 ${look === 'open' ? 'text-ink-2' : look === 'leading' ? 'font-semibold' : 'font-medium'}`}>{title}</span>
+          <span className={`text-body leading-7 ${look === 'open' ? 'text-ink-2' : look === 'leading' ? 'font-semibold' : 'font-medium'}`}>{title}</span>{' '}
           {words !== undefined && <span className="text-small leading-5 text-ink-2">{words}</span>}
         </span>
       </button>

@@ -1,3 +1,5 @@
+import type { RefusalCode } from '#shared/walk/refusals.ts'
+import { refusalWords } from '#shared/walk/refusals.ts'
 import { Button } from '#src/components/ui/button.tsx'
 import { Notice } from '#src/components/ui/notice.tsx'
 import { usePlayer } from '#src/features/walk-player/player-context.ts'
@@ -11,7 +13,7 @@ export function SetAsideNotice({ setAside, onRead }: { readonly setAside: readon
   const { charts, walk, format } = usePlayer()
   return (
     <Notice state="care" title={`${toCount(setAside.length, 'entry was', 'entries were')} set aside`} role="alert" className="mt-4">
-      <p>The walk went on elsewhere meanwhile. This is where it stands now. What was set aside is kept beside the log:</p>
+      <p>{toReason(setAside)} This is where the walk stands now. What was set aside is kept beside the log:</p>
       <ul role="list" className="my-2 text-small">
         {setAside.map(({ event }) => (
           <li key={event.id} className="border-b border-hair py-1">
@@ -22,4 +24,10 @@ export function SetAsideNotice({ setAside, onRead }: { readonly setAside: readon
       <Button onClick={onRead}>Understood</Button>
     </Notice>
   )
+}
+
+/** Why: a first event that was refused says so itself; else the log had moved on without this device. */
+function toReason([first]: readonly SetAside[]): string {
+  const isRefused = first !== undefined && first.status === 'refused' && Object.hasOwn(refusalWords, first.code)
+  return isRefused ? refusalWords[first.code as RefusalCode] : 'The walk went on elsewhere meanwhile.'
 }
