@@ -13,8 +13,13 @@ import { buildSession } from '#tests/support/session-builder.ts'
 import { uuid } from '#tests/support/walk-builder.ts'
 import { sawChart } from '#tests/support/walk-charts.ts'
 
-const junior = buildSession('junior').person
-if (junior === null) throw new Error('The junior is signed in.')
+const junior = signedIn()
+
+function signedIn() {
+  const { person } = buildSession('junior')
+  if (person === null) throw new Error('The junior is signed in.')
+  return person
+}
 
 beforeEach(() => void vi.useFakeTimers())
 afterEach(() => void vi.useRealTimers())
