@@ -6,7 +6,7 @@ import type { Db } from '#server/db/client.ts'
 import { people, sessions } from '#server/db/schema/people.ts'
 import { AppError } from '#server/lib/app-error.ts'
 import type { Deps } from '#server/lib/deps.ts'
-import { createLoader } from './loader.ts'
+import { createBatcher } from './batcher.ts'
 
 /** A session ends after so long without a request: a working day at a bench, not the quarter of an hour of a desk. */
 export const idleLimitSeconds = 12 * 3600
@@ -52,10 +52,8 @@ export async function startSession(tx: Db, deps: Deps, { personId, browser }: { 
   return started
 }
 
-type SessionRow = Awaited<ReturnType<typeof readSessions>>[number]
-
-function readSessions(db: Db, ids: readonly string[]) {
-  return db
+async function readSessions(db: Db, ids: readonly string[]) {
+  const rows = await db
     .select({
       id: sessions.id,
       secretHash: sessions.secretHash,
@@ -66,18 +64,19 @@ function readSessions(db: Db, ids: readonly string[]) {
     })
     .from(sessions)
     .innerJoin(people, eq(people.id, sessions.personId))
-    .where(inArray(sessions.id, [...ids]))
+    .where(inArray(sessions.id, [...new Set(ids)]))
+  const byId = new Map(rows.map((row) => [row.id, row]))
+  return ids.map((id) => byId.get(id) ?? null)
 }
 
-const loaders = new WeakMap<Db, (id: string) => Promise<SessionRow | null>>()
+type SessionRow = NonNullable<Awaited<ReturnType<typeof readSessions>>[number]>
 
-/** Reads a session for this request; requests that wait for the database at the same moment share one statement. */
+const batchers = new WeakMap<Db, (id: string) => Promise<SessionRow | null>>()
+
+/** Reads a session for this request; requests that wait at the same moment share one statement. */
 function loadSession(db: Db, id: string): Promise<SessionRow | null> {
-  let load = loaders.get(db)
-  if (load === undefined) {
-    load = createLoader((ids) => readSessions(db, ids), (row) => row.id)
-    loaders.set(db, load)
-  }
+  const load = batchers.get(db) ?? createBatcher((ids: readonly string[]) => readSessions(db, ids))
+  batchers.set(db, load)
   return load(id)
 }
 

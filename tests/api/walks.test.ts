@@ -163,6 +163,23 @@ describe('what becomes of an event', () => {
     expect(statuses(await send(clients.junior, walkId, [next, next]))).toEqual(['appended', 'duplicate'])
   })
 
+  test('batches of many walks at the same moment each get what they would get alone', async () => {
+    const walks = await Promise.all(Array.from({ length: 12 }, () => begun()))
+    const stolen = walks[0]?.events[1]?.id ?? ('' as EventId)
+    const bodies = walks.map(({ last }, order) => {
+      const next = after(last, note(`of walk ${order}`), order === 3 ? { id: stolen } : {})
+      return [next, after(next, order === 5 ? { type: 'run-passed', payload: { items: [] } } : note('and more'))]
+    })
+    const answers = await Promise.all(walks.map(({ walkId }, order) => send(clients.junior, walkId, bodies[order] ?? [])))
+    expect(answers.map(statuses)).toEqual(
+      walks.map((_, order) => (order === 3 ? ['conflict', 'fork'] : order === 5 ? ['appended', 'refused'] : ['appended', 'appended'])),
+    )
+    for (const [order, { walkId, events }] of walks.entries()) {
+      const added = order === 3 ? [] : (bodies[order] ?? []).slice(0, order === 5 ? 1 : 2)
+      expect((await clients.junior.get(`/api/walks/${walkId}`)).body['events']).toEqual([...events, ...added])
+    }
+  })
+
   test('after a restart, with nothing remembered, a log goes on where it ended', async () => {
     const { walkId, events, last } = await begun()
     const again = await openSecondProcess()

@@ -10,7 +10,7 @@ import { AppError } from '#server/lib/app-error.ts'
 import type { Deps } from '#server/lib/deps.ts'
 import { hashContent } from '#server/services/content-hash.ts'
 import type { CurrentSession } from '#server/services/sessions.ts'
-import { appendInOneStatement } from './append-fast.ts'
+import { appendTogether } from './append-together.ts'
 import { judgeBatch, type HashedEvent, type Judged, type KnownEvent } from './judge-batch.ts'
 import { readVetoes } from './vetoes.ts'
 import { catchUp, nothingYet, recall, remember, toPinned, withPeopleOf, withPinnedBy, type WalkMemory } from './walk-memory.ts'
@@ -49,7 +49,7 @@ async function tryAppend(deps: Deps, by: CurrentSession, walkId: WalkId, hashed:
     { charts: toPinned(memory.versions), state: memory.state, lastSeq: memory.lastSeq, actor: by.person, known: new Map(), vetoOf: () => null },
     hashed,
   )
-  if (judged.appended.length !== hashed.length || !(await appendInOneStatement(deps, walkId, memory, judged))) return null
+  if (judged.appended.length !== hashed.length || !(await appendTogether(deps, walkId, memory, judged))) return null
   remember(deps, walkId, { ...memory, lastSeq: judged.lastSeq, state: judged.state })
   return { results: [...judged.results], lastSeq: judged.lastSeq }
 }
