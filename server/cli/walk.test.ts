@@ -26,7 +26,8 @@ function ioWith(stdin = ''): Io {
   }
 }
 
-const replay = (args: readonly string[], stdin?: string) => (walkVerbs['replay'] ?? { run: () => Promise.reject(new Error('There is no such verb.')) }).run(args, ioWith(stdin))
+const replay = (args: readonly string[], stdin?: string) =>
+  (walkVerbs['replay'] ?? { run: () => Promise.reject(new Error('There is no such verb.')) }).run(args, ioWith(stdin))
 
 /** The log of a walk to a proven cause, by version 7 of its chart. */
 function logToCause(): WalkEvent[] {
@@ -62,7 +63,9 @@ describe('walk replay', () => {
   test('a refused event is named with its place, its code and its field, and nothing is printed', async () => {
     const [first, ...rest] = logToCause()
     const twice = [first, ...rest.slice(0, 2), { ...rest[1], id: uuid(2000), seq: 4 }]
-    await expect(replay([inFolder('saw.json'), await eventsFile(twice)])).rejects.toThrow(/^events\[3\] \(finding-recorded\): wrong-node at \/payload\/node: The walk has left this check/)
+    await expect(replay([inFolder('saw.json'), await eventsFile(twice)])).rejects.toThrow(
+      /^events\[3\] \(finding-recorded\): wrong-node at \/payload\/node: The walk has left this check/,
+    )
     const gap = logToCause().map((event, index) => (index === 2 ? { ...event, seq: 9 } : event))
     await expect(replay([inFolder('saw.json'), await eventsFile(gap)])).rejects.toThrow(/^events\[2\] .*wrong-seq at \/seq/)
   })
@@ -90,7 +93,16 @@ describe('walk replay', () => {
   test('jumps, and symptoms that were picked, resolve among the files beside the chart', async () => {
     const beside = await mkdtemp(join(tmpdir(), 'walk-beside-'))
     const bench = new Bench([jumpingChart, sealChart, otherChart])
-    bench.do([started(), tap('yes'), tap('else'), ({ place }) => [{ type: 'jumped', payload: { chartId: place('other/s').split('/')[0], startId: 's', version: 1, pins: {} } as never }], tap('yes')], true)
+    bench.do(
+      [
+        started(),
+        tap('yes'),
+        tap('else'),
+        ({ place }) => [{ type: 'jumped', payload: { chartId: place('other/s').split('/')[0], startId: 's', version: 1, pins: {} } as never }],
+        tap('yes'),
+      ],
+      true,
+    )
     await writeFile(join(beside, 'saw.json'), JSON.stringify(jumpingChart))
     await writeFile(join(beside, 'other.json'), JSON.stringify(otherChart))
     await writeFile(join(beside, 'events.json'), JSON.stringify(bench.log))
@@ -99,7 +111,11 @@ describe('walk replay', () => {
   })
 
   test('a one-way jump into a chart that is not beside the file asks the lead', async () => {
-    const away = sketchJson({ ...sawSketch, nodes: [...sawSketch.nodes, jump('j', 'nobody-wrote-it')], edges: sawSketch.edges.map((edge) => (edge === 'n1.yes > n2' ? 'n1.yes > j' : edge)) })
+    const away = sketchJson({
+      ...sawSketch,
+      nodes: [...sawSketch.nodes, jump('j', 'nobody-wrote-it')],
+      edges: sawSketch.edges.map((edge) => (edge === 'n1.yes > n2' ? 'n1.yes > j' : edge)),
+    })
     const log = logToCause().slice(0, 2)
     expect((await replay(['-', await eventsFile(log)], JSON.stringify(away))).json).toMatchObject({ phase: 'escalated', reason: 'not-here-yet' })
   })

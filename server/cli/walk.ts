@@ -19,7 +19,8 @@ export const walkVerbs: VerbTable = {
     does: 'the state that the events of a walk come to; a refused event is named',
     run: async (args, io) => {
       const [chartFile, eventsFile, ...more] = args
-      if (chartFile === undefined || eventsFile === undefined || more.length > 0) throw new BadInput('"walk replay" takes a CHART and a file of EVENTS; "-" reads standard input.')
+      if (chartFile === undefined || eventsFile === undefined || more.length > 0)
+        throw new BadInput('"walk replay" takes a CHART and a file of EVENTS; "-" reads standard input.')
       if (chartFile === '-' && eventsFile === '-') throw new BadInput('Only one of CHART and EVENTS can come from standard input.')
       const events = parseEvents(eventsFile === '-' ? 'Standard input' : eventsFile, await io.read(eventsFile))
       return { json: judgeAll(await readCharts(chartFile, events, io), events) }

@@ -39,7 +39,10 @@ function utf8Length(text: string): number {
 const note = z.string().refine((text) => utf8Length(text) <= noteMaxBytes, refusalWords['note-too-long'])
 const filledNote = note.refine((text) => text.trim() !== '', 'Write a word.')
 const word = z.string().trim().min(1, 'Write a word.').max(200, 'At most 200 characters.')
-const seconds = z.number().min(0).max(86_400 * 30)
+const seconds = z
+  .number()
+  .min(0)
+  .max(86_400 * 30)
 const photoIds = z.array(photoIdSchema).max(20)
 
 /** The machine on the bench. */

@@ -83,8 +83,7 @@ const evolvers: { readonly [Type in Exclude<WalkEventType, 'started'>]: Evolver<
   jumped: pickSymptom,
   'suspect-named': nameSuspect,
   'cause-proven': proveCause,
-  'cause-not-proven': (charts, walk, event) =>
-    walk.phase === 'at-cause' ? ruleOut(charts, walk, event, walk.causeId) : walk,
+  'cause-not-proven': (charts, walk, event) => (walk.phase === 'at-cause' ? ruleOut(charts, walk, event, walk.causeId) : walk),
   'contributing-set': (_charts, walk, { payload }) => ({ ...walk, contributing: payload.causeIds }),
   'service-changed': changeService,
   asked: (_charts, walk, { id, at, personId, payload }) => ({
@@ -116,8 +115,7 @@ const evolvers: { readonly [Type in Exclude<WalkEventType, 'started'>]: Evolver<
           { metal: { ...walk.metal, defeated: [] } },
         )
       : walk,
-  'run-failed': (charts, walk, event) =>
-    walk.phase === 'repaired' ? ruleOut(charts, walk, event, walk.cause.causeId) : walk,
+  'run-failed': (charts, walk, event) => (walk.phase === 'repaired' ? ruleOut(charts, walk, event, walk.cause.causeId) : walk),
   'note-added': (_charts, walk, event) => addNote(walk, event, walk.node, false),
   flagged: (_charts, walk, event) => addNote(walk, event, event.payload.node, true),
   'check-noted': (_charts, walk, { id, at, payload }) => ({ ...walk, notedChecks: [...walk.notedChecks, { ...payload, eventId: id, at }] }),
@@ -151,7 +149,6 @@ function causeInHand(charts: PinnedCharts, walk: OpenWalk): CauseId | null {
   const node = walk.phase === 'at-node' ? locate(charts, walk.pins, walk.node)?.node : undefined
   return node?.kind === 'hold' ? (node.causeId ?? null) : null
 }
-
 
 function notice(charts: PinnedCharts, walk: OpenWalk, event: EventOf<'noticed'>): StartedWalk {
   const { payload, seq } = event

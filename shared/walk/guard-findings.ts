@@ -21,7 +21,11 @@ interface Given {
 }
 
 /** What an event says about one answer, with its values in a list. */
-function givenBy(payload: { outcome: string; value?: number | undefined; unit?: Unit | undefined }, judgedBy: Given['judgedBy'] = null, values?: readonly number[]): Given {
+function givenBy(
+  payload: { outcome: string; value?: number | undefined; unit?: Unit | undefined },
+  judgedBy: Given['judgedBy'] = null,
+  values?: readonly number[],
+): Given {
   return { outcome: payload.outcome, values: values ?? (payload.value === undefined ? [] : [payload.value]), unit: payload.unit, judgedBy }
 }
 
@@ -82,10 +86,13 @@ function figuresOf(limits: SpecLimit): readonly { min?: number | undefined; max?
 function sameLimits(left: SpecLimit, right: SpecLimit | null): boolean {
   const others = right === null ? [] : figuresOf(right)
   const figures = figuresOf(left)
-  return figures.length === others.length && figures.every(({ min, max, unit }, index) => {
-    const other = others[index]
-    return other !== undefined && other.min === min && other.max === max && other.unit === unit
-  })
+  return (
+    figures.length === others.length &&
+    figures.every(({ min, max, unit }, index) => {
+      const other = others[index]
+      return other !== undefined && other.min === min && other.max === max && other.unit === unit
+    })
+  )
 }
 
 function faultOfValues({ values, value }: EventOf<'finding-recorded'>['payload'], judging: Judging | null): Refusal | null {

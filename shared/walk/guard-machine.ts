@@ -19,7 +19,8 @@ function areExactly(pending: readonly Pending[], ids: readonly CautionId[]): boo
 function* acknowledgeable(charts: PinnedCharts, walk: OpenWalk, { node }: EventOf<'caution-acknowledged'>['payload']): Generator<readonly Pending[]> {
   const page = pageNodes(charts, walk)
   const isHere = node === walk.node || node === page?.target.position.node
-  if (page && node === page.target.position.node && walk.phase === 'at-node') yield pendingOf(walk, actOfNodes(walk.metal, inOrder(page)), (read) => read === node)
+  if (page && node === page.target.position.node && walk.phase === 'at-node')
+    yield pendingOf(walk, actOfNodes(walk.metal, inOrder(page)), (read) => read === node)
   const check = locateDecision(charts, walk, node)
   if (!isHere && check && chartsOnStack(charts, walk).includes(check.index)) yield pendingOf(walk, actOfNodes(walk.metal, [check]), (read) => read === node)
   if (!isHere) return
@@ -68,5 +69,9 @@ export function faultOfAccess(charts: PinnedCharts, walk: OpenWalk, { payload }:
 
 function cautionsOf(charts: PinnedCharts, walk: OpenWalk, id: AccessId) {
   const ids = accessOnStack(charts, walk, id)?.cautions ?? []
-  return ids.flatMap((cautionId) => chartsOnStack(charts, walk).flatMap((index) => index.cautions.get(cautionId) ?? []).slice(0, 1))
+  return ids.flatMap((cautionId) =>
+    chartsOnStack(charts, walk)
+      .flatMap((index) => index.cautions.get(cautionId) ?? [])
+      .slice(0, 1),
+  )
 }

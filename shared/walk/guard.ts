@@ -98,8 +98,7 @@ const rules: { readonly [Type in Exclude<WalkEventType, 'started'>]: Rule<Type> 
   'run-failed': {
     during: ['repaired'],
     fault: (_charts, walk, { payload }) =>
-      faultOfRunItems(walk, payload.items) ??
-      (payload.items.some(({ result }) => result === 'failed') ? null : refuse('nothing-failed', '/payload/items')),
+      faultOfRunItems(walk, payload.items) ?? (payload.items.some(({ result }) => result === 'failed') ? null : refuse('nothing-failed', '/payload/items')),
   },
   'note-added': { during: anyOpen, whilePaused: true },
   flagged: {
@@ -159,7 +158,9 @@ function faultOfShape(event: WalkEvent): Refusal | null {
   const issue = walkEventSchema.safeParse(event).error?.issues[0]
   if (issue === undefined) return null
   const field = issue.path.length === 0 ? null : `/${issue.path.map(String).join('/')}`
-  return issue.message === refusalWords['note-too-long'] ? refuse('note-too-long', field) : refuse('malformed', field, `${refusalWords.malformed} (${issue.message})`)
+  return issue.message === refusalWords['note-too-long']
+    ? refuse('note-too-long', field)
+    : refuse('malformed', field, `${refusalWords.malformed} (${issue.message})`)
 }
 
 /** One device and one person hold a walk. */
@@ -244,7 +245,11 @@ function faultOfTakeOver(_charts: PinnedCharts, walk: OpenWalk, { personId, payl
 }
 
 /** The ids that can be ticked on a list now; `null` when the list is not open. */
-function tickable(charts: PinnedCharts, walk: OpenWalk & { readonly cause: ProvenCause }, list: EventOf<'ticked'>['payload']['list']): readonly string[] | null {
+function tickable(
+  charts: PinnedCharts,
+  walk: OpenWalk & { readonly cause: ProvenCause },
+  list: EventOf<'ticked'>['payload']['list'],
+): readonly string[] | null {
   switch (list) {
     case 'fix':
       return walk.phase === 'proven' ? fixItems(charts, walk, walk.cause).map(({ id }) => id) : null

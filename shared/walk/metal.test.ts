@@ -85,7 +85,10 @@ describe('opening access', () => {
   })
 
   test('of a node its own list opens what excludes others last: a proof pays for the plug and runs with it in', () => {
-    for (const needs of [['plug-out', 'warm'], ['warm', 'plug-out']]) {
+    for (const needs of [
+      ['plug-out', 'warm'],
+      ['warm', 'plug-out'],
+    ]) {
       const done = entering({}, { needs })
       expect(done.opened).toEqual(ids('top-off', 'cool', 'plug-out', 'warm'))
       expect(done.minutes).toBe(9)

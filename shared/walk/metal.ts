@@ -148,7 +148,12 @@ export function openOne(metal: Metal, index: ChartIndex, id: AccessId): Worked {
 }
 
 /** What an `access-changed` says was done, taken at its word: first closed, then opened one by one, each charged once. */
-export function changeAccess(metal: Metal, definitionOf: (id: AccessId) => Access | undefined, opened: readonly AccessId[], closed: readonly AccessId[]): Worked {
+export function changeAccess(
+  metal: Metal,
+  definitionOf: (id: AccessId) => Access | undefined,
+  opened: readonly AccessId[],
+  closed: readonly AccessId[],
+): Worked {
   const bench = benchOf(metal)
   close(bench, closed)
   for (const id of opened) {

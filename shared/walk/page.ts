@@ -1,5 +1,18 @@
 import type { Cause, ChartNode } from '#shared/chart/document.ts'
-import type { AccessId, CauseId, CautionId, ChartId, EventId, NodeId, OutcomeId, PhotoId, Place, QuestionId, SafetyPartId, ServiceItemId } from '#shared/lib/ids.ts'
+import type {
+  AccessId,
+  CauseId,
+  CautionId,
+  ChartId,
+  EventId,
+  NodeId,
+  OutcomeId,
+  PhotoId,
+  Place,
+  QuestionId,
+  SafetyPartId,
+  ServiceItemId,
+} from '#shared/lib/ids.ts'
 import type { RunListItem } from '#shared/trade/hand-back-run.ts'
 import type { Harm, SignalWord } from '#shared/trade/signal-words.ts'
 import type { SpecLimit } from '#shared/units/limits.ts'
@@ -389,4 +402,3 @@ export type WalkPage =
   | AbandonedPage
   | PausedPage
   | LostPage
-

@@ -61,13 +61,20 @@ export function placeOf(index: ChartIndex, nodeId: NodeId): Place {
 }
 
 /** The charts that a walk is in: the one where it stands, then those that called it, the nearest first. */
-export function chartsOnStack(charts: PinnedCharts, walk: { readonly pins: Pins; readonly node: Place; readonly calls: readonly Place[] }): readonly ChartIndex[] {
+export function chartsOnStack(
+  charts: PinnedCharts,
+  walk: { readonly pins: Pins; readonly node: Place; readonly calls: readonly Place[] },
+): readonly ChartIndex[] {
   const ids = new Set([walk.node, ...walk.calls.toReversed()].map((place) => splitPlace(place).chartId))
   return [...ids].flatMap((chartId) => chartOf(charts, walk.pins, chartId) ?? [])
 }
 
 /** An access as the walk's charts define it: the chart where it stands first, then those that called it, then any other that it pins. */
-export function accessOnStack(charts: PinnedCharts, walk: { readonly pins: Pins; readonly node: Place; readonly calls: readonly Place[] }, id: AccessId): Access | undefined {
+export function accessOnStack(
+  charts: PinnedCharts,
+  walk: { readonly pins: Pins; readonly node: Place; readonly calls: readonly Place[] },
+  id: AccessId,
+): Access | undefined {
   for (const index of [...chartsOnStack(charts, walk), ...chartsOf(charts, walk.pins)]) {
     const access = index.access.get(id)
     if (access !== undefined) return access

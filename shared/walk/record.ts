@@ -66,10 +66,7 @@ export function afterWork(walk: WalkRecord, done: Worked, seq: number, minutes =
 }
 
 /** The cautions read so far, some of them rewritten. */
-export function rereadCautions(
-  walk: WalkRecord,
-  rewrite: (read: CautionRead, cautionId: CautionId) => CautionRead,
-): WalkRecord['cautionsRead'] {
+export function rereadCautions(walk: WalkRecord, rewrite: (read: CautionRead, cautionId: CautionId) => CautionRead): WalkRecord['cautionsRead'] {
   const entries = Object.entries(walk.cautionsRead) as [CautionId, CautionRead][]
   return Object.fromEntries(entries.map(([id, read]) => [id, rewrite(read, id)]))
 }

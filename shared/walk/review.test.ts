@@ -1,6 +1,23 @@
 import { describe, expect, test } from 'vitest'
 
-import { act, answer, backTo, closedAs, found, noticed, proven, repaired, revs, runFailed, runPassed, skipped, started, storiesOn, tap, type Act } from '#tests/support/walk-builder.ts'
+import {
+  act,
+  answer,
+  backTo,
+  closedAs,
+  found,
+  noticed,
+  proven,
+  repaired,
+  revs,
+  runFailed,
+  runPassed,
+  skipped,
+  started,
+  storiesOn,
+  tap,
+  type Act,
+} from '#tests/support/walk-builder.ts'
 import { jumpingChart, otherChart, sawChart, sealChart } from '#tests/support/walk-charts.ts'
 import { routeLegs, toReview, type ReviewLine } from './review.ts'
 
@@ -14,10 +31,25 @@ function told(...acts: Act[]): readonly ReviewLine[] {
 }
 
 describe('the story of a walk', () => {
-  const whole = told(started(), tap('yes'), revs(9850), tap('dusty'), tap('good'), backTo('n3'), tap('dark'), revs(12_400), proven, repaired, runPassed, closedAs('repaired'))
+  const whole = told(
+    started(),
+    tap('yes'),
+    revs(9850),
+    tap('dusty'),
+    tap('good'),
+    backTo('n3'),
+    tap('dark'),
+    revs(12_400),
+    proven,
+    repaired,
+    runPassed,
+    closedAs('repaired'),
+  )
 
   test('tells every event in order, each finding with its balloon, its judgement and its minutes', () => {
-    expect(whole.map(({ type, node, outcome, judgement, minutes }) => [type, node.number, outcome?.title ?? null, outcome?.balloon ?? null, judgement, minutes])).toEqual([
+    expect(
+      whole.map(({ type, node, outcome, judgement, minutes }) => [type, node.number, outcome?.title ?? null, outcome?.balloon ?? null, judgement, minutes]),
+    ).toEqual([
       ['started', '', null, null, null, 0],
       ['finding-recorded', '1', 'It does it', 1, 'reproduced', 5],
       ['finding-recorded', '2', 'Low', 1, 'off', 1],
@@ -58,13 +90,27 @@ describe('the story of a walk', () => {
       act('escalated', { reason: 'Never seen this' }),
       act('paused', { why: 'Lunch' }),
     )
-    expect(lines.flatMap(({ text }) => text ?? [])).toEqual(['Smells sour', 'Top cover off', 'Top cover off: closed', 'Blue', 'Measured: sound', 'Never seen this', 'Lunch'])
+    expect(lines.flatMap(({ text }) => text ?? [])).toEqual([
+      'Smells sour',
+      'Top cover off',
+      'Top cover off: closed',
+      'Blue',
+      'Measured: sound',
+      'Never seen this',
+      'Lunch',
+    ])
     expect(lines.find(({ type }) => type === 'check-skipped')).toMatchObject({ judgement: 'no-answer', noAnswer: 'cannot' })
   })
 
   test('a finding that a failed run spent says so', () => {
     const lines = told(started(), tap('yes'), revs(9850), tap('dark'), revs(12_400), proven, repaired, runFailed, found('p3', 'still'))
-    expect(lines.filter(({ type }) => type === 'finding-recorded').map(({ judgement, spent }) => [judgement, spent])).toEqual([['reproduced', null], ['off', null], ['off', null], ['proven', 'run-failed'], ['not-proven', null]])
+    expect(lines.filter(({ type }) => type === 'finding-recorded').map(({ judgement, spent }) => [judgement, spent])).toEqual([
+      ['reproduced', null],
+      ['off', null],
+      ['off', null],
+      ['proven', 'run-failed'],
+      ['not-proven', null],
+    ])
   })
 })
 
@@ -83,7 +129,11 @@ describe('the route over the charts', () => {
 
   test('leads through jumps into other charts and back', () => {
     jumps.given(started(), tap('yes'), tap('seal'), tap('tight')).then((walk, { charts }) => {
-      expect(routeLegs(charts, walk).slice(2).map(({ from, to, outcome }) => [from, outcome, to])).toEqual([
+      expect(
+        routeLegs(charts, walk)
+          .slice(2)
+          .map(({ from, to, outcome }) => [from, outcome, to]),
+      ).toEqual([
         ['saw/n2', 'seal', 'saw/j-seal'],
         ['saw/j-seal', null, 'seal/s'],
         ['seal/s', null, 'seal/k1'],
@@ -91,13 +141,25 @@ describe('the route over the charts', () => {
         ['seal/back', null, 'saw/n3'],
       ])
     })
-    jumps.given(started(), tap('yes'), tap('else'), act('jumped', { chartId: 'other', version: 1, startId: 's', pins: {} } as never)).then((walk, { charts }) => {
-      expect(routeLegs(charts, walk).slice(2).map(({ from, to }) => [from, to])).toEqual([['saw/n2', 'saw/j-pick'], ['saw/j-pick', 'other/s'], ['other/s', 'other/n6']])
-    })
+    jumps
+      .given(started(), tap('yes'), tap('else'), act('jumped', { chartId: 'other', version: 1, startId: 's', pins: {} } as never))
+      .then((walk, { charts }) => {
+        expect(
+          routeLegs(charts, walk)
+            .slice(2)
+            .map(({ from, to }) => [from, to]),
+        ).toEqual([
+          ['saw/n2', 'saw/j-pick'],
+          ['saw/j-pick', 'other/s'],
+          ['other/s', 'other/n6'],
+        ])
+      })
   })
 
   test('ends at a dead end', () => {
-    jumps.given(started(), tap('yes'), tap('missing')).then((walk, { charts }) => expect(routeLegs(charts, walk).at(-1)).toMatchObject({ from: 'saw/n2', to: 'saw/j-missing' }))
+    jumps
+      .given(started(), tap('yes'), tap('missing'))
+      .then((walk, { charts }) => expect(routeLegs(charts, walk).at(-1)).toMatchObject({ from: 'saw/n2', to: 'saw/j-missing' }))
     given(started(), skipped('n1', 'not-reproduced')).then((walk, { charts }) => expect(routeLegs(charts, walk)).toHaveLength(1))
   })
 })

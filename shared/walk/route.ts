@@ -54,9 +54,7 @@ function passJump(charts: PinnedCharts, who: Wayfarer, index: ChartIndex, node: 
   const entry = target ? entryOf(target, node.at) : undefined
   const here = placeOf(index, node.id)
   if (target === null || entry === undefined) {
-    return node.returns
-      ? { kind: 'missing', chartId: node.chart ?? null, to: follow(index, node.id) }
-      : { kind: 'dead-end', deadEnd: 'not-here-yet' }
+    return node.returns ? { kind: 'missing', chartId: node.chart ?? null, to: follow(index, node.id) } : { kind: 'dead-end', deadEnd: 'not-here-yet' }
   }
   if (!node.returns) return { kind: 'on', to: entry, index: target, calls: [], oneWay: true }
   return calls.includes(here) ? { kind: 'dead-end', deadEnd: 'ring' } : { kind: 'on', to: entry, index: target, calls: [...calls, here] }

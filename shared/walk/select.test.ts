@@ -1,7 +1,27 @@
 import { describe, expect, test } from 'vitest'
 
 import { ask, buildChart, cause, check, jump, proof, reading, start, step } from '#tests/support/chart-builder.ts'
-import { access, act, answer, asked, backTo as stepBackTo, by, found, notProven, proven, questionId, repaired, revs, runPassed, skipped, started, storiesOn, tap, type Act } from '#tests/support/walk-builder.ts'
+import {
+  access,
+  act,
+  answer,
+  asked,
+  backTo as stepBackTo,
+  by,
+  found,
+  notProven,
+  proven,
+  questionId,
+  repaired,
+  revs,
+  runPassed,
+  skipped,
+  started,
+  storiesOn,
+  tap,
+  type Act,
+} from '#tests/support/walk-builder.ts'
+import { toReading, toFilter, toCause } from '#tests/support/saw-stories.ts'
 import { jumpingChart, otherChart, sawChart, sealChart } from '#tests/support/walk-charts.ts'
 import { checksLeft, type ChecksLeft } from './checks-left.ts'
 import { backTo, knots, openAccess, passedOver, questionWords } from './select.ts'
@@ -9,16 +29,24 @@ import { isOpen } from './state.ts'
 
 const { given } = storiesOn(sawChart)
 const jumps = storiesOn(jumpingChart, sealChart, otherChart)
-const toReading = [started(), tap('yes')]
-const toFilter = [...toReading, revs(9850)]
-const toCause = [...toFilter, tap('dark'), revs(12_400)]
 
 describe('the page of a check', () => {
   test('shows its number, its words, its outcomes with balloons, and what recording it opens', () => {
     given(...toFilter, tap('good')).thenPage('check', (page) => {
       expect(page.node).toMatchObject({ place: 'saw/n4', number: '4', title: 'Look at n4', chartTitle: 'No guts', minutes: 1 })
-      expect(page.outcomes.map(({ balloon, title, isNormal }) => [balloon, title, isNormal])).toEqual([[1, 'Good', true], [2, 'Stripe', false]])
-      expect(page.entering).toMatchObject({ minutes: 5, machine: 'stopped', opens: [{ accessId: 'lead-off', title: 'Lead off', minutes: 1 }, { accessId: 'cover-off', minutes: 4 }], closes: [] })
+      expect(page.outcomes.map(({ balloon, title, isNormal }) => [balloon, title, isNormal])).toEqual([
+        [1, 'Good', true],
+        [2, 'Stripe', false],
+      ])
+      expect(page.entering).toMatchObject({
+        minutes: 5,
+        machine: 'stopped',
+        opens: [
+          { accessId: 'lead-off', title: 'Lead off', minutes: 1 },
+          { accessId: 'cover-off', minutes: 4 },
+        ],
+        closes: [],
+      })
       expect(page.noAnswer).toEqual({ ifSkipped: { outcome: 'good', title: 'Good' }, endsWalk: false })
     })
   })
@@ -33,8 +61,21 @@ describe('the page of a check', () => {
   })
 
   test('from the tenth outcome on there is no balloon', () => {
-    const many = buildChart({ id: 'saw', nodes: [start(), check('n1', Array.from({ length: 10 }, (_, index) => `o${index}`)), ask()], edges: ['s > n1'] })
-    storiesOn(many).given(started()).thenPage('check', (page) => expect(page.outcomes.map(({ balloon }) => balloon)).toEqual([1, 2, 3, 4, 5, 6, 7, 8, 9, null]))
+    const many = buildChart({
+      id: 'saw',
+      nodes: [
+        start(),
+        check(
+          'n1',
+          Array.from({ length: 10 }, (_, index) => `o${index}`),
+        ),
+        ask(),
+      ],
+      edges: ['s > n1'],
+    })
+    storiesOn(many)
+      .given(started())
+      .thenPage('check', (page) => expect(page.outcomes.map(({ balloon }) => balloon)).toEqual([1, 2, 3, 4, 5, 6, 7, 8, 9, null]))
   })
 
   test('access of the steps on the page is told with that of the check', () => {
@@ -49,7 +90,11 @@ describe('the page of a reading', () => {
   test('carries its limits, its bands and its buttons', () => {
     given(...toReading).thenPage('reading', (page) => {
       expect(page.judging).toMatchObject({ limits: { min: 11_000, unit: '1/min' }, repeat: null, proof: null })
-      expect(page.outcomes.map(({ title, isBanded }) => [title, isBanded])).toEqual([['Low', true], ['In limits', true], ['Never settles', false]])
+      expect(page.outcomes.map(({ title, isBanded }) => [title, isBanded])).toEqual([
+        ['Low', true],
+        ['In limits', true],
+        ['Never settles', false],
+      ])
     })
   })
 })
@@ -57,42 +102,71 @@ describe('the page of a reading', () => {
 describe('the page of a proof', () => {
   test('sets the reading before the change beside what is to be measured, and says what proves it', () => {
     given(...toFilter, tap('dark')).thenPage('proof', (page) => {
-      expect(page).toMatchObject({ by: 'isolation', suspect: { title: 'Filter packed', isUnsafe: false }, before: { title: 'Low', answer: { value: 9850 } }, compares: { place: 'saw/n2' } })
+      expect(page).toMatchObject({
+        by: 'isolation',
+        suspect: { title: 'Filter packed', isUnsafe: false },
+        before: { title: 'Low', answer: { value: 9850 } },
+        compares: { place: 'saw/n2' },
+      })
       expect(page.judging?.proof).toEqual({ confirmsWhen: ['in'], confirming: 'gone', refuting: 'still' })
     })
   })
 
   const before = buildChart({
     id: 'saw',
-    access: [{ id: 'warm', title: 'Warm', minutes: 3 }, { id: 'chain-off', title: 'Chain off', minutes: 2, closeMinutes: 1 }],
-    nodes: [start(), check('n1', ['good', 'dark']), reading('n2', { needs: ['warm'], minutes: 1 }), proof('p1', 'band-drags', { needs: ['chain-off', 'warm'], compares: { node: 'n2', confirmsWhen: ['in'] } }), cause('c1', 'band-drags'), ask()],
+    access: [
+      { id: 'warm', title: 'Warm', minutes: 3 },
+      { id: 'chain-off', title: 'Chain off', minutes: 2, closeMinutes: 1 },
+    ],
+    nodes: [
+      start(),
+      check('n1', ['good', 'dark']),
+      reading('n2', { needs: ['warm'], minutes: 1 }),
+      proof('p1', 'band-drags', { needs: ['chain-off', 'warm'], compares: { node: 'n2', confirmsWhen: ['in'] } }),
+      cause('c1', 'band-drags'),
+      ask(),
+    ],
     edges: ['s > n1', 'n1.good > n2', 'n1.dark > p1', 'n2.low > ask', 'n2.in > ask', 'p1.gone > c1', 'p1.still > n2'],
   })
 
   test('takes the reading first where there is none, each page with the access that is its own', () => {
-    storiesOn(before).given(started(), tap('dark')).thenPage('before', (page) => {
-      expect(page.node.place).toBe('saw/n2')
-      expect(page.entering.opens.map(({ accessId }) => accessId)).toEqual(['warm'])
-      expect(page.proof.entering.opens.map(({ accessId }) => accessId)).toEqual(['chain-off'])
-      expect(page.judging?.proof).toBeNull()
-      expect(page.proof.judging?.proof).not.toBeNull()
-    })
+    storiesOn(before)
+      .given(started(), tap('dark'))
+      .thenPage('before', (page) => {
+        expect(page.node.place).toBe('saw/n2')
+        expect(page.entering.opens.map(({ accessId }) => accessId)).toEqual(['warm'])
+        expect(page.proof.entering.opens.map(({ accessId }) => accessId)).toEqual(['chain-off'])
+        expect(page.judging?.proof).toBeNull()
+        expect(page.proof.judging?.proof).not.toBeNull()
+      })
   })
 
   test('that was answered before a step back can be recorded again with all that was taken for it', () => {
     const proved = answer({ values: [12_100], unit: '1/min', before: { values: [9000], unit: '1/min' } })
-    storiesOn(before).given(started(), tap('dark'), proved, stepBackTo('p1')).thenPage('before', (page) => expect(page.proof.offered?.answer).toEqual({ outcome: 'gone', value: 12_100, unit: '1/min' }))
-    storiesOn(before).given(started(), tap('dark'), proved, stepBackTo('p1')).when((bench) => found('p1', 'gone', { value: 12_100, unit: '1/min', judgedBy: 'limits', reuses: bench.eventAt('p1') })(bench)).thenAt('c1').then((walk) => {
-      expect(walk.trail.at(-1)).toMatchObject({ before: { outcome: 'low', value: 9000 }, minutes: 0 })
-    })
+    storiesOn(before)
+      .given(started(), tap('dark'), proved, stepBackTo('p1'))
+      .thenPage('before', (page) => expect(page.proof.offered?.answer).toEqual({ outcome: 'gone', value: 12_100, unit: '1/min' }))
+    storiesOn(before)
+      .given(started(), tap('dark'), proved, stepBackTo('p1'))
+      .when((bench) => found('p1', 'gone', { value: 12_100, unit: '1/min', judgedBy: 'limits', reuses: bench.eventAt('p1') })(bench))
+      .thenAt('c1')
+      .then((walk) => {
+        expect(walk.trail.at(-1)).toMatchObject({ before: { outcome: 'low', value: 9000 }, minutes: 0 })
+      })
   })
 })
 
 describe('the page of a cause', () => {
   test('names the finding that proves it, or asks for a second look', () => {
     given(...toCause).thenPage('cause', (page) => expect(page).toMatchObject({ cause: { title: 'Filter packed', system: 'air' }, proof: { place: 'saw/p3' } }))
-    const bare = buildChart({ id: 'saw', nodes: [start(), check('n1', ['good', 'bad']), cause('c1', 'band-drags'), ask()], edges: ['s > n1', 'n1.good > ask', 'n1.bad > c1'] })
-    storiesOn(bare).given(started(), tap('bad')).thenPage('cause', (page) => expect([page.proofEventId, page.proof]).toEqual([null, null]))
+    const bare = buildChart({
+      id: 'saw',
+      nodes: [start(), check('n1', ['good', 'bad']), cause('c1', 'band-drags'), ask()],
+      edges: ['s > n1', 'n1.good > ask', 'n1.bad > c1'],
+    })
+    storiesOn(bare)
+      .given(started(), tap('bad'))
+      .thenPage('cause', (page) => expect([page.proofEventId, page.proof]).toEqual([null, null]))
   })
 
   test('once proven it shows the proof, the fix, and service items to choose from', () => {
@@ -104,10 +178,13 @@ describe('the page of a cause', () => {
 
   test('the run lists the items of the machine, each with its limits where it has any', () => {
     const limits = { fullSpeed: { min: 11_000, unit: '1/min' } }
-    given(started({ limits: limits as never }), ...toCause.slice(1), proven, repaired, act('ticked', { list: 'run', id: 'full-speed', on: true })).thenPage('run', (page) => {
-      expect(page.items.find(({ id }) => id === 'full-speed')).toMatchObject({ isTicked: true, limits: { min: 11_000 } })
-      expect([page.items.length > 5, page.isComplete]).toEqual([true, false])
-    })
+    given(started({ limits: limits as never }), ...toCause.slice(1), proven, repaired, act('ticked', { list: 'run', id: 'full-speed', on: true })).thenPage(
+      'run',
+      (page) => {
+        expect(page.items.find(({ id }) => id === 'full-speed')).toMatchObject({ isTicked: true, limits: { min: 11_000 } })
+        expect([page.items.length > 5, page.isComplete]).toEqual([true, false])
+      },
+    )
     given(...toCause, proven, repaired, runPassed).thenPage('run-passed', (page) => expect(page.run).toHaveLength(page.run.length))
   })
 })
@@ -115,21 +192,34 @@ describe('the page of a cause', () => {
 describe('the page of an escalation', () => {
   test('says why in words, what was skipped, what was ruled out, and what the lead was asked', () => {
     given(...toFilter, skipped('n3'), tap('good'), asked, act('escalated', { reason: 'Never seen this' })).thenPage('escalated', (page) => {
-      expect(page).toMatchObject({ reasonWords: 'Never seen this', at: { place: 'saw/n5' }, skipped: [{ node: { place: 'saw/n3' } }], questions: [{ text: 'Is this a rub stripe?', answer: null }] })
+      expect(page).toMatchObject({
+        reasonWords: 'Never seen this',
+        at: { place: 'saw/n5' },
+        skipped: [{ node: { place: 'saw/n3' } }],
+        questions: [{ text: 'Is this a rub stripe?', answer: null }],
+      })
       expect(page.results).toContain('no-cause-found')
     })
     given(started(), skipped('n1', 'not-reproduced')).thenPage('escalated', (page) => {
       expect(page.reasonWords).toMatch(/does not show/)
       expect(page.results[0]).toBe('not-reproduced')
     })
-    const one = buildChart({ id: 'saw', nodes: [start(), check('n1', ['a', 'b']), cause('c1', 'x'), cause('c2', 'x')], edges: ['s > n1', 'n1.a > c1', 'n1.b > c2'] })
-    storiesOn(one).given(started(), tap('a'), notProven).thenPage('escalated', (page) => expect(page.ruledOut).toMatchObject([{ cause: { causeId: 'x' }, how: 'cause-not-proven' }]))
+    const one = buildChart({
+      id: 'saw',
+      nodes: [start(), check('n1', ['a', 'b']), cause('c1', 'x'), cause('c2', 'x')],
+      edges: ['s > n1', 'n1.a > c1', 'n1.b > c2'],
+    })
+    storiesOn(one)
+      .given(started(), tap('a'), notProven)
+      .thenPage('escalated', (page) => expect(page.ruledOut).toMatchObject([{ cause: { causeId: 'x' }, how: 'cause-not-proven' }]))
   })
 
   test('the answer of the lead stands with its question', () => {
-    given(started(), asked, by('lead', act('answered', { questionId, text: 'Look at the drum', photoIds: [], goTo: 'saw/n4' as never }))).then((walk, { charts }) => {
-      expect(questionWords(charts, walk)).toMatchObject([{ answer: 'Look at the drum', goTo: { place: 'saw/n4' } }])
-    })
+    given(started(), asked, by('lead', act('answered', { questionId, text: 'Look at the drum', photoIds: [], goTo: 'saw/n4' as never }))).then(
+      (walk, { charts }) => {
+        expect(questionWords(charts, walk)).toMatchObject([{ answer: 'Look at the drum', goTo: { place: 'saw/n4' } }])
+      },
+    )
   })
 })
 
@@ -146,7 +236,9 @@ describe('what the player shows beside the page', () => {
   })
 
   test('jumps that were passed over since their chart is not there yet', () => {
-    jumps.given(started(), tap('yes'), tap('absent')).then((walk, { charts }) => expect(passedOver(charts, walk)).toMatchObject([{ place: 'saw/j-absent', title: 'Go on in nobody-wrote-it' }]))
+    jumps
+      .given(started(), tap('yes'), tap('absent'))
+      .then((walk, { charts }) => expect(passedOver(charts, walk)).toMatchObject([{ place: 'saw/j-absent', title: 'Go on in nobody-wrote-it' }]))
   })
 
   test('knots: the start, what was recorded and still counts, and where the walk stands', () => {
@@ -173,7 +265,11 @@ describe('what the player shows beside the page', () => {
     expect(target(toFilter)).toBe('saw/n2')
     expect(target([...toReading, revs(12_000), tap('stripe'), answer({ outcome: 'still' as never })])).toBe('saw/p4')
     expect(target([...toReading, revs(12_000), tap('stripe'), answer({ outcome: 'still' as never }), stepBackTo('p4')])).toBe('saw/n4')
-    const alone = buildChart({ id: 'saw', nodes: [start(), step('x1', { timer: { seconds: 5, rule: 'at-least' } }), check('n1'), ask()], edges: ['s > x1', 'x1 > n1', 'n1.good > ask', 'n1.bad > ask'] })
+    const alone = buildChart({
+      id: 'saw',
+      nodes: [start(), step('x1', { timer: { seconds: 5, rule: 'at-least' } }), check('n1'), ask()],
+      edges: ['s > x1', 'x1 > n1', 'n1.good > ask', 'n1.bad > ask'],
+    })
     expect(target([started(), act('step-done', { node: 'saw/x1' as never, seconds: 5 })], storiesOn(alone).given)).toBe('saw/x1')
     expect(target([...toCause, proven, repaired])).toBeUndefined()
   })
@@ -193,7 +289,11 @@ describe('checks left', () => {
   })
 
   test('a loop ahead makes it "at least"', () => {
-    const loop = buildChart({ id: 'saw', nodes: [start(), check('n1'), check('n2'), ask()], edges: ['s > n1', 'n1.good > n2', 'n1.bad > ask', 'n2.good > ask', 'n2.bad > n1'] })
+    const loop = buildChart({
+      id: 'saw',
+      nodes: [start(), check('n1'), check('n2'), ask()],
+      edges: ['s > n1', 'n1.good > n2', 'n1.bad > ask', 'n2.good > ask', 'n2.bad > n1'],
+    })
     expect(left(storiesOn(loop).given, started())).toEqual({ shortest: 1, longest: 2, isAtLeast: true })
     const self = buildChart({ id: 'saw', nodes: [start(), check('n1')], edges: ['s > n1', 'n1.good > n1', 'n1.bad > n1'] })
     expect(left(storiesOn(self).given, started())).toEqual({ shortest: 1, longest: 1, isAtLeast: true })
@@ -207,7 +307,11 @@ describe('checks left', () => {
   })
 
   test('nodes for other machines are not counted', () => {
-    const chart = buildChart({ id: 'saw', nodes: [start(), check('n1'), check('n2', ['good', 'bad'], { onlyFor: { classes: ['mower'] } }), ask()], edges: ['s > n1', 'n1.good > n2', 'n1.bad > n2', 'n2.good > ask', 'n2.bad > ask'] })
+    const chart = buildChart({
+      id: 'saw',
+      nodes: [start(), check('n1'), check('n2', ['good', 'bad'], { onlyFor: { classes: ['mower'] } }), ask()],
+      edges: ['s > n1', 'n1.good > n2', 'n1.bad > n2', 'n2.good > ask', 'n2.bad > ask'],
+    })
     expect(left(storiesOn(chart).given, started())).toEqual({ shortest: 1, longest: 1, isAtLeast: false })
   })
 })

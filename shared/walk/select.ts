@@ -125,7 +125,9 @@ function workPage(charts: PinnedCharts, walk: WalkRecord, nodes: PageNodes): Wal
   if (node.kind === 'proof') return nodes.before ? beforePage(charts, walk, nodes, check, nodes.before) : proofPage(charts, walk, nodes, check)
   const judging = judgingOf(walk, check)
   const asking = askingOf(charts, walk, nodes, check)
-  return node.kind === 'reading' && judging ? ({ ...asking, kind: 'reading', judging } satisfies ReadingPage) : ({ ...asking, kind: 'check' } satisfies CheckPage)
+  return node.kind === 'reading' && judging
+    ? ({ ...asking, kind: 'reading', judging } satisfies ReadingPage)
+    : ({ ...asking, kind: 'check' } satisfies CheckPage)
 }
 
 /** What every page to be answered shows. A `before` is shown, and entered, on a page of its own. */
@@ -382,8 +384,7 @@ export function passedOver(charts: PinnedCharts, walk: WalkRecord): readonly Nod
  */
 export function backTo(charts: PinnedCharts, walk: OpenWalk): EventId | null {
   if (walk.phase === 'repaired' || walk.phase === 'run-passed' || walk.phase === 'held') return null
-  const hadPage = (line: ReturnType<typeof liveTrail>[number]) =>
-    line.kind !== 'step' || pageNodesAt(charts, walk, line.position)?.lines.length === 0
+  const hadPage = (line: ReturnType<typeof liveTrail>[number]) => line.kind !== 'step' || pageNodesAt(charts, walk, line.position)?.lines.length === 0
   return liveTrail(walk).findLast(hadPage)?.eventId ?? null
 }
 

@@ -20,7 +20,12 @@ const runs = { numRuns: 120 }
 vi.setConfig({ testTimeout: 60_000 })
 
 /** A bench on which a random walk was walked. */
-function walked(charts: readonly [ChartDocument, ChartDocument], machine: Parameters<typeof begin>[0], choices: readonly number[], each: (bench: Bench) => void = () => undefined): Bench {
+function walked(
+  charts: readonly [ChartDocument, ChartDocument],
+  machine: Parameters<typeof begin>[0],
+  choices: readonly number[],
+  each: (bench: Bench) => void = () => undefined,
+): Bench {
   const bench = new Bench(charts)
   bench.send(begin(machine))
   each(bench)
@@ -127,7 +132,8 @@ describe('page and guard', () => {
 })
 
 /** What makes two trails one route. */
-const routeOf = (walk: StartedWalk) => liveTrail(walk).map((line) => [line.kind, line.position, 'answer' in line ? line.answer.outcome : 'took' in line ? line.took : 'to' in line ? line.to : null])
+const routeOf = (walk: StartedWalk) =>
+  liveTrail(walk).map((line) => [line.kind, line.position, 'answer' in line ? line.answer.outcome : 'took' in line ? line.took : 'to' in line ? line.to : null])
 
 /** Does once more what a line of a trail did, reading whatever cautions wait. */
 function repeatLine(bench: Bench, line: TrailEntry): void {
@@ -143,10 +149,24 @@ function repeatLine(bench: Bench, line: TrailEntry): void {
     if (page.kind === 'check' || page.kind === 'reading' || page.kind === 'proof' || page.kind === 'before') bench.send(skipPage(page, line.why))
   } else {
     const asking = page.kind === 'before' ? page.proof : page
-    if (asking.kind !== 'check' && asking.kind !== 'reading' && asking.kind !== 'proof') throw new Error(`A ${page.kind} page where ${line.position.node} was answered.`)
+    if (asking.kind !== 'check' && asking.kind !== 'reading' && asking.kind !== 'proof')
+      throw new Error(`A ${page.kind} page where ${line.position.node} was answered.`)
     const { answer, values, before } = line
-    const taken = before && { outcome: before.outcome, ...(before.value === null ? {} : { value: before.value }), ...(before.unit === null ? {} : { unit: before.unit }) }
-    const measured = answer.unit === null ? {} : { values: values.length > 1 ? values : [...(asking.kind === 'reading' && asking.judging.repeat && answer.value !== null ? [answer.value, answer.value] : values)], unit: answer.unit }
+    const taken = before && {
+      outcome: before.outcome,
+      ...(before.value === null ? {} : { value: before.value }),
+      ...(before.unit === null ? {} : { unit: before.unit }),
+    }
+    const measured =
+      answer.unit === null
+        ? {}
+        : {
+            values:
+              values.length > 1
+                ? values
+                : [...(asking.kind === 'reading' && asking.judging.repeat && answer.value !== null ? [answer.value, answer.value] : values)],
+            unit: answer.unit,
+          }
     const drafts = answerPage({ ...asking, lines: [] }, { outcome: answer.outcome, ...measured, note: line.note ?? 'Seen', seconds: 1 }, taken ?? undefined)
     for (const draft of drafts ?? []) bench.send(draft)
   }
@@ -156,7 +176,11 @@ function repeatLine(bench: Bench, line: TrailEntry): void {
 test('a step back, then the same answers, is the same route', () => {
   fc.assert(
     fc.property(chartsArb, machineArb, choicesArb, fc.nat(), (charts, machine, choices, to) => {
-      const bench = walked(charts, machine, choices.filter((choice) => choice % 5 !== 0))
+      const bench = walked(
+        charts,
+        machine,
+        choices.filter((choice) => choice % 5 !== 0),
+      )
       const { walk } = bench
       const trail = liveTrail(walk)
       const line = trail[to % Math.max(1, trail.length)]
@@ -174,14 +198,19 @@ test('a step back, then the same answers, is the same route', () => {
 test('what is offered after a step back is the answer that was given, where a check was answered once', () => {
   fc.assert(
     fc.property(chartsArb, machineArb, choicesArb, (charts, machine, choices) => {
-      const bench = walked(charts, machine, choices.filter((choice) => choice % 5 !== 0))
+      const bench = walked(
+        charts,
+        machine,
+        choices.filter((choice) => choice % 5 !== 0),
+      )
       const to = isOpen(bench.state) ? backTo(bench.charts, bench.state) : null
       const line = bench.walk.trail.find(({ eventId }) => eventId === to)
       fc.pre(line?.kind === 'finding')
       bench.send({ type: 'stepped-back', payload: { toEventId: line.eventId } })
       for (let { page } = bench; page.kind === 'caution'; { page } = bench) bench.send(acknowledge(page))
       const { page } = bench
-      const offered = 'offered' in page ? page.offered : null
+      // A proof that takes its `before` first shows what it was answered beside it.
+      const offered = 'offered' in page ? page.offered : page.kind === 'before' ? page.proof.offered : null
       expect(offered?.answer).toEqual(line.answer)
     }),
     runs,
@@ -192,7 +221,10 @@ describe('any stream of events, sense or nonsense', () => {
   const streamArb = fc.array(draftArb, { maxLength: 30 })
   const eventsOf = (drafts: readonly Parameters<typeof toEvent>[1][], machine: Parameters<typeof begin>[0]) =>
     [begin(machine), ...drafts].map((draft, index) =>
-      toEvent({ id: uuid(1001 + index) as never, walkId, seq: index + 1, at: '2026-03-02T09:00:00Z', deviceId: people.junior.device, personId: people.junior.id }, draft),
+      toEvent(
+        { id: uuid(1001 + index) as never, walkId, seq: index + 1, at: '2026-03-02T09:00:00Z', deviceId: people.junior.device, personId: people.junior.id },
+        draft,
+      ),
     )
 
   test('replays without a throw, and every state has a page', () => {

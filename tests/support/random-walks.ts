@@ -18,7 +18,8 @@ const serviceIds = ['item-0', 'item-1']
 
 /** Up to two of a list, in any order. */
 const some = (ids: readonly string[]) => fc.uniqueArray(fc.constantFrom(...ids), { maxLength: 2 })
-const maybe = <T>(key: string, value: fc.Arbitrary<T>): fc.Arbitrary<Json> => fc.oneof({ weight: 3, arbitrary: fc.constant({}) }, { weight: 1, arbitrary: value.map((of) => ({ [key]: of })) })
+const maybe = <T>(key: string, value: fc.Arbitrary<T>): fc.Arbitrary<Json> =>
+  fc.oneof({ weight: 3, arbitrary: fc.constant({}) }, { weight: 1, arbitrary: value.map((of) => ({ [key]: of })) })
 const merged = (...parts: fc.Arbitrary<Json>[]): fc.Arbitrary<Json> => fc.tuple(...parts).map((all) => Object.assign({}, ...all) as Json)
 
 /** What any node may ask of the machine. */
@@ -33,18 +34,30 @@ const demands = merged(
   maybe('onlyFor', fc.constantFrom({ engines: ['two-stroke'] }, { engines: ['four-stroke'] })),
 )
 
-const accessArb = fc.tuple(...accessIds.map((id, index) =>
-  merged(
-    fc.record({ minutes: fc.constantFrom(0, 0.5, 1, 3), closeMinutes: fc.constantFrom(0, 0.1, 2), waitMinutes: fc.constantFrom(0, 10) }),
-    maybe('needs', some(accessIds.slice(0, Math.max(1, index))).map((needs) => needs.filter((need) => need !== id))),
-    maybe('excludes', some(accessIds).map((all) => all.filter((other) => other !== id))),
-    maybe('cautions', some(cautionIds)),
-  ).map((more) => ({ id, title: id, ...more })),
-))
+const accessArb = fc.tuple(
+  ...accessIds.map((id, index) =>
+    merged(
+      fc.record({ minutes: fc.constantFrom(0, 0.5, 1, 3), closeMinutes: fc.constantFrom(0, 0.1, 2), waitMinutes: fc.constantFrom(0, 10) }),
+      maybe(
+        'needs',
+        some(accessIds.slice(0, Math.max(1, index))).map((needs) => needs.filter((need) => need !== id)),
+      ),
+      maybe(
+        'excludes',
+        some(accessIds).map((all) => all.filter((other) => other !== id)),
+      ),
+      maybe('cautions', some(cautionIds)),
+    ).map((more) => ({ id, title: id, ...more })),
+  ),
+)
 
-const cautionArb = fc.tuple(...cautionIds.map((id) =>
-  fc.record({ standing: fc.boolean(), again: some(['running', 'screen', ...accessIds]) }).map((more) => ({ id, word: 'WARNING', harm: 'serious-injury', hazard: id, avoid: id, ...more })),
-))
+const cautionArb = fc.tuple(
+  ...cautionIds.map((id) =>
+    fc
+      .record({ standing: fc.boolean(), again: some(['running', 'screen', ...accessIds]) })
+      .map((more) => ({ id, word: 'WARNING', harm: 'serious-injury', hazard: id, avoid: id, ...more })),
+  ),
+)
 
 const inner = 6
 /** Ends of a chart that every node may lead to, beside the other nodes. */
@@ -52,16 +65,34 @@ const ends = ['e-ask', 'e-cause-0', 'e-cause-1', 'e-hold', 'e-call', 'e-away', '
 
 function nodeArb(index: number): fc.Arbitrary<Json> {
   const id = `n${index}`
-  const outcomes = fc.constantFrom<(string | Json)[]>(['good', 'bad'], ['good', { id: 'dirty', title: 'Dirty', serviceable: true, serviceItem: 'item-0' }, 'bad'], ['one', 'two'])
+  const outcomes = fc.constantFrom<(string | Json)[]>(
+    ['good', 'bad'],
+    ['good', { id: 'dirty', title: 'Dirty', serviceable: true, serviceItem: 'item-0' }, 'bad'],
+    ['one', 'two'],
+  )
   return fc.oneof(
-    { weight: 4, arbitrary: fc.tuple(demands, outcomes, fc.boolean(), maybe('checkId', fc.constantFrom('shared-check'))).map(([more, list, reproduces, shared]) => check(id, list, { ...(reproduces && index < 2 ? { reproduces } : {}), ...(list.length === 2 && list[0] === 'good' ? shared : {}), ...more })) },
-    { weight: 2, arbitrary: fc.tuple(demands, fc.boolean()).map(([more, repeats]) => reading(id, { ...(repeats ? { repeat: { equal: 2, within: 50, atMost: 3 } } : {}), ...more })) },
+    {
+      weight: 4,
+      arbitrary: fc
+        .tuple(demands, outcomes, fc.boolean(), maybe('checkId', fc.constantFrom('shared-check')))
+        .map(([more, list, reproduces, shared]) =>
+          check(id, list, { ...(reproduces && index < 2 ? { reproduces } : {}), ...(list.length === 2 && list[0] === 'good' ? shared : {}), ...more }),
+        ),
+    },
+    {
+      weight: 2,
+      arbitrary: fc
+        .tuple(demands, fc.boolean())
+        .map(([more, repeats]) => reading(id, { ...(repeats ? { repeat: { equal: 2, within: 50, atMost: 3 } } : {}), ...more })),
+    },
     { weight: 2, arbitrary: demands.map((more) => step(id, more)) },
     {
       weight: 2,
-      arbitrary: fc.tuple(demands, fc.constantFrom(...causeIds), fc.constantFrom('isolation', 'put-right', 'sight'), fc.constantFrom('n0', 'n1', 'n2', null), fc.boolean()).map(([more, suspect, by, node, judges]) =>
-        proof(id, suspect, { by, ...(node === null || node === id ? {} : { compares: { node, ...(judges ? { confirmsWhen: ['in'] } : {}) } }), ...more }),
-      ),
+      arbitrary: fc
+        .tuple(demands, fc.constantFrom(...causeIds), fc.constantFrom('isolation', 'put-right', 'sight'), fc.constantFrom('n0', 'n1', 'n2', null), fc.boolean())
+        .map(([more, suspect, by, node, judges]) =>
+          proof(id, suspect, { by, ...(node === null || node === id ? {} : { compares: { node, ...(judges ? { confirmsWhen: ['in'] } : {}) } }), ...more }),
+        ),
     },
   )
 }
@@ -72,7 +103,13 @@ function chartArb(id: string, other: string): fc.Arbitrary<ChartDocument> {
   const nodeIds = Array.from({ length: inner }, (_, index) => `n${index}`)
   const targets = [...nodeIds, ...nodeIds, ...nodeIds, ...nodeIds, ...ends]
   return fc
-    .record({ nodes: fc.tuple(...Array.from({ length: inner }, (_, index) => nodeArb(index))), access: accessArb, cautions: cautionArb, ways: fc.array(fc.nat(), { minLength: 40, maxLength: 40 }), unsafe: fc.boolean() })
+    .record({
+      nodes: fc.tuple(...Array.from({ length: inner }, (_, index) => nodeArb(index))),
+      access: accessArb,
+      cautions: cautionArb,
+      ways: fc.array(fc.nat(), { minLength: 40, maxLength: 40 }),
+      unsafe: fc.boolean(),
+    })
     .map(({ nodes, access, cautions, ways, unsafe }) => {
       let next = 0
       const target = () => targets[(ways[next++ % ways.length] ?? 0) % targets.length] ?? 'e-ask'
@@ -121,18 +158,33 @@ export function waysOfPage({ page, state, charts }: Bench): readonly (readonly E
     case 'step':
       return [[finishStep(page, 3)]]
     case 'check':
-      return [...page.outcomes.map(({ outcome }) => answerPage(page, { outcome, seconds: 1 })), ...(page.offered ? [answerAgain(page, page.offered, 1)] : []), [skipPage(page, 'not-sure')], [skipPage(page, 'not-reproduced')]].flatMap((way) => (way ? [way] : []))
+      return [
+        ...page.outcomes.map(({ outcome }) => answerPage(page, { outcome, seconds: 1 })),
+        ...(page.offered ? [answerAgain(page, page.offered, 1)] : []),
+        [skipPage(page, 'not-sure')],
+        [skipPage(page, 'not-reproduced')],
+      ].flatMap((way) => (way ? [way] : []))
     case 'reading':
-      return [[9000, 9010], [12_000, 12_010]]
+      return [
+        [9000, 9010],
+        [12_000, 12_010],
+      ]
         .map((values) => answerPage(page, { values: page.judging.repeat ? values : values.slice(1), unit: '1/min', seconds: 1 }))
         .flatMap((way) => (way ? [way] : []))
         .concat(page.offered ? [answerAgain(page, page.offered, 1)] : [], [[skipPage(page, 'cannot')]])
     case 'before':
     case 'proof': {
       const asking = page.kind === 'before' ? page.proof : page
-      const taken = page.kind === 'before' ? answerBefore(page, page.judging ? { values: [9000], unit: '1/min', seconds: 0 } : { outcome: page.outcomes[0]?.outcome as never, seconds: 0 }) : undefined
-      const measured = asking.judging ? [[9000], [12_000]].map((values) => answerPage(asking, { values, unit: '1/min', note: 'Seen', seconds: 1 }, taken ?? undefined)) : asking.outcomes.map(({ outcome }) => answerPage(asking, { outcome, note: 'Seen', seconds: 1 }, taken ?? undefined))
-      return [...measured, ...(asking.offered ? [answerAgain(asking, asking.offered, 1)] : []), [skipPage(page, 'not-sure')]].flatMap((way) => (way ? [way] : []))
+      const taken =
+        page.kind === 'before'
+          ? answerBefore(page, page.judging ? { values: [9000], unit: '1/min', seconds: 0 } : { outcome: page.outcomes[0]?.outcome as never, seconds: 0 })
+          : undefined
+      const measured = asking.judging
+        ? [[9000], [12_000]].map((values) => answerPage(asking, { values, unit: '1/min', note: 'Seen', seconds: 1 }, taken ?? undefined))
+        : asking.outcomes.map(({ outcome }) => answerPage(asking, { outcome, note: 'Seen', seconds: 1 }, taken ?? undefined))
+      return [...measured, ...(asking.offered ? [answerAgain(asking, asking.offered, 1)] : []), [skipPage(page, 'not-sure')]].flatMap((way) =>
+        way ? [way] : [],
+      )
     }
     case 'pick':
       return page.starts.map(({ chartId, version, startId }) => [{ type: 'jumped', payload: { chartId, version, startId, pins: {} } }])
@@ -146,7 +198,10 @@ export function waysOfPage({ page, state, charts }: Bench): readonly (readonly E
       return [...(way ? [[way]] : []), [not]]
     }
     case 'proven':
-      return [[{ type: 'repair-done', payload: { serviceDone: [], partsUsed: [], minutes: 1 } }], ...(page.canCloseUnrepaired ? [[{ type: 'closed', payload: { result: 'not-repaired' } } as EventDraft]] : [])]
+      return [
+        [{ type: 'repair-done', payload: { serviceDone: [], partsUsed: [], minutes: 1 } }],
+        ...(page.canCloseUnrepaired ? [[{ type: 'closed', payload: { result: 'not-repaired' } } as EventDraft]] : []),
+      ]
     case 'run':
       return [runPassed, runFailed].map((run) => run({ page, state, charts } as Bench))
     case 'run-passed':
@@ -201,16 +256,33 @@ const sight = optional('sight', fc.constant({ note: 'x', photoIds: [] }))
 
 /** Payloads of the right form and of any content. */
 const payloads: { readonly [Type in WalkEventType]: fc.Arbitrary<Json> } = {
-  started: fc.constant({ kind: 'bench', chartId: 'main', startId: 's', pins: { main: 1, sub: 1 }, machine: { class: 'chain-saw', engine: 'two-stroke' }, limits: {} }),
+  started: fc.constant({
+    kind: 'bench',
+    chartId: 'main',
+    startId: 's',
+    pins: { main: 1, sub: 1 },
+    machine: { class: 'chain-saw', engine: 'two-stroke' },
+    limits: {},
+  }),
   'machine-identified': machineArb.map((machine) => ({ machine, limits: {} })),
   'caution-acknowledged': fc.record({ node: place, cautionIds: fc.uniqueArray(fc.constantFrom(...cautionIds), { minLength: 1 }) }),
   'step-done': fc.record({ node: place, seconds: fc.nat({ max: 100 }) }),
-  'finding-recorded': merged(fc.record({ node: place, outcome, judgedBy: fc.constantFrom('limits', 'hand'), photoIds: fc.constant([]), seconds: fc.nat({ max: 100 }) }), value, optional('reuses', eventId), optional('before', fc.record({ outcome }))),
+  'finding-recorded': merged(
+    fc.record({ node: place, outcome, judgedBy: fc.constantFrom('limits', 'hand'), photoIds: fc.constant([]), seconds: fc.nat({ max: 100 }) }),
+    value,
+    optional('reuses', eventId),
+    optional('before', fc.record({ outcome })),
+  ),
   'check-skipped': fc.record({ node: place, why: fc.constantFrom('not-sure', 'cannot', 'not-reproduced') }),
   noticed: merged(fc.record({ node: place, photoIds: fc.constant([]) }), value, optional('outcome', outcome)),
   'access-changed': fc.record({ opened: accessList, closed: accessList }),
   'stepped-back': eventId.map((toEventId) => ({ toEventId })),
-  jumped: fc.record({ chartId: fc.constantFrom('main', 'sub', 'nobody-wrote-it'), version: fc.constantFrom(1, 2), startId: fc.constantFrom('s', 'n0'), pins: fc.constantFrom({}, { sub: 1 }) }),
+  jumped: fc.record({
+    chartId: fc.constantFrom('main', 'sub', 'nobody-wrote-it'),
+    version: fc.constantFrom(1, 2),
+    startId: fc.constantFrom('s', 'n0'),
+    pins: fc.constantFrom({}, { sub: 1 }),
+  }),
   'suspect-named': fc.constantFrom(...causeIds).map((causeId) => ({ causeId })),
   'cause-proven': merged(fc.record({ causeId: fc.constantFrom(...causeIds) }), optional('proofEventId', eventId), sight),
   'cause-not-proven': merged(fc.record({ causeId: fc.constantFrom(...causeIds) }), optional('proofEventId', eventId), sight),
@@ -246,5 +318,8 @@ export const draftArb: fc.Arbitrary<EventDraft> = fc.oneof(
 
 /** The start of the random walks. */
 export function begin(machine: EventOf<'started'>['payload']['machine']): EventDraft {
-  return { type: 'started', payload: { kind: 'bench', chartId: 'main' as never, startId: 's' as never, pins: { main: 1, sub: 1 } as never, machine, limits: {} } }
+  return {
+    type: 'started',
+    payload: { kind: 'bench', chartId: 'main' as never, startId: 's' as never, pins: { main: 1, sub: 1 } as never, machine, limits: {} },
+  }
 }

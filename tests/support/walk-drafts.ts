@@ -55,7 +55,11 @@ export function finishStep({ node }: StepPage, seconds: number): EventDraft {
  * The batch that answers a page: `step-done` for the steps that stand on it, then the finding. `null` while the values do not tell an outcome
  * and none was picked. `before` is the answer to the `before` page of a proof.
  */
-export function answerPage(page: AnswerPage, answer: PageAnswer, before?: NonNullable<EventOf<'finding-recorded'>['payload']['before']>): readonly EventDraft[] | null {
+export function answerPage(
+  page: AnswerPage,
+  answer: PageAnswer,
+  before?: NonNullable<EventOf<'finding-recorded'>['payload']['before']>,
+): readonly EventDraft[] | null {
   const judging = page.kind === 'check' ? null : page.judging
   const judged = outcomeOf(judging, answer)
   const outcome = answer.outcome ?? judged
