@@ -13,7 +13,6 @@ import {
   storiesOn,
   tap,
   uuid,
-  type Act,
   raw,
 } from '#tests/support/walk-builder.ts'
 import { toReading, toFilter, toCause, toProven, toRepaired, toUnsafe } from '#tests/support/saw-stories.ts'

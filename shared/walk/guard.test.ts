@@ -15,7 +15,6 @@ import {
   storiesOn,
   tap,
   uuid,
-  type Act,
   raw,
 } from '#tests/support/walk-builder.ts'
 import { toProven, toRepaired } from '#tests/support/saw-stories.ts'
