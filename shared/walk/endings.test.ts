@@ -1,20 +1,6 @@
 import { describe, expect, test } from 'vitest'
 
-import {
-  act,
-  closedAs,
-  proven,
-  repaired,
-  runFailed,
-  runItems,
-  runPassed,
-  skipped,
-  started,
-  storiesOn,
-  tap,
-  uuid,
-  raw,
-} from '#tests/support/walk-builder.ts'
+import { act, closedAs, proven, repaired, runFailed, runItems, runPassed, skipped, started, storiesOn, tap, uuid, raw } from '#tests/support/walk-builder.ts'
 import { toReading, toFilter, toCause, toProven, toRepaired, toUnsafe } from '#tests/support/saw-stories.ts'
 import { sawChart } from '#tests/support/walk-charts.ts'
 

@@ -1,22 +1,7 @@
 import { describe, expect, test } from 'vitest'
 
 import type { EventId, PersonId, WalkId } from '#shared/lib/ids.ts'
-import {
-  act,
-  asked,
-  Bench,
-  by,
-  closedAs,
-  found,
-  people,
-  questionId,
-  runPassed,
-  started,
-  storiesOn,
-  tap,
-  uuid,
-  raw,
-} from '#tests/support/walk-builder.ts'
+import { act, asked, Bench, by, closedAs, found, people, questionId, runPassed, started, storiesOn, tap, uuid, raw } from '#tests/support/walk-builder.ts'
 import { toProven, toRepaired } from '#tests/support/saw-stories.ts'
 import { jumpingChart, otherChart, sawChart, sealChart } from '#tests/support/walk-charts.ts'
 import type { WalkEvent } from './events.ts'
