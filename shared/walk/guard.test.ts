@@ -7,6 +7,7 @@ import { jumpingChart, otherChart, sawChart, sealChart } from '#tests/support/wa
 import type { WalkEvent } from './events.ts'
 import { guard } from './guard.ts'
 import { toPinnedCharts } from './pinned-charts.ts'
+import { refusalWords } from './refusals.ts'
 import { newWalk } from './state.ts'
 
 const { given } = storiesOn(sawChart)
@@ -270,4 +271,11 @@ describe('questions, flags, free walks', () => {
       .when(by('lead', found('s', 'good')))
       .thenRefused('not-a-check')
   })
+})
+
+test('every refusal has a kebab-case code and says in whole sentences what happened and what to do', () => {
+  for (const [code, words] of Object.entries(refusalWords)) {
+    expect(code).toMatch(/^[a-z]+(-[a-z]+)*$/)
+    expect(words, code).toMatch(/^[A-Z].*\.$/)
+  }
 })

@@ -12,7 +12,6 @@ export const refusalWords = {
   'not-started': 'A walk begins with its start. Start it, then go on.',
   'walk-ended': 'This walk has ended and takes no more entries. Start a new one for this machine.',
   paused: 'The walk is paused. Resume it, then go on.',
-  'already-paused': 'The walk is paused already.',
   'wrong-phase': 'The walk is not at the point for this. Load it again to see where it stands.',
 
   // Who may
