@@ -6,7 +6,11 @@ import { createShop, isSetUp } from '#server/services/shop.ts'
 import { addModels } from '#server/services/library.ts'
 import { publishDemoCharts } from './demo-charts.ts'
 import type { Deps } from './demo-deps.ts'
+import { addDemoWalks } from './demo-walks.ts'
 import { addDemoPeople } from './demo-people.ts'
+
+/** The shop has worked with Pullcord for so long. */
+const openedDaysAgo = 60
 
 /**
  * Loads the demo shop into an empty database, all or nothing, by the same services as people use. A database that holds anything is
@@ -17,10 +21,12 @@ export async function loadDemo(deps: Deps): Promise<void> {
   await deps.db.transaction(async (tx) => {
     if (await isSetUp(tx)) return
     const inside = { ...deps, db: tx }
-    await createShop(tx, inside, { name: 'Alder Row Small Engines', isDemo: true })
-    const people = await addDemoPeople(inside)
-    await publishDemoCharts(inside, people.lead)
-    await addModels(inside, readModels())
+    const atOpening = { ...inside, clock: () => new Date(deps.clock().getTime() - openedDaysAgo * 86_400_000) }
+    await createShop(tx, atOpening, { name: 'Alder Row Small Engines', isDemo: true })
+    const people = await addDemoPeople(atOpening)
+    await publishDemoCharts(atOpening, people.lead)
+    await addModels(atOpening, readModels())
+    await addDemoWalks(inside, people)
   })
 }
 

@@ -164,20 +164,3 @@ describe('a password', () => {
     expect((await shop.as('lead')).cookies.size).toBeGreaterThan(0)
   })
 })
-
-describe('the sign-ins of the demo shop', () => {
-  test('are listed and taken, but not with NODE_ENV=production', async () => {
-    const { loadDemo } = await import('#seeds-demo/load-demo.ts')
-    const demo = await openTestShop({ withPeople: false })
-    await loadDemo(demo.deps)
-    await loadDemo(demo.deps)
-    const { body } = await demo.newClient().get('/api/session')
-    const signIns = body['demoSignIns'] as { email: string; password: string; role: string }[]
-    expect(signIns.map(({ role }) => role)).toEqual(['owner', 'lead', 'junior'])
-    for (const { email, password } of signIns) expect((await tryIn(demo.newClient(), email, password)).status).toBe(200)
-    const production = { ...demo.deps, config: { ...demo.deps.config, isProduction: true } }
-    await expect(signIn(production, { ...(signIns[0] ?? { email: '', password: '' }), address: '192.0.2.1', browser: '', knownBrowser: null, oldSessionId: null })).rejects.toMatchObject({ code: 'demo-only' })
-    await expect(loadDemo(production)).rejects.toThrow('NODE_ENV=production')
-    await demo.close()
-  }, 60_000)
-})

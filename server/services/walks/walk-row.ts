@@ -93,6 +93,7 @@ function standsAt(charts: PinnedCharts, walk: StartedWalk): string {
 function nodeWords(charts: PinnedCharts, walk: StartedWalk): string {
   const target = pageNodes(charts, walk)?.target
   const { kind, number, title } = target ? nameOf(charts, walk, target) : nameAt(charts, walk, walk.node)
+  if (kind === 'escalate') return kindWords.escalate
   return `${[kindWords[kind], number].filter((word) => word !== '').join(' ')} · ${title}`
 }
 
