@@ -1,3 +1,4 @@
+import type { QueryClient } from '@tanstack/react-query'
 import { useQueryClient } from '@tanstack/react-query'
 import { useEffect, useMemo, useSyncExternalStore } from 'react'
 
@@ -10,7 +11,9 @@ import { toPinnedCharts } from '#shared/walk/pinned-charts.ts'
 import { appendEvent, replay } from '#shared/walk/replay.ts'
 import type { WalkState } from '#shared/walk/state.ts'
 import type { z } from 'zod'
+import { sessionQueries } from '#src/api/session.ts'
 import { fetchWalk, postWalkEvents, walkQueries } from '#src/api/walks.ts'
+import { ProblemError } from '#src/lib/api-client.ts'
 import { getDeviceId } from '#src/lib/device.ts'
 import type { WalkRules } from '#src/lib/walk-log.ts'
 import { WalkLog } from '#src/lib/walk-log.ts'
@@ -38,7 +41,21 @@ export type OpenLog = WalkLog<WalkState, PlayerRules>
 /** The logs that were opened since the page was loaded: one that still has something to send goes on sending after its screen was left. */
 const logs = new Map<string, OpenLog>()
 
-function openLog(detail: WalkDetail, person: SignedIn): OpenLog {
+const countListeners = new Set<() => void>()
+
+/** Leaving or closing the page asks first, but only while something would be lost. */
+function warnOfLoss(event: BeforeUnloadEvent): void {
+  if (countUnsent() > 0) event.preventDefault()
+}
+
+/** Nobody sends what somebody else has tapped: it waits for that person to sign in again. */
+function requireSamePerson(client: QueryClient, person: SignedIn): void {
+  if (client.getQueryData(sessionQueries.current().queryKey)?.person?.id !== person.id) {
+    throw new ProblemError(401, 'signed-out', `${person.name} has to sign in again before this is sent.`)
+  }
+}
+
+function openLog(client: QueryClient, detail: WalkDetail, person: SignedIn): OpenLog {
   const key = `${person.id} ${detail.walk.id}`
   const known = logs.get(key)
   if (known !== undefined) return known
@@ -49,25 +66,30 @@ function openLog(detail: WalkDetail, person: SignedIn): OpenLog {
     deviceId: getDeviceId(),
     events: detail.events,
     rules: toRules(detail.charts, person),
-    post: (events) => postWalkEvents(walkId, events),
+    post: async (events) => {
+      requireSamePerson(client, person)
+      return postWalkEvents(walkId, events)
+    },
     fetchLog: async () => {
       const { events, charts } = await fetchWalk(walkId)
       return { events, rules: toRules(charts, person) }
     },
   })
   logs.set(key, log)
+  log.subscribe(() => countListeners.forEach((listener) => listener()))
+  window.addEventListener('beforeunload', warnOfLoss)
   return log
 }
 
 /** How many taps of anybody on this device are not on the server yet. */
-export function countUnsent(): number {
+function countUnsent(): number {
   return [...logs.values()].reduce((sum, log) => sum + log.unsentCount, 0)
 }
 
 /** The log of a walk on this device and what it comes to, sending what is recorded for as long as the page is open. */
 export function useWalkLog(detail: WalkDetail, person: SignedIn) {
-  const log = useMemo(() => openLog(detail, person), [detail, person])
   const client = useQueryClient()
+  const log = useMemo(() => openLog(client, detail, person), [client, detail, person])
   useEffect(() => log.adopt(detail.events, () => toRules(detail.charts, person)), [log, detail, person])
   useEffect(() => {
     // After a sign-in, or when the network or the page comes back, what waits is sent at once.
@@ -87,13 +109,10 @@ export function useWalkLog(detail: WalkDetail, person: SignedIn) {
   return { log, snapshot: useSyncExternalStore(log.subscribe, log.getSnapshot) }
 }
 
-/** Leaving or closing the page asks first, but only while something would be lost. */
-export function useUnsentWarning(): void {
-  useEffect(() => {
-    const warn = (event: BeforeUnloadEvent): void => {
-      if (countUnsent() > 0) event.preventDefault()
-    }
-    window.addEventListener('beforeunload', warn)
-    return () => window.removeEventListener('beforeunload', warn)
-  }, [])
+/** How many taps wait on this device, kept up to date; the bench says so too. */
+export function useUnsentCount(): number {
+  return useSyncExternalStore((listener) => {
+    countListeners.add(listener)
+    return () => countListeners.delete(listener)
+  }, countUnsent)
 }

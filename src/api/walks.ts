@@ -56,12 +56,25 @@ export async function answerQuestion(walkId: WalkId, person: SignedIn, payload: 
     const { lastSeq } = await fetchWalk(walkId)
     // Made by newId, a UUID.
     const id = newId() as EventId
-    const event: WalkEvent = { id, walkId, seq: lastSeq + 1, at: new Date().toISOString(), deviceId: getDeviceId(), personId: person.id, type: 'answered', payload }
+    const event: WalkEvent = {
+      id,
+      walkId,
+      seq: lastSeq + 1,
+      at: new Date().toISOString(),
+      deviceId: getDeviceId(),
+      personId: person.id,
+      type: 'answered',
+      payload,
+    }
     const [result] = (await postWalkEvents(walkId, [event])).results
     if (result?.status === 'appended' || result?.status === 'duplicate') return
     if (result?.code !== 'wrong-seq' || tries === answerTries) {
       const code = result?.code ?? 'refused'
-      throw new ProblemError(409, code, Object.hasOwn(refusalWords, code) ? refusalWords[code as RefusalCode] : 'The walk has moved on. Load it again and answer once more.')
+      throw new ProblemError(
+        409,
+        code,
+        Object.hasOwn(refusalWords, code) ? refusalWords[code as RefusalCode] : 'The walk has moved on. Load it again and answer once more.',
+      )
     }
   }
 }

@@ -92,7 +92,10 @@ export function toEventWords(wording: WalkWording, event: WalkEvent): string {
       return withNote(`Noticed on the way: ${titleOf(node)}: ${found}`, note)
     }
     case 'access-changed':
-      return [event.payload.opened.length > 0 ? `Off: ${event.payload.opened.join(', ')}` : null, event.payload.closed.length > 0 ? `Back on: ${event.payload.closed.join(', ')}` : null]
+      return [
+        event.payload.opened.length > 0 ? `Off: ${event.payload.opened.join(', ')}` : null,
+        event.payload.closed.length > 0 ? `Back on: ${event.payload.closed.join(', ')}` : null,
+      ]
         .filter(Boolean)
         .join('; ')
     case 'stepped-back': {
@@ -112,7 +115,10 @@ export function toEventWords(wording: WalkWording, event: WalkEvent): string {
       return titles.length === 0 ? 'What led to it: nothing named' : `What led to it: ${titles.join(', ')}`
     }
     case 'service-changed':
-      return [event.payload.added.length > 0 ? `Service added: ${event.payload.added.join(', ')}` : null, event.payload.dropped.length > 0 ? `Service left out: ${event.payload.dropped.join(', ')}` : null]
+      return [
+        event.payload.added.length > 0 ? `Service added: ${event.payload.added.join(', ')}` : null,
+        event.payload.dropped.length > 0 ? `Service left out: ${event.payload.dropped.join(', ')}` : null,
+      ]
         .filter(Boolean)
         .join('; ')
     case 'asked':
@@ -146,7 +152,10 @@ export function toEventWords(wording: WalkWording, event: WalkEvent): string {
     case 'check-noted':
       return `${event.payload.title}: ${event.payload.found}`
     case 'cause-noted':
-      return withNote(`Cause noted: ${event.payload.title ?? (event.payload.causeId === undefined ? '' : causeWords(charts, walk, event.payload.causeId).title)}`, event.payload.note)
+      return withNote(
+        `Cause noted: ${event.payload.title ?? (event.payload.causeId === undefined ? '' : causeWords(charts, walk, event.payload.causeId).title)}`,
+        event.payload.note,
+      )
     case 'closed':
       return withNote(`Closed: ${resultWords[event.payload.result].toLowerCase()}`, event.payload.why)
     case 'abandoned':

@@ -43,7 +43,14 @@ export class FakeBench {
   refusesToRead = false
 
   constructor(...documents: readonly ChartDocument[]) {
-    this.versions = documents.map((document) => ({ chartId: document.id, version: 1, document, publishedAt: at, publishedBy: 'Tomas Brandt', changeNote: 'First version' }))
+    this.versions = documents.map((document) => ({
+      chartId: document.id,
+      version: 1,
+      document,
+      publishedAt: at,
+      publishedBy: 'Tomas Brandt',
+      changeNote: 'First version',
+    }))
   }
 
   get charts() {
@@ -61,7 +68,14 @@ export class FakeBench {
     const first = this.versions[0]
     if (first === undefined) throw new Error('This bench has no chart.')
     const pins = Object.fromEntries(this.versions.map(({ chartId }) => [chartId, 1])) as EventOf<'started'>['payload']['pins']
-    const payload: EventOf<'started'>['payload'] = { kind: 'bench', chartId: first.chartId, startId: 's' as EventOf<'started'>['payload']['startId'], pins, machine: saw, limits }
+    const payload: EventOf<'started'>['payload'] = {
+      kind: 'bench',
+      chartId: first.chartId,
+      startId: 's' as EventOf<'started'>['payload']['startId'],
+      pins,
+      machine: saw,
+      limits,
+    }
     this.append([{ id: uuid(100) as EventId, walkId: this.walkId, seq: 1, at, deviceId: getDeviceId(), personId: junior.id, type: 'started', payload }])
     return this
   }
@@ -132,11 +146,11 @@ export class FakeBench {
   }
 
   readonly endpoints: readonly FakeEndpoint[] = [
-    { method: 'GET', path: `/api/walks/${this.walkId}`, contract: getWalk, answer: () => ok(this.detail) },
-    { method: 'GET', path: `/api/walks/${this.walkId}/side-events`, contract: listSideEvents, answer: () => ok({ sideEvents: this.side }) },
+    { method: 'GET', path: /^\/api\/walks\/[0-9a-f-]{36}$/, contract: getWalk, answer: () => ok(this.detail) },
+    { method: 'GET', path: /^\/api\/walks\/[0-9a-f-]{36}\/side-events$/, contract: listSideEvents, answer: () => ok({ sideEvents: this.side }) },
     {
       method: 'POST',
-      path: `/api/walks/${this.walkId}/events`,
+      path: /^\/api\/walks\/[0-9a-f-]{36}\/events$/,
       contract: postEvents,
       answer: async (body) => {
         if (this.refusesToRead) return problem(413, 'too-large', 'This is too large to be read.')
@@ -144,7 +158,12 @@ export class FakeBench {
       },
     },
     { method: 'POST', path: '/api/walks', contract: startWalk, answer: async (body) => ok(await this.post([startWalk.body.parse(body).event])) },
-    { method: 'GET', path: /^\/api\/walks(\?.*)?$/, contract: listWalks, answer: () => ok({ walks: this.log.length > 0 && this.row.isOpen ? [this.row] : [], page: 1, hasMore: false }) },
+    {
+      method: 'GET',
+      path: /^\/api\/walks(\?.*)?$/,
+      contract: listWalks,
+      answer: () => ok({ walks: this.log.length > 0 && this.row.isOpen ? [this.row] : [], page: 1, hasMore: false }),
+    },
     { method: 'GET', path: /^\/api\/charts\/[^/]+\/reach$/, contract: getReach, answer: () => ok({ charts: [...this.versions] }) },
     { method: 'GET', path: '/api/models', contract: listModels, answer: () => ok({ models: [] }) },
     {
@@ -156,7 +175,18 @@ export class FakeBench {
           symptoms: this.versions.flatMap(({ chartId, document }) =>
             document.nodes.flatMap((node) =>
               node.kind === 'start'
-                ? [{ chartId, version: 1, startId: node.id, title: node.title ?? document.title, chartTitle: document.title, matched: null, classes: document.appliesTo?.classes ?? [], engines: document.appliesTo?.engines ?? [] }]
+                ? [
+                    {
+                      chartId,
+                      version: 1,
+                      startId: node.id,
+                      title: node.title ?? document.title,
+                      chartTitle: document.title,
+                      matched: null,
+                      classes: document.appliesTo?.classes ?? [],
+                      engines: document.appliesTo?.engines ?? [],
+                    },
+                  ]
                 : [],
             ),
           ),

@@ -123,7 +123,16 @@ test('what the server refuses to read waits for a person instead of being sent f
 test('once another device has the walk, every tap made here is set aside by name and the walk goes on from the server’s log', async () => {
   const { bench, log } = openLog()
   bench.append([
-    { id: uuid(500) as EventId, walkId: bench.walkId, seq: 2, at: '2026-03-02T09:01:00.000Z', deviceId: uuid(77) as DeviceId, personId: junior.id, type: 'resumed', payload: {} },
+    {
+      id: uuid(500) as EventId,
+      walkId: bench.walkId,
+      seq: 2,
+      at: '2026-03-02T09:01:00.000Z',
+      deviceId: uuid(77) as DeviceId,
+      personId: junior.id,
+      type: 'resumed',
+      payload: {},
+    },
   ])
   bench.isDown = true
   log.record([found('n1', 'yes')])
@@ -146,7 +155,16 @@ test('once another device has the walk, every tap made here is set aside by name
 test('while the server’s log is being read again nothing new is recorded, and the server is asked until it answers', async () => {
   const { bench, log } = openLog()
   bench.append([
-    { id: uuid(500) as EventId, walkId: bench.walkId, seq: 2, at: '2026-03-02T09:01:00.000Z', deviceId: uuid(77) as DeviceId, personId: junior.id, type: 'resumed', payload: {} },
+    {
+      id: uuid(500) as EventId,
+      walkId: bench.walkId,
+      seq: 2,
+      at: '2026-03-02T09:01:00.000Z',
+      deviceId: uuid(77) as DeviceId,
+      personId: junior.id,
+      type: 'resumed',
+      payload: {},
+    },
   ])
   const append = bench.append.bind(bench)
   // The refusal comes through, then the server falls silent.

@@ -42,7 +42,8 @@ async function toReading(user: User): Promise<void> {
 }
 
 async function type(user: User, keys: string): Promise<void> {
-  for (const key of keys) await user.click(within(screen.getByRole('group', { name: 'Number pad' })).getByRole('button', { name: key === '.' ? 'decimal point' : key }))
+  for (const key of keys)
+    await user.click(within(screen.getByRole('group', { name: 'Number pad' })).getByRole('button', { name: key === '.' ? 'decimal point' : key }))
 }
 
 const lastEvent = (bench: FakeBench) => bench.log.at(-1)
@@ -232,7 +233,9 @@ test('a proof takes what it compares with first, and carries it along when it is
   await type(user, '12400')
   await answer(user, /Gone/, 'Filter packed')
   await waitFor(() => expect(bench.walk.phase).toBe('proven'))
-  expect(bench.log.at(-2)).toMatchObject({ payload: { node: 'saw/p3', outcome: 'gone', value: 12_400, before: { outcome: 'low', value: 9850, unit: '1/min' } } })
+  expect(bench.log.at(-2)).toMatchObject({
+    payload: { node: 'saw/p3', outcome: 'gone', value: 12_400, before: { outcome: 'low', value: 9850, unit: '1/min' } },
+  })
 })
 
 test('a lost server shows a bar and blocks nothing; what was tapped is sent when it is back', async () => {

@@ -55,7 +55,9 @@ function Symptoms({ words, title }: { readonly words: string; readonly title: st
       {data !== undefined && data.symptoms.length > 0 && <SymptomList symptoms={data.symptoms} isSearch={words !== ''} />}
       {data !== undefined && data.symptoms.length === 0 && (
         <EmptyState title={words === '' ? 'No chart is on the bench yet' : 'No chart knows this'}>
-          {words === '' ? 'The lead publishes charts; their symptoms then stand here.' : 'Try fewer words, or say it as the machine does it: dies, bogs, drags, won’t start.'}
+          {words === ''
+            ? 'The lead publishes charts; their symptoms then stand here.'
+            : 'Try fewer words, or say it as the machine does it: dies, bogs, drags, won’t start.'}
         </EmptyState>
       )}
     </RuledSection>

@@ -87,14 +87,29 @@ function StartForm({ own, charts, models, startId, person }: StartFormProps) {
     if (start !== undefined) void begin(start.id, machine, model)
   }
   return (
-    <form onSubmit={submit} className="mx-auto grid w-full max-w-sheet gap-x-16 gap-y-5 pt-4 pb-6 md:gap-y-8 md:pt-8 lg:grid-cols-[minmax(0,7fr)_minmax(0,5fr)]">
+    <form
+      onSubmit={submit}
+      className="mx-auto grid w-full max-w-sheet gap-x-16 gap-y-5 pt-4 pb-6 md:gap-y-8 md:pt-8 lg:grid-cols-[minmax(0,7fr)_minmax(0,5fr)]"
+    >
       <div className="grid content-start gap-4 md:gap-8">
         <p className="text-small text-ink-2">
           {document.title}, version {own.version}
         </p>
-        <ChoiceGrid legend="Machine" name="class" choices={classes.map((value) => ({ value, words: equipmentClassWords[value] }))} value={machineClass} onChange={setClass} />
+        <ChoiceGrid
+          legend="Machine"
+          name="class"
+          choices={classes.map((value) => ({ value, words: equipmentClassWords[value] }))}
+          value={machineClass}
+          onChange={setClass}
+        />
         {engines.length > 1 && (
-          <ChoiceGrid legend="Engine" name="engine" choices={engines.map((value) => ({ value, words: engineKindWords[value] }))} value={engine} onChange={setEngine} />
+          <ChoiceGrid
+            legend="Engine"
+            name="engine"
+            choices={engines.map((value) => ({ value, words: engineKindWords[value] }))}
+            value={engine}
+            onChange={setEngine}
+          />
         )}
       </div>
       <div className="flex flex-col gap-5 md:gap-8">
@@ -103,11 +118,22 @@ function StartForm({ own, charts, models, startId, person }: StartFormProps) {
             <SelectField<string>
               label="Model, for its spec sheet"
               value={model?.id ?? ''}
-              choices={[{ value: '', words: fitting.length === 0 ? 'No spec sheet for this kind' : 'Not known' }, ...fitting.map(({ id, maker, name }) => ({ value: id, words: `${maker} ${name}` }))]}
+              choices={[
+                { value: '', words: fitting.length === 0 ? 'No spec sheet for this kind' : 'Not known' },
+                ...fitting.map(({ id, maker, name }) => ({ value: id, words: `${maker} ${name}` })),
+              ]}
               hint={model === null ? 'Else readings go by general values.' : 'Readings go by this model’s own values.'}
               onChange={(event) => setModelId(fitting.find(({ id }) => id === event.target.value)?.id ?? null)}
             />
-            <TextField label="Serial number" value={serial} onChange={(event) => setSerial(event.target.value)} maxLength={100} autoComplete="off" autoCapitalize="characters" className="figures" />
+            <TextField
+              label="Serial number"
+              value={serial}
+              onChange={(event) => setSerial(event.target.value)}
+              maxLength={100}
+              autoComplete="off"
+              autoCapitalize="characters"
+              className="figures"
+            />
           </div>
         </RuledSection>
         <div className="mt-auto grid gap-3">
@@ -119,7 +145,9 @@ function StartForm({ own, charts, models, startId, person }: StartFormProps) {
           <Button type="submit" look="primary" size="large" busy={isStarting && 'Starting'} className="min-h-18 w-full text-[1.375rem] md:min-h-22">
             Start
           </Button>
-          <p className="text-small text-ink-2 max-md:hidden">First the cautions, then the first check. The maker’s manual, local codes and licensed practice come first.</p>
+          <p className="text-small text-ink-2 max-md:hidden">
+            First the cautions, then the first check. The maker’s manual, local codes and licensed practice come first.
+          </p>
         </div>
       </div>
     </form>
@@ -157,10 +185,19 @@ function useStart(own: ChartVersion, charts: readonly ChartVersion[], person: Si
 }
 
 function toRefusalWords(code: string | undefined): string {
-  return code !== undefined && Object.hasOwn(refusalWords, code) ? refusalWords[code as RefusalCode] : 'The server did not take it. Load the page again and start once more.'
+  return code !== undefined && Object.hasOwn(refusalWords, code)
+    ? refusalWords[code as RefusalCode]
+    : 'The server did not take it. Load the page again and start once more.'
 }
 
-function toStarted(own: ChartVersion, charts: readonly ChartVersion[], person: SignedIn, startId: NodeId, machine: Machine, model: MachineModel | null): EventOf<'started'> {
+function toStarted(
+  own: ChartVersion,
+  charts: readonly ChartVersion[],
+  person: SignedIn,
+  startId: NodeId,
+  machine: Machine,
+  model: MachineModel | null,
+): EventOf<'started'> {
   // Both made by newId, UUIDs.
   const walkId = newId() as WalkId
   const id = newId() as EventId
@@ -209,7 +246,14 @@ function ChoiceGrid<Value extends string>({ legend, name, choices, value, onChan
             key={choice.value}
             className="flex min-h-14 cursor-pointer md:min-h-16 items-center gap-3 rounded-control border border-rule bg-card px-4 py-2 text-[1.125rem] leading-6 hover:border-ink has-checked:border-cord has-checked:bg-cord-wash has-checked:font-semibold has-checked:outline-1 has-checked:outline-cord has-focus-visible:outline-3 has-focus-visible:outline-offset-2 has-focus-visible:outline-focus"
           >
-            <input type="radio" name={name} value={choice.value} checked={choice.value === value} onChange={() => onChange(choice.value)} className="size-5 shrink-0 accent-cord" />
+            <input
+              type="radio"
+              name={name}
+              value={choice.value}
+              checked={choice.value === value}
+              onChange={() => onChange(choice.value)}
+              className="size-5 shrink-0 accent-cord"
+            />
             {choice.words}
           </label>
         ))}

@@ -44,6 +44,9 @@ const mostNamed = 4
 /** What tells this symptom from the others: the words that matched, its chart where that is called otherwise, the machines it is written for. */
 function toHint({ matched, title, chartTitle, classes }: Symptom, isSearch: boolean): string {
   const named = classes.slice(0, classes.length > mostNamed ? mostNamed - 1 : mostNamed).map((name) => equipmentClassWords[name].toLowerCase())
-  const machines = classes.length === 0 || classes.length === equipmentClasses.length ? 'any machine' : [...named, ...(classes.length > mostNamed ? ['others'] : [])].join(', ')
+  const machines =
+    classes.length === 0 || classes.length === equipmentClasses.length
+      ? 'any machine'
+      : [...named, ...(classes.length > mostNamed ? ['others'] : [])].join(', ')
   return [isSearch && matched !== null ? `“${matched}”` : null, title === chartTitle ? null : chartTitle, machines].filter(Boolean).join(' · ')
 }

@@ -45,7 +45,7 @@ export function SymptomSearch({ words, onWords }: SymptomSearchProps) {
             else onWords('')
           }
         }}
-        className="h-18 w-full rounded-control border-2 border-ink bg-card pr-24 pl-5 text-[1.375rem] placeholder:text-ink-2 md:h-20"
+        className="h-18 w-full rounded-control border-2 border-ink bg-card pr-4 pl-4 sm:pr-24 sm:pl-5 text-[1.375rem] placeholder:text-ink-2 md:h-20"
       />
       <kbd aria-hidden="true" className="figures pointer-events-none absolute inset-y-0 right-5 hidden items-center text-small text-ink-2 sm:flex">
         {words === '' ? '/' : ''}

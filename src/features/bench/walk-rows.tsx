@@ -28,12 +28,18 @@ export function OpenWalkRow({ walk, isFirst, as = 'mine' }: OpenWalkRowProps) {
     <RuledRow className="grid grid-cols-[minmax(0,1fr)_auto] items-center gap-x-4 gap-y-1 py-3! md:grid-cols-[minmax(0,5fr)_minmax(0,4fr)_6rem_auto]">
       <Tie kind={walk.isPaused ? 'waiting' : 'check'} look={isFirst && isMine ? 'current' : 'outline'} />
       <span className="grid min-w-0">
-        <span className="truncate font-semibold">{walk.machineTitle}</span>
-        <span className="truncate text-small text-ink-2">{isMine ? walk.chartTitle.toLowerCase() : `${walk.chartTitle.toLowerCase()} · ${walk.heldBy.name}`}</span>
+        <span className="leading-6 font-semibold">{walk.machineTitle}</span>
+        <span className="text-small leading-5 text-ink-2">
+          {isMine ? walk.chartTitle.toLowerCase() : `${walk.chartTitle.toLowerCase()} · ${walk.heldBy.name}`}
+        </span>
       </span>
-      <span className="text-small text-ink-2 max-md:col-start-1 max-md:row-start-2">{toStanding(walk)}</span>
+      <span className="text-small leading-5 text-ink-2 max-md:col-start-1 max-md:row-start-2">{toStanding(walk)}</span>
       <span className="figures text-small whitespace-nowrap max-md:hidden md:text-[1.125rem]">{formatMinutes(walk.minutesUsed)}</span>
-      <ButtonLink to={isMine ? paths.walk(walk.id) : paths.walkReview(walk.id)} look={isFirst && isMine ? 'primary' : 'quiet'} className="min-w-28 max-md:col-start-2 max-md:row-span-2 max-md:row-start-1">
+      <ButtonLink
+        to={isMine ? paths.walk(walk.id) : paths.walkReview(walk.id)}
+        look={isFirst && isMine ? 'primary' : 'quiet'}
+        className="min-w-28 max-md:col-start-2 max-md:row-span-2 max-md:row-start-1"
+      >
         {isMine ? 'Go on' : as === 'question' ? 'Answer' : 'Look'}
         <span className="for-ears">: {walk.machineTitle}</span>
       </ButtonLink>

@@ -25,14 +25,21 @@ export function ChartsPage() {
           {toWords(error)}
         </Notice>
       )}
-      {data !== undefined && data.charts.length === 0 && <EmptyState title="No charts yet">A chart leads from a symptom to a proven cause. The lead publishes them.</EmptyState>}
+      {data !== undefined && data.charts.length === 0 && (
+        <EmptyState title="No charts yet">A chart leads from a symptom to a proven cause. The lead publishes them.</EmptyState>
+      )}
       {data !== undefined && data.charts.length > 0 && <RuledTable caption="Charts of the shop" columns={columns} rows={data.charts} rowKey={({ id }) => id} />}
     </div>
   )
 }
 
 const columns: readonly RuledColumn<ChartRow>[] = [
-  { key: 'title', head: 'Chart', isRowHead: true, cell: ({ id, title, version }) => (version === null ? title : <TextLink to={paths.chart(id)}>{title}</TextLink>) },
+  {
+    key: 'title',
+    head: 'Chart',
+    isRowHead: true,
+    cell: ({ id, title, version }) => (version === null ? title : <TextLink to={paths.chart(id)}>{title}</TextLink>),
+  },
   { key: 'starts', head: 'Starts with', cell: ({ starts }) => starts.map(({ title }) => title).join('; ') },
   { key: 'machines', head: 'Machines', cell: toMachines },
   {
@@ -40,7 +47,11 @@ const columns: readonly RuledColumn<ChartRow>[] = [
     head: 'On the bench',
     cell: ({ version, publishedAt, hasDraft }) => (
       <span className="flex flex-wrap gap-x-4">
-        {version === null || publishedAt === null ? <StateMark state="open">not published</StateMark> : <span className="whitespace-nowrap">{`v${version}, ${formatDay(publishedAt)}`}</span>}
+        {version === null || publishedAt === null ? (
+          <StateMark state="open">not published</StateMark>
+        ) : (
+          <span className="whitespace-nowrap">{`v${version}, ${formatDay(publishedAt)}`}</span>
+        )}
         {hasDraft && version !== null && <StateMark state="info">draft</StateMark>}
       </span>
     ),

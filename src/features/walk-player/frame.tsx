@@ -131,7 +131,13 @@ function Strip() {
               key={`${eventId ?? ''} ${place} ${isHere}`}
               className={`relative px-1 before:absolute before:inset-x-0 before:top-1/2 before:-translate-y-px before:border-t-2 before:border-cord ${toKnotClass(tied.length - index)}`}
             >
-              <Knot kind={kind} look={isHere ? 'current' : 'outline'} size={18} label={`${knotWords[kind]} ${number}: ${title}${isHere ? ', here' : ''}`} className="relative" />
+              <Knot
+                kind={kind}
+                look={isHere ? 'current' : 'outline'}
+                size={18}
+                label={`${knotWords[kind]} ${number}: ${title}${isHere ? ', here' : ''}`}
+                className="relative"
+              />
             </li>
           ))}
         </ol>
@@ -244,7 +250,11 @@ function Unsafe() {
   const { page, record, tap, openPanel } = usePlayer()
   if (page.kind !== 'caution') return null
   const leave = (): void => {
-    if (page.canSkip) record([{ type: 'check-skipped', payload: { node: page.guards.place, why: 'cannot', note: 'Could not be made safe.' } }], 'Left out: could not be made safe.')
+    if (page.canSkip)
+      record(
+        [{ type: 'check-skipped', payload: { node: page.guards.place, why: 'cannot', note: 'Could not be made safe.' } }],
+        'Left out: could not be made safe.',
+      )
     else openPanel('ask')
   }
   return (

@@ -10,13 +10,15 @@ import type { StartedWalk } from '#shared/walk/state.ts'
 import type { EventDraft } from '#src/lib/walk-log.ts'
 
 /** Pages beside the walk's own: each takes the place of the check until it is closed. */
-export const panelNames = ['more', 'note', 'ask', 'trail', 'flag', 'hold', 'hand-over', 'give-up', 'keys'] as const
+export const panelNames = ['more', 'note', 'ask', 'trail', 'flag', 'hold', 'hand-over', 'machine', 'give-up', 'keys'] as const
 export type PanelName = (typeof panelNames)[number]
 
 /** What the pages of a walk see and may do. */
 export type Player = {
   readonly walk: StartedWalk
   readonly charts: PinnedCharts
+  /** The versions behind `charts`, as documents. */
+  readonly versions: readonly ChartVersion[]
   readonly page: WalkPage
   /** Changes when another page is shown, and with nothing else. */
   readonly pageKey: string

@@ -23,7 +23,10 @@ export type Given = {
 }
 
 /** Records what a page was answered, with the steps that stood on it. */
-export function useAnswering(page: Asking): { /** False when it was refused. */ readonly answer: (given: Given) => boolean; readonly skip: (why: SkipWhy) => void } {
+export function useAnswering(page: Asking): {
+  /** False when it was refused. */ readonly answer: (given: Given) => boolean
+  readonly skip: (why: SkipWhy) => void
+} {
   const { record, seconds } = usePlayer()
   const steps = (): EventDraft[] => page.lines.map(({ place }) => ({ type: 'step-done', payload: { node: place, seconds: 0 } }))
 

@@ -95,6 +95,7 @@ export function usePlayerState({ detail, person, format }: PlayerInput): PlayerS
       : {
           walk: state,
           charts: rules.charts,
+          versions: rules.versions,
           page,
           pageKey,
           machineTitle: detail.walk.machineTitle,
@@ -120,5 +121,6 @@ function settleCause(log: OpenLog, recorded: EventId | undefined): void {
   const { state, rules } = log.getSnapshot()
   if (state.phase !== 'at-cause' || recorded === undefined) return
   const page = toPage(rules.charts, state)
-  if (page.kind === 'cause' && page.proofEventId === recorded) log.record([{ type: 'cause-proven', payload: { causeId: state.causeId, proofEventId: recorded } }])
+  if (page.kind === 'cause' && page.proofEventId === recorded)
+    log.record([{ type: 'cause-proven', payload: { causeId: state.causeId, proofEventId: recorded } }])
 }

@@ -64,7 +64,9 @@ export function useReadingEntry(name: string, judging: Judging): ReadingEntry {
   const verdict: Verdict = typed?.ok === false ? { kind: 'no-value' } : judgeTries(judging, values, unit)
   const value = values.at(-1) ?? null
 
-  useSpokenJudgement(typedTry === null ? null : `${formatValue(typedTry.value, unit, format)}: ${toValueMark(judging, typedTry.value, unit)?.words ?? 'not judged'}`)
+  useSpokenJudgement(
+    typedTry === null ? null : `${formatValue(typedTry.value, unit, format)}: ${toValueMark(judging, typedTry.value, unit)?.words ?? 'not judged'}`,
+  )
 
   const last = all.at(-1)
   return {

@@ -9,7 +9,6 @@ import type { WalkPage } from '#shared/walk/page.ts'
 import { passedOver } from '#shared/walk/select.ts'
 import { isOpen } from '#shared/walk/state.ts'
 import type { WalkDetail } from '#src/api/walk-logs.ts'
-import { useUnsentWarning } from '#src/api/walk-logs.ts'
 import { walkQueries } from '#src/api/walks.ts'
 import { EmptyState } from '#src/components/ui/empty-state.tsx'
 import { Notice } from '#src/components/ui/notice.tsx'
@@ -33,6 +32,7 @@ import { StepPage } from '#src/features/walk-player/pages/step-page.tsx'
 import { OtherHandsPage, PausedPage } from '#src/features/walk-player/pages/waiting-pages.tsx'
 import { KeysPanel, MorePanel } from '#src/features/walk-player/panels/more-panel.tsx'
 import { HandOverPanel, HoldPanel, TrailPanel } from '#src/features/walk-player/panels/walk-panels.tsx'
+import { MachinePanel } from '#src/features/walk-player/panels/machine-panel.tsx'
 import { AskPanel, FlagPanel, GiveUpPanel, NotePanel } from '#src/features/walk-player/panels/writing-panels.tsx'
 import { Answered } from '#src/features/walk-player/parts/answered.tsx'
 import { SetAsideNotice } from '#src/features/walk-player/parts/set-aside-notice.tsx'
@@ -52,7 +52,6 @@ const answerPollMs = 5000
 export function WalkPlayer({ detail, person, format }: WalkPlayerProps) {
   const { log, snapshot, panel, refusal, player } = usePlayerState({ detail, person, format })
   useWakeLock()
-  useUnsentWarning()
   const isAwaiting = player !== null && isOpen(player.walk) && player.walk.questions.some(({ answer }) => answer === null)
   useQuery({ ...walkQueries.detail(log.walkId), refetchInterval: isAwaiting ? answerPollMs : false })
   useSavedAnnouncement(snapshot.saved.kind)
@@ -160,6 +159,8 @@ function PanelOf({ name }: { readonly name: PanelName }): ReactNode {
       return <HoldPanel />
     case 'hand-over':
       return <HandOverPanel />
+    case 'machine':
+      return <MachinePanel />
     case 'give-up':
       return <GiveUpPanel />
     case 'keys':

@@ -30,7 +30,12 @@ export function AnswerQuestion({ question, askedBy, at, goTos, onAnswer }: Answe
   const id = `answer-${question.questionId}`
 
   const send = async (): Promise<void> => {
-    const wrong = text.trim() === '' ? 'Write the answer first.' : new TextEncoder().encode(text).length > noteMaxBytes ? 'An answer holds at most 10 kB. Shorten it.' : undefined
+    const wrong =
+      text.trim() === ''
+        ? 'Write the answer first.'
+        : new TextEncoder().encode(text).length > noteMaxBytes
+          ? 'An answer holds at most 10 kB. Shorten it.'
+          : undefined
     setError(wrong)
     setProblem(null)
     if (wrong !== undefined) {

@@ -8,7 +8,14 @@ import type { MarkState } from '#src/components/ui/state-mark.tsx'
 import { skipWords } from '#src/lib/walk-words.ts'
 
 /** Lines that are kept out of the short log: read by who wants every tap. */
-const minorTypes: ReadonlySet<WalkEventType> = new Set<WalkEventType>(['caution-acknowledged', 'ticked', 'paused', 'resumed', 'access-changed', 'service-changed'])
+const minorTypes: ReadonlySet<WalkEventType> = new Set<WalkEventType>([
+  'caution-acknowledged',
+  'ticked',
+  'paused',
+  'resumed',
+  'access-changed',
+  'service-changed',
+])
 
 export function isMinor({ type }: ReviewLine): boolean {
   return minorTypes.has(type)
@@ -70,7 +77,6 @@ const actWords: Readonly<Partial<Record<WalkEventType, string>>> = {
   'machine-identified': 'Machine identified',
   'caution-acknowledged': 'Cautions read',
   'access-changed': 'What’s off changed',
-  'stepped-back': 'Stepped back to this',
   jumped: 'Symptom picked',
   'suspect-named': 'Suspect named',
   'cause-proven': 'Proven',
@@ -98,6 +104,7 @@ const actWords: Readonly<Partial<Record<WalkEventType, string>>> = {
 /** The first line of an entry: the question that was answered, or the act. */
 export function toTitle({ type, node }: ReviewLine): string {
   if (type === 'started') return `Started: ${node.title}`
+  if (type === 'stepped-back') return `Stepped back to: ${node.title}`
   if (type === 'noticed') return `Noticed on the way: ${node.title}`
   return actWords[type] ?? node.title
 }
@@ -139,7 +146,10 @@ export function toKnot({ type, node, spent }: ReviewLine): { readonly kind: Knot
 const head = ['no', 'time', 'person', 'check', 'title', 'kind', 'found', 'values', 'unit', 'before', 'judged', 'note', 'minutes', 'seconds', 'spent']
 
 /** The whole log as rows of a CSV, nothing left out. */
-export function toLogCsv(lines: readonly ReviewLine[], nameOf: (personId: ReviewLine['personId']) => string): { readonly head: readonly string[]; readonly rows: readonly (readonly (string | number | null)[])[] } {
+export function toLogCsv(
+  lines: readonly ReviewLine[],
+  nameOf: (personId: ReviewLine['personId']) => string,
+): { readonly head: readonly string[]; readonly rows: readonly (readonly (string | number | null)[])[] } {
   return {
     head,
     rows: lines.map((line) => [

@@ -71,9 +71,11 @@ function LogLine({ line, isSelected, format, nameOf, walker, onSelect }: LogLine
           className={`block w-full text-left after:absolute after:inset-0 ${isSpent ? 'text-ink-2 line-through' : ''} ${line.type === 'cause-proven' ? 'font-semibold' : ''}`}
         >
           {about && line.node.number !== '' && <span className="figures mr-2 text-ink-2 sm:hidden">{line.node.number}</span>}
-          {line.type === 'stepped-back' ? 'Stepped back to here' : toTitle(line)}
+          {toTitle(line)}
         </button>
-        {found !== null && <span className={`block font-semibold ${line.reading === null ? '' : 'figures'} ${isSpent ? 'line-through decoration-1' : ''}`}>{found}</span>}
+        {found !== null && (
+          <span className={`block font-semibold ${line.reading === null ? '' : 'figures'} ${isSpent ? 'line-through decoration-1' : ''}`}>{found}</span>
+        )}
         {tries !== null && <span className="figures block text-small text-ink-2">{tries}</span>}
         {line.text !== null && <span className="block text-small break-words whitespace-pre-wrap">{line.text}</span>}
         {line.personId !== walker && <span className="block text-small text-ink-2">{nameOf(line.personId)}</span>}

@@ -32,9 +32,19 @@ type WalkReviewProps = { readonly detail: WalkDetail; readonly person: SignedIn;
 export function WalkReview({ detail, person, format }: WalkReviewProps) {
   const rules = useMemo(() => toRules(detail.charts, person), [detail.charts, person])
   const state = useMemo(() => rules.replay(detail.events), [rules, detail.events])
-  const lines = useMemo(() => toReview(rules.charts, detail.events), [rules, detail.events])
+  const lines = useMemo(() => toLines(rules, detail), [rules, detail])
   if (state.phase === 'new') return <p className="pt-6">This walk has no beginning: its log does not start with a start.</p>
   return <Review detail={detail} person={person} format={format} rules={rules} walk={state} lines={lines} />
+}
+
+/** The story of the walk; a step back is told at the check that it went back to. */
+function toLines(rules: PlayerRules, { events }: WalkDetail): readonly ReviewLine[] {
+  const lines = toReview(rules.charts, events)
+  const wentTo = new Map(events.flatMap((event) => (event.type === 'stepped-back' ? [[event.id, event.payload.toEventId] as const] : [])))
+  return lines.map((line) => {
+    const target = lines.find(({ eventId }) => eventId === wentTo.get(line.eventId))
+    return target === undefined ? line : { ...line, node: target.node }
+  })
 }
 
 type ReviewProps = WalkReviewProps & { readonly rules: PlayerRules; readonly walk: StartedWalk; readonly lines: readonly ReviewLine[] }
@@ -60,6 +70,9 @@ function Review({ detail, person, format, rules, walk, lines }: ReviewProps) {
   return (
     <div className="-mr-(--page-edge) lg:grid lg:grid-cols-[minmax(0,1fr)_minmax(0,1fr)] print:mr-0 print:block">
       <div className="max-w-[52rem] pr-(--page-edge) pb-10">
+        <p className="hidden pb-4 font-semibold print:block">
+          {detail.walk.machineTitle} · {detail.walk.chartTitle}, version {detail.walk.version}
+        </p>
         <ReviewBar detail={detail} walk={walk} lines={lines} nameOf={nameOf} person={person} />
         <ReviewHead detail={detail} walk={walk} nameOf={nameOf} />
         <Questions detail={detail} walk={walk} rules={rules} person={person} nameOf={nameOf} />
@@ -72,7 +85,10 @@ function Review({ detail, person, format, rules, walk, lines }: ReviewProps) {
         <SideEvents walkId={walk.walkId} charts={charts} walk={walk} format={format} nameOf={nameOf} />
         <p className="mt-6 text-small text-ink-2">The maker’s manual, local codes and licensed practice come first.</p>
       </div>
-      <aside aria-label="Way on the chart" className="border-rule bg-well max-lg:border-t lg:sticky lg:top-0 lg:flex lg:h-dvh lg:flex-col lg:border-l print:mt-6 print:break-before-page print:border-0">
+      <aside
+        aria-label="Way on the chart"
+        className="border-rule bg-well max-lg:border-t lg:sticky lg:top-0 lg:flex lg:h-dvh lg:flex-col lg:border-l print:mt-6 print:break-before-page print:border-0"
+      >
         <RoutePicture
           walk={walk}
           charts={charts}
@@ -91,7 +107,13 @@ function Review({ detail, person, format, rules, walk, lines }: ReviewProps) {
 type Named = { readonly nameOf: (personId: PersonId) => string }
 
 /** What can be done with the review. */
-function ReviewBar({ detail, walk, lines, nameOf, person }: Named & { readonly detail: WalkDetail; readonly walk: StartedWalk; readonly lines: readonly ReviewLine[]; readonly person: SignedIn }) {
+function ReviewBar({
+  detail,
+  walk,
+  lines,
+  nameOf,
+  person,
+}: Named & { readonly detail: WalkDetail; readonly walk: StartedWalk; readonly lines: readonly ReviewLine[]; readonly person: SignedIn }) {
   const save = (): void => {
     const { head, rows } = toLogCsv(lines, nameOf)
     downloadCsv(`walk-${walk.startedAt.slice(0, 10)}-${walk.walkId.slice(0, 8)}.csv`, toCsv(head, rows))
@@ -138,7 +160,8 @@ function ReviewHead({ detail, walk, nameOf }: Named & { readonly detail: WalkDet
         <p className="text-[1.125rem] leading-7">{nameOf(walk.startedBy)}</p>
       </div>
       <p className="col-span-full text-small text-ink-2">
-        {formatMoment(walk.startedAt)} · {formatSeconds(walk.secondsMeasured)} measured{walk.waitMinutes > 0 ? ` · ${formatMinutes(walk.waitMinutes)} waited` : ''}
+        {formatMoment(walk.startedAt)} · {formatSeconds(walk.secondsMeasured)} measured
+        {walk.waitMinutes > 0 ? ` · ${formatMinutes(walk.waitMinutes)} waited` : ''}
       </p>
     </div>
   )
@@ -146,7 +169,8 @@ function ReviewHead({ detail, walk, nameOf }: Named & { readonly detail: WalkDet
 
 /** What the walk came to, or where it stands. */
 function toOutcome({ walk: row }: WalkDetail, walk: StartedWalk): { readonly over: string; readonly title: string } {
-  if (walk.phase === 'closed') return row.causeTitle === null ? { over: 'Closed', title: resultWords[walk.result] } : { over: resultWords[walk.result], title: row.causeTitle }
+  if (walk.phase === 'closed')
+    return row.causeTitle === null ? { over: 'Closed', title: resultWords[walk.result] } : { over: resultWords[walk.result], title: row.causeTitle }
   if (walk.phase === 'abandoned') return { over: 'Given up', title: walk.why }
   if (row.causeTitle !== null) return { over: 'Proven', title: row.causeTitle }
   return { over: walk.isPaused ? 'Paused' : 'Open', title: row.standsAt }
@@ -161,7 +185,10 @@ function Questions({ walk, rules, person, nameOf }: QuestionsProps) {
   if (open.length === 0 || !hasRole(person.role, 'lead')) return null
   const canGo = walk.phase === 'at-node' || walk.phase === 'at-cause' || walk.phase === 'escalated'
   const here = chartOf(rules.charts, walk.pins, splitPlace(walk.node).chartId)
-  const goTos = canGo && here !== null ? here.chart.nodes.filter((node) => isDecision(node) || node.kind === 'step').map((node) => toGoTo(rules, walk, `${here.id}/${node.id}` as Place)) : []
+  const goTos =
+    canGo && here !== null
+      ? here.chart.nodes.filter((node) => isDecision(node) || node.kind === 'step').map((node) => toGoTo(rules, walk, `${here.id}/${node.id}` as Place))
+      : []
   return open.map((question) => (
     <AnswerQuestion
       key={question.questionId}

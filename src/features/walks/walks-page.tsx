@@ -87,10 +87,20 @@ export function WalksPage({ person }: { readonly person: SignedIn }) {
 const columns: readonly RuledColumn<WalkRow>[] = [
   { key: 'machine', head: 'Machine', isRowHead: true, cell: ({ id, machineTitle }) => <TextLink to={paths.walkReview(id)}>{machineTitle}</TextLink> },
   { key: 'symptom', head: 'Symptom', cell: ({ chartTitle, version }) => `${chartTitle}, v${version}` },
-  { key: 'stands', head: 'Where it stands', cell: ({ causeTitle, standsAt, isPaused, hasQuestion }) => [isPaused ? 'paused' : null, hasQuestion ? 'asked the lead' : null, causeTitle ?? standsAt].filter(Boolean).join(' · ') },
+  {
+    key: 'stands',
+    head: 'Where it stands',
+    cell: ({ causeTitle, standsAt, isPaused, hasQuestion }) =>
+      [isPaused ? 'paused' : null, hasQuestion ? 'asked the lead' : null, causeTitle ?? standsAt].filter(Boolean).join(' · '),
+  },
   { key: 'person', head: 'Walked by', cell: ({ startedBy }) => startedBy.name },
   { key: 'started', head: 'Started', cell: ({ startedAt }) => <span className="whitespace-nowrap">{formatMoment(startedAt)}</span> },
-  { key: 'minutes', head: 'Minutes', align: 'right', cell: ({ minutesUsed }) => <span className="figures whitespace-nowrap">{formatMinutes(minutesUsed)}</span> },
+  {
+    key: 'minutes',
+    head: 'Minutes',
+    align: 'right',
+    cell: ({ minutesUsed }) => <span className="figures whitespace-nowrap">{formatMinutes(minutesUsed)}</span>,
+  },
 ]
 
 function saveCsv(walks: readonly WalkRow[]): void {

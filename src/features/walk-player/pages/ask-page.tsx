@@ -32,11 +32,21 @@ export function AskPage({ page }: { readonly page: Page }) {
           {page.node.do !== null && <p className="mt-3">{page.node.do}</p>}
           <SkippedList skipped={page.skipped} />
           <div className="mt-6">
-            <NoteField label="What the lead should know" hint="You may leave it empty: the lead sees everything that was found." value={text} onChange={setText} />
+            <NoteField
+              label="What the lead should know"
+              hint="You may leave it empty: the lead sees everything that was found."
+              value={text}
+              onChange={setText}
+            />
           </div>
         </>
       }
-      answers={<ActList label="Ask the lead" acts={[{ key: 'ask', title: 'Ask the lead', words: 'the walk waits here for the answer', look: 'leading', onPress: ask }]} />}
+      answers={
+        <ActList
+          label="Ask the lead"
+          acts={[{ key: 'ask', title: 'Ask the lead', words: 'the walk waits here for the answer', look: 'leading', onPress: ask }]}
+        />
+      }
     />
   )
 }

@@ -49,7 +49,11 @@ type TakeBeforeProps = { readonly page: Page; readonly onTaken: (taken: Taken) =
 
 function TakeBefore({ page, onTaken }: TakeBeforeProps) {
   const { skip } = useAnswering(page.proof)
-  return page.judging === null ? <BeforeByLook page={page} onTaken={onTaken} skip={skip} /> : <BeforeByValue page={page} judging={page.judging} onTaken={onTaken} skip={skip} />
+  return page.judging === null ? (
+    <BeforeByLook page={page} onTaken={onTaken} skip={skip} />
+  ) : (
+    <BeforeByValue page={page} judging={page.judging} onTaken={onTaken} skip={skip} />
+  )
 }
 
 type StageProps = TakeBeforeProps & { readonly skip: (why: SkipWhy) => void }

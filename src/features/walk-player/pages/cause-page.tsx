@@ -63,7 +63,12 @@ export function CausePage({ page }: { readonly page: Page }) {
           label="Is it this?"
           acts={[
             { key: 'yes', title: 'That is it', words: 'on to the fix', look: 'leading', onPress: () => settle('cause-proven', `Proven: ${cause.title}`) },
-            { key: 'no', title: 'Not this', words: 'it is ruled out, the walk goes on', onPress: () => settle('cause-not-proven', `Ruled out: ${cause.title}`) },
+            {
+              key: 'no',
+              title: 'Not this',
+              words: 'it is ruled out, the walk goes on',
+              onPress: () => settle('cause-not-proven', `Ruled out: ${cause.title}`),
+            },
           ]}
         />
       }

@@ -47,7 +47,13 @@ export function CautionPage({ page }: { readonly page: Page }) {
       </div>
       <div className="mt-auto flex flex-wrap items-center justify-end gap-x-6 gap-y-3 pt-4 md:pt-8">
         <p className="min-w-0 flex-1 basis-32 text-small leading-5 text-ink-2">The maker’s manual, local codes and licensed practice come first.</p>
-        <Button look="primary" size="large" aria-disabled={!isAwake} onClick={() => tap(read)} className="min-h-18 min-w-44 text-[1.25rem] md:min-h-22 md:min-w-64">
+        <Button
+          look="primary"
+          size="large"
+          aria-disabled={!isAwake}
+          onClick={() => tap(read)}
+          className="min-h-18 min-w-44 text-[1.25rem] md:min-h-22 md:min-w-64"
+        >
           Read it
         </Button>
       </div>

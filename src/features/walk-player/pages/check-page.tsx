@@ -26,7 +26,9 @@ export function CheckPage({ page }: { readonly page: Page }) {
       answers={
         <AnswerList
           question={node.title}
-          answers={page.outcomes.map((choice) => toAnswer(choice, offered, () => answer({ choice, reuses: offered?.answer.outcome === choice.outcome ? offered : null })))}
+          answers={page.outcomes.map((choice) =>
+            toAnswer(choice, offered, () => answer({ choice, reuses: offered?.answer.outcome === choice.outcome ? offered : null })),
+          )}
           noAnswer={page.noAnswer}
           onNoAnswer={skip}
         />
@@ -39,7 +41,14 @@ export function CheckPage({ page }: { readonly page: Page }) {
 function toAnswer(choice: OutcomeChoice, offered: OfferedAnswer | null, onPress: () => void): Answer {
   const isOffered = offered?.answer.outcome === choice.outcome
   const words = isOffered ? toOfferedWords(offered) : toOutcomeWords(choice)
-  return { key: choice.outcome, numeral: choice.balloon, title: choice.title, look: isOffered ? 'leading' : 'plain', onPress, ...(words === undefined ? {} : { words }) }
+  return {
+    key: choice.outcome,
+    numeral: choice.balloon,
+    title: choice.title,
+    look: isOffered ? 'leading' : 'plain',
+    onPress,
+    ...(words === undefined ? {} : { words }),
+  }
 }
 
 /** Where an offered answer comes from. */

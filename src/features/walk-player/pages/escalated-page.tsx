@@ -16,7 +16,11 @@ export function EscalatedPage({ page }: { readonly page: Page }) {
     <Sheet
       what={
         <>
-          <PageHead knot="escalate" over={[isAsked ? 'Waiting' : 'The walk stops here', page.at.title]} title={isAsked ? 'The lead is asked' : 'Ask the lead how to go on'} />
+          <PageHead
+            knot="escalate"
+            over={[isAsked ? 'Waiting' : 'The walk stops here', page.at.title]}
+            title={isAsked ? 'The lead is asked' : 'Ask the lead how to go on'}
+          />
           <p className="mt-3">{page.reasonWords}</p>
           <p className="mt-2 text-ink-2">Leave the machine as it stands. {isAsked ? 'The answer appears here by itself.' : 'Nobody is asked yet.'}</p>
           <QuestionList questions={page.questions} />
@@ -81,7 +85,9 @@ export function QuestionList({ questions }: { readonly questions: readonly Quest
             ) : (
               <p className="mt-1 border-l-4 border-info pl-3 whitespace-pre-wrap">
                 {answer}
-                {goTo !== null && <span className="block text-small text-ink-2">Go on at {goTo.number === '' ? goTo.title : `${goTo.number} ${goTo.title}`}</span>}
+                {goTo !== null && (
+                  <span className="block text-small text-ink-2">Go on at {goTo.number === '' ? goTo.title : `${goTo.number} ${goTo.title}`}</span>
+                )}
               </p>
             )}
           </RuledRow>

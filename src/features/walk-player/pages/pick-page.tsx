@@ -64,7 +64,13 @@ export function PickPage({ page }: { readonly page: Page }) {
             acts={choices.map((choice) => ({
               key: `${choice.chartId}/${choice.startId}`,
               title: choice.title,
-              ...(choice.title === choice.chartTitle && choice.fits ? {} : { words: [choice.title === choice.chartTitle ? null : choice.chartTitle, choice.fits ? null : 'written for other machines'].filter(Boolean).join(' · ') }),
+              ...(choice.title === choice.chartTitle && choice.fits
+                ? {}
+                : {
+                    words: [choice.title === choice.chartTitle ? null : choice.chartTitle, choice.fits ? null : 'written for other machines']
+                      .filter(Boolean)
+                      .join(' · '),
+                  }),
               onPress: () => void pick(choice),
             }))}
           />
@@ -79,7 +85,8 @@ function toChoices(page: Page, symptoms: readonly Symptom[], walk: ReturnType<ty
   const here = splitPlace(walk.start)
   const fitsMachine = (symptom: Symptom | undefined): boolean =>
     symptom === undefined ||
-    ((symptom.classes.length === 0 || symptom.classes.includes(walk.machine.class)) && (symptom.engines.length === 0 || symptom.engines.includes(walk.machine.engine)))
+    ((symptom.classes.length === 0 || symptom.classes.includes(walk.machine.class)) &&
+      (symptom.engines.length === 0 || symptom.engines.includes(walk.machine.engine)))
   const known = new Set(page.starts.map(({ chartId }) => chartId))
   const pinned = page.starts.map(({ chartId, startId, title, chartTitle }) => ({
     chartId,
@@ -90,7 +97,13 @@ function toChoices(page: Page, symptoms: readonly Symptom[], walk: ReturnType<ty
   }))
   const others = symptoms
     .filter(({ chartId }) => !known.has(chartId))
-    .map((symptom) => ({ chartId: symptom.chartId, startId: symptom.startId, title: symptom.title, chartTitle: symptom.chartTitle, fits: fitsMachine(symptom) }))
+    .map((symptom) => ({
+      chartId: symptom.chartId,
+      startId: symptom.startId,
+      title: symptom.title,
+      chartTitle: symptom.chartTitle,
+      fits: fitsMachine(symptom),
+    }))
   return [...pinned, ...others]
     .filter(({ chartId, startId }) => chartId !== here.chartId || startId !== here.nodeId)
     .toSorted((left, right) => Number(right.fits) - Number(left.fits))

@@ -94,7 +94,8 @@ function ProofByLook({ page, taken }: ProofPageProps) {
   const field = useRef<HTMLTextAreaElement>(null)
   const text = note ?? ''
   const press = (choice: OutcomeChoice): void => {
-    const wrong = toLengthWords(text) ?? (page.needsNote && choice.confirms && text.trim() === '' ? 'Write what the second look showed: it is the proof.' : undefined)
+    const wrong =
+      toLengthWords(text) ?? (page.needsNote && choice.confirms && text.trim() === '' ? 'Write what the second look showed: it is the proof.' : undefined)
     setError(wrong)
     if (wrong !== undefined) {
       announce(wrong)
@@ -129,7 +130,13 @@ function ProofByLook({ page, taken }: ProofPageProps) {
           question={page.node.title}
           answers={page.outcomes.map((choice) => {
             const words = toProofWords(page, choice)
-            return { key: choice.outcome, numeral: choice.balloon, title: choice.title, onPress: () => press(choice), ...(words === undefined ? {} : { words }) }
+            return {
+              key: choice.outcome,
+              numeral: choice.balloon,
+              title: choice.title,
+              onPress: () => press(choice),
+              ...(words === undefined ? {} : { words }),
+            }
           })}
           noAnswer={page.noAnswer}
           onNoAnswer={skip}

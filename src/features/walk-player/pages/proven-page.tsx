@@ -22,7 +22,12 @@ export function ProvenPage({ page }: { readonly page: Page }) {
     <Sheet
       what={
         <>
-          <PageHead knot="cause" over={['Proven', cause.system === null ? null : systemWords[cause.system]]} title={cause.title} tab={`Proven: ${cause.title}`} />
+          <PageHead
+            knot="cause"
+            over={['Proven', cause.system === null ? null : systemWords[cause.system]]}
+            title={cause.title}
+            tab={`Proven: ${cause.title}`}
+          />
           <p className="mt-2 flex flex-wrap gap-x-4">
             <StateMark state="good">{found === null ? 'proven by a second look' : `proven: ${found}`}</StateMark>
             {cause.isUnsafe && <StateMark state="bad">not safe to use until it is put right</StateMark>}
@@ -52,7 +57,11 @@ function useProof(): string | null {
 function FixList({ fix }: { readonly fix: Page['fix'] }) {
   const { format, record } = usePlayer()
   return (
-    <RuledSection title="The fix" aside={fix?.minutes == null ? undefined : <span className="figures text-small">{formatMinutes(fix.minutes)}</span>} className="mt-6">
+    <RuledSection
+      title="The fix"
+      aside={fix?.minutes == null ? undefined : <span className="figures text-small">{formatMinutes(fix.minutes)}</span>}
+      className="mt-6"
+    >
       {fix === null ? (
         <p className="py-3 text-ink-2">The chart knows no fix for this. Do what the maker’s manual says, and note it.</p>
       ) : (
@@ -106,7 +115,11 @@ export function ServiceList({ service, choices = [] }: { readonly service: reado
           <ul role="list" className="border-t border-hair">
             {choices.map(({ serviceItemId, title }) => (
               <li key={serviceItemId} className="border-b border-hair">
-                <button type="button" onClick={() => tap(() => change([serviceItemId], []))} className="flex min-h-14 w-full items-center gap-3 text-left hover:bg-cord-wash">
+                <button
+                  type="button"
+                  onClick={() => tap(() => change([serviceItemId], []))}
+                  className="flex min-h-14 w-full items-center gap-3 text-left hover:bg-cord-wash"
+                >
                   <span aria-hidden="true" className="figures w-8 text-center text-cord">
                     +
                   </span>
@@ -133,7 +146,13 @@ function ContributingList({ contributing }: { readonly contributing: readonly Co
     <RuledSection title="What led to it">
       <ul role="list">
         {contributing.map(({ causeId, title, advice, isSet }) => (
-          <TickRow key={causeId} title={title} words={isSet && advice !== null ? `On the report: ${advice}` : undefined} isOn={isSet} onToggle={(on) => toggle(causeId, on)} />
+          <TickRow
+            key={causeId}
+            title={title}
+            words={isSet && advice !== null ? `On the report: ${advice}` : undefined}
+            isOn={isSet}
+            onToggle={(on) => toggle(causeId, on)}
+          />
         ))}
       </ul>
     </RuledSection>
@@ -169,7 +188,12 @@ function RepairActs({ page }: { readonly page: Page }) {
         acts={[
           { key: 'done', title: 'Fix done', words: 'on to the hand-back run', look: 'leading', onPress: done },
           page.canCloseUnrepaired
-            ? { key: 'not', title: 'Not going to be repaired', words: 'close with the cause on record', onPress: () => record([{ type: 'closed', payload: { result: 'not-repaired' } }], 'Closed: not repaired.') }
+            ? {
+                key: 'not',
+                title: 'Not going to be repaired',
+                words: 'close with the cause on record',
+                onPress: () => record([{ type: 'closed', payload: { result: 'not-repaired' } }], 'Closed: not repaired.'),
+              }
             : { key: 'hold', title: 'Not going to be repaired', words: `hold it: ${cause.title.toLowerCase()} is not safe`, onPress: () => openPanel('hold') },
         ]}
       />

@@ -20,7 +20,8 @@ export function ReadingPage({ page }: { readonly page: Page }) {
   const { answer, skip } = useAnswering(page)
   const onRecord = (choice: OutcomeChoice, judgedBy: 'limits' | 'hand'): void => {
     const { measured } = entry
-    const said = measured.value === undefined || measured.unit === undefined ? choice.title : `${formatValue(measured.value, measured.unit, format)}, ${choice.title}`
+    const said =
+      measured.value === undefined || measured.unit === undefined ? choice.title : `${formatValue(measured.value, measured.unit, format)}, ${choice.title}`
     if (answer({ choice, judgedBy, measured, said })) entry.forget()
   }
   const act = useRecordAct(entry, outcomes, onRecord)

@@ -55,7 +55,10 @@ export function RunPage({ page }: { readonly page: Page }) {
   }
   const finish = (type: 'run-passed' | 'run-failed', said: string): void => {
     const items = verdicts.flatMap(({ item, verdict }): RunItem[] => (verdict === null ? [] : [{ id: item.id, result: verdict, ...run.values[item.id] }]))
-    const draft = type === 'run-passed' ? ({ type, payload: { items } } as const) : ({ type, payload: { items, ...(note.trim() === '' ? {} : { note: note.trim() }) } } as const)
+    const draft =
+      type === 'run-passed'
+        ? ({ type, payload: { items } } as const)
+        : ({ type, payload: { items, ...(note.trim() === '' ? {} : { note: note.trim() }) } } as const)
     if (record([draft], said)) keep(null)
   }
 
@@ -120,7 +123,12 @@ export function RunPage({ page }: { readonly page: Page }) {
   )
 }
 
-type RunRowProps = { readonly item: RunWords; readonly run: Run; readonly onKeep: (run: Run) => void; readonly onMark: (as: 'failed' | 'not-applicable' | null) => void }
+type RunRowProps = {
+  readonly item: RunWords
+  readonly run: Run
+  readonly onKeep: (run: Run) => void
+  readonly onMark: (as: 'failed' | 'not-applicable' | null) => void
+}
 
 function RunRow({ item, run, onKeep, onMark }: RunRowProps) {
   const { format, record } = usePlayer()
@@ -204,7 +212,13 @@ function RunValue({ item, reading, onValue, onCancel }: RunValueProps) {
   const value = typed?.ok === true ? typed.value : null
   const isIn = value === null || item.limits === null ? null : isWithin(item.limits, value, unit)
   const mark: { state: MarkState; words: string } | null =
-    value === null ? null : isIn === null ? { state: 'open', words: 'noted' } : isIn ? { state: 'good', words: 'in limits' } : { state: 'bad', words: 'out of limits' }
+    value === null
+      ? null
+      : isIn === null
+        ? { state: 'open', words: 'noted' }
+        : isIn
+          ? { state: 'good', words: 'in limits' }
+          : { state: 'bad', words: 'out of limits' }
   const take = (): void => {
     const read = typed ?? ok(null)
     if (read.ok && read.value !== null) onValue({ value: read.value, unit }, isIn !== false)

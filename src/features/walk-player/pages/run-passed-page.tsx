@@ -13,7 +13,9 @@ export function RunPassedPage({ page }: { readonly page: Page }) {
   const { walk, format } = usePlayer()
   const led = page.contributing.filter(({ isSet }) => isSet).map(({ title }) => title)
   const titles = new Map(handBackRun(walk.machine.class).map(({ id, title }) => [id, title]))
-  const readings = page.run.flatMap(({ id, value, unit }) => (value === undefined || unit === undefined ? [] : [`${titles.get(id) ?? id}: ${formatValue(value, unit, format)}`]))
+  const readings = page.run.flatMap(({ id, value, unit }) =>
+    value === undefined || unit === undefined ? [] : [`${titles.get(id) ?? id}: ${formatValue(value, unit, format)}`],
+  )
   const parts = page.repair.partsUsed.map(({ title, quantity }) => `${title}, ${formatNumber(quantity, format)}\u00a0×`)
   return (
     <Sheet

@@ -29,7 +29,14 @@ export function PausedPage({ page }: { readonly page: Page }) {
           {waiting !== null && <p className="mt-3">Next: {waiting}</p>}
         </>
       }
-      answers={isMine ? <ActList label="Paused" acts={[{ key: 'on', title: 'Go on', look: 'leading', onPress: () => record([{ type: 'resumed', payload: {} }], 'Going on.') }]} /> : null}
+      answers={
+        isMine ? (
+          <ActList
+            label="Paused"
+            acts={[{ key: 'on', title: 'Go on', look: 'leading', onPress: () => record([{ type: 'resumed', payload: {} }], 'Going on.') }]}
+          />
+        ) : null
+      }
     />
   )
 }
@@ -71,7 +78,10 @@ export function OtherHandsPage({ page }: { readonly page: WalkPage }) {
       }
       answers={
         isMine ? (
-          <ActList label="Go on here" acts={[{ key: 'here', title: 'Go on here', look: 'leading', onPress: () => record([{ type: 'resumed', payload: {} }], 'Going on here.') }]} />
+          <ActList
+            label="Go on here"
+            acts={[{ key: 'here', title: 'Go on here', look: 'leading', onPress: () => record([{ type: 'resumed', payload: {} }], 'Going on here.') }]}
+          />
         ) : mayTake ? (
           <ActList label="Take it over" acts={[{ key: 'take', title: 'Take it over', look: 'leading', onPress: take }]} />
         ) : (

@@ -37,6 +37,7 @@ export function MorePanel() {
         )}
         {isGoing && (
           <>
+            <Way name="machine" words="Model and serial number" openPanel={openPanel} />
             <Way name="flag" words="Something is wrong with this check" openPanel={openPanel} />
             {walk.phase !== 'held' && <Way name="hold" words="Hold it: not safe to hand back" openPanel={openPanel} />}
             <Way name="give-up" words="Give the walk up" openPanel={openPanel} />
@@ -76,7 +77,11 @@ function Row({ children }: { readonly children: ReactNode }) {
 
 function RowButton({ onClick, children }: { readonly onClick: () => void; readonly children: ReactNode }) {
   return (
-    <button type="button" onClick={onClick} className="flex min-h-14 w-full items-center justify-between gap-4 py-2 text-left leading-7 font-medium hover:bg-cord-wash">
+    <button
+      type="button"
+      onClick={onClick}
+      className="flex min-h-14 w-full items-center justify-between gap-4 py-2 text-left leading-7 font-medium hover:bg-cord-wash"
+    >
       {children}
     </button>
   )
@@ -108,7 +113,12 @@ export function KeysPanel() {
   const areOn = useAreShortcutsOn()
   return (
     <Panel title="Keys">
-      <Checkbox label="Single keys act" hint="Off for whoever speaks to the machine or rests a hand on the keyboard." checked={areOn} onChange={(event) => setShortcutsOn(event.target.checked)} />
+      <Checkbox
+        label="Single keys act"
+        hint="Off for whoever speaks to the machine or rests a hand on the keyboard."
+        checked={areOn}
+        onChange={(event) => setShortcutsOn(event.target.checked)}
+      />
       <RuledPairs pairs={keys.map(([name, value]) => ({ name, value }))} className={areOn ? '' : 'text-ink-2'} />
       <p className="text-small text-ink-2">No key acts while a field is being written in.</p>
     </Panel>

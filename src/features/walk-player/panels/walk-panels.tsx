@@ -25,7 +25,9 @@ export function TrailPanel() {
       ) : (
         <>
           <p className="text-small text-ink-2">
-            {canStepBack ? 'Go back to a check to answer it anew. What was found after it is offered again; nothing leaves the log.' : 'The walk is past the point where it can step back.'}
+            {canStepBack
+              ? 'Go back to a check to answer it anew. What was found after it is offered again; nothing leaves the log.'
+              : 'The walk is past the point where it can step back.'}
           </p>
           <RuledList className="border-t border-rule">
             {lines.map((line) => {
@@ -87,7 +89,13 @@ export function HandOverPanel() {
         <p>Nobody else has been in this walk yet. Pause it: the lead can take it over from the list of open walks.</p>
       ) : (
         <>
-          <RadioGroup label="To whom" name="to" choices={others.map(([value, words]) => ({ value, words }))} {...(to === null ? {} : { value: to })} onChange={(event) => setTo(event.target.value as PersonId)} />
+          <RadioGroup
+            label="To whom"
+            name="to"
+            choices={others.map(([value, words]) => ({ value, words }))}
+            {...(to === null ? {} : { value: to })}
+            onChange={(event) => setTo(event.target.value as PersonId)}
+          />
           <NoteField label="What they should know (may stay empty)" value={why} onChange={setWhy} />
           <Button look="primary" size="large" onClick={() => tap(handOver)} className="justify-self-start">
             Hand over

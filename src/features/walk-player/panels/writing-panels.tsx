@@ -2,6 +2,7 @@ import type { ReactNode } from 'react'
 import { useRef, useState } from 'react'
 
 import type { QuestionId } from '#shared/lib/ids.ts'
+import type { NodeName } from '#shared/walk/page.ts'
 import { nameAt } from '#shared/walk/words.ts'
 import { questionWords } from '#shared/walk/select.ts'
 import { Button } from '#src/components/ui/button.tsx'
@@ -18,7 +19,12 @@ type WritingProps = {
   readonly hint?: string
   /** What is missing when nothing is written. */
   readonly wanted: string
-  readonly acts: readonly { readonly words: string; readonly look: 'primary' | 'quiet' | 'danger'; readonly said: string; readonly toDrafts: (text: string) => readonly EventDraft[] }[]
+  readonly acts: readonly {
+    readonly words: string
+    readonly look: 'primary' | 'quiet' | 'danger'
+    readonly said: string
+    readonly toDrafts: (text: string) => readonly EventDraft[]
+  }[]
   /** Between the writing and its buttons. */
   readonly children?: ReactNode
 }
@@ -54,9 +60,16 @@ function Writing({ label, hint, wanted, acts, children }: WritingProps) {
   )
 }
 
+/** The check that the page is about; steps that stand on its page belong to it. */
+function useHereNode(): NodeName {
+  const { walk, charts, page } = usePlayer()
+  const shown = page.kind === 'paused' ? page.under : page
+  if (shown.kind === 'caution') return shown.guards
+  return 'node' in shown ? shown.node : nameAt(charts, walk, walk.node)
+}
+
 function useHere(): string {
-  const { walk, charts } = usePlayer()
-  const { number, title } = nameAt(charts, walk, walk.node)
+  const { number, title } = useHereNode()
   return number === '' ? title : `${number} ${title}`
 }
 
@@ -74,15 +87,21 @@ export function NotePanel() {
 }
 
 export function FlagPanel() {
-  const { walk } = usePlayer()
-  const { node } = walk
+  const { place: node } = useHereNode()
   return (
     <Panel title="Something is wrong with this check" over={useHere()}>
       <Writing
         label="What is wrong with it"
         hint="The lead reads this where the chart is written. It changes nothing in this walk."
         wanted="Write what is wrong with it first."
-        acts={[{ words: 'Flag it', look: 'primary', said: 'Flagged for the lead.', toDrafts: (text) => [{ type: 'flagged', payload: { node, text, photoIds: [] } }] }]}
+        acts={[
+          {
+            words: 'Flag it',
+            look: 'primary',
+            said: 'Flagged for the lead.',
+            toDrafts: (text) => [{ type: 'flagged', payload: { node, text, photoIds: [] } }],
+          },
+        ]}
       />
     </Panel>
   )

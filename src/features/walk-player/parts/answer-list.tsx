@@ -47,7 +47,14 @@ function OutcomeList({ question, answers, onNoAnswer }: { readonly question: str
       {answers.map((answer) => (
         <AnswerButton key={answer.key} answer={answer} tap={tap} />
       ))}
-      <OutcomeButton numeral={0} title="No answer" words="not sure · can’t do this · could not reproduce" look="open" expanded={false} onPress={() => tap(onNoAnswer)} />
+      <OutcomeButton
+        numeral={0}
+        title="No answer"
+        words="not sure · can’t do this · could not reproduce"
+        look="open"
+        expanded={false}
+        onPress={() => tap(onNoAnswer)}
+      />
       <AnswerKey numeral={0} words="No answer" run={() => tap(onNoAnswer)} />
     </div>
   )
@@ -91,7 +98,9 @@ export function NoAnswerList({ question, noAnswer, onPick, onClose }: NoAnswerLi
       <div>
         <p className="label">No answer: why?</p>
         <p className="text-small text-ink-2">
-          {ifSkipped === null ? 'Without an answer the chart ends here: the lead is asked.' : `The walk goes on as “${ifSkipped.title}”; this is shown again before the lead is asked.`}
+          {ifSkipped === null
+            ? 'Without an answer the chart ends here: the lead is asked.'
+            : `The walk goes on as “${ifSkipped.title}”; this is shown again before the lead is asked.`}
         </p>
       </div>
       {reasons.map((why, index) => {

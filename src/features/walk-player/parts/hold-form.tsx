@@ -14,7 +14,8 @@ export function HoldForm({ onHeld, why: given = '' }: { readonly onHeld?: () => 
   const [isJudged, setJudged] = useState(false)
   const tagField = useRef<HTMLInputElement>(null)
   const whyField = useRef<HTMLTextAreaElement>(null)
-  const tagError = tagNo.trim() === '' ? 'Write the number of the tag that hangs on the machine.' : tagNo.trim().length > 200 ? 'At most 200 characters.' : undefined
+  const tagError =
+    tagNo.trim() === '' ? 'Write the number of the tag that hangs on the machine.' : tagNo.trim().length > 200 ? 'At most 200 characters.' : undefined
   const whyError = why.trim() === '' ? 'Write why it is not safe.' : toLengthWords(why)
   const hold = (): void => {
     setJudged(true)
@@ -29,7 +30,15 @@ export function HoldForm({ onHeld, why: given = '' }: { readonly onHeld?: () => 
   }
   return (
     <div className="grid gap-4">
-      <TextField ref={tagField} label="Tag number" value={tagNo} onChange={(event) => setTagNo(event.target.value)} error={isJudged ? tagError : undefined} autoComplete="off" className="figures" />
+      <TextField
+        ref={tagField}
+        label="Tag number"
+        value={tagNo}
+        onChange={(event) => setTagNo(event.target.value)}
+        error={isJudged ? tagError : undefined}
+        autoComplete="off"
+        className="figures"
+      />
       <NoteField ref={whyField} label="Why it is not safe" value={why} onChange={setWhy} error={isJudged ? whyError : undefined} />
       <Button look="danger" size="large" onClick={() => tap(hold)} className="min-h-18 w-full text-body md:min-h-22">
         Hold it: not safe to hand back

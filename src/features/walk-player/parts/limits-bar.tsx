@@ -54,10 +54,7 @@ export function LimitsBar({ limits, unit, value, state, format }: LimitsBarProps
     <div aria-hidden="true" className="pt-0.5">
       <div className="relative h-6">
         <span className="absolute inset-x-0 top-1/2 border-t-2 border-rule" />
-        <span
-          className="absolute top-1/2 h-3 -translate-y-1/2 border-2 border-good bg-good-wash"
-          style={{ left: toPercent(from), right: toPercent(1 - to) }}
-        />
+        <span className="absolute top-1/2 h-3 -translate-y-1/2 border-2 border-good bg-good-wash" style={{ left: toPercent(from), right: toPercent(1 - to) }} />
         {at !== null && (
           <svg viewBox="0 0 16 16" className={`absolute top-1/2 size-4 -translate-1/2 ${tone}`} style={{ left: toPercent(at) }}>
             <path d="M8 0l8 8-8 8-8-8z" fill="currentColor" />

@@ -52,13 +52,18 @@ export function Timer({ timer }: { readonly timer: NonNullable<NodeWords['timer'
           </span>
         </p>
         <span aria-hidden="true" className="relative hidden h-3 min-w-0 flex-1 border border-rule sm:block">
-          <span className={`absolute inset-y-0 left-0 ${isMissed ? 'bg-bad' : 'bg-cord'}`} style={{ width: `${Math.min(1, seconds / timer.seconds) * 100}%` }} />
+          <span
+            className={`absolute inset-y-0 left-0 ${isMissed ? 'bg-bad' : 'bg-cord'}`}
+            style={{ width: `${Math.min(1, seconds / timer.seconds) * 100}%` }}
+          />
         </span>
       </div>
       {isAtMost && isReached && isRunning && <StateMark state="bad">Time is up: stop.</StateMark>}
       {!isAtMost && isReached && <StateMark state="good">Long enough.</StateMark>}
       {isMissed && !isRunning && (
-        <StateMark state="care">{timer.missed ?? (isAtMost ? 'That was longer than it may run. Let it cool, then do it again.' : 'That was too short. Do it again.')}</StateMark>
+        <StateMark state="care">
+          {timer.missed ?? (isAtMost ? 'That was longer than it may run. Let it cool, then do it again.' : 'That was too short. Do it again.')}
+        </StateMark>
       )}
     </div>
   )

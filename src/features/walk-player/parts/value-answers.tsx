@@ -91,7 +91,14 @@ function RecordButton({ entry, outcomes, onRecord, className }: RecordProps) {
   const shown = entry.value === null || entry.typed?.ok === false ? '' : ` ${formatNumber(entry.value, format)}`
   const isReady = entry.typed?.ok === true || entry.verdict.kind === 'outcome'
   return (
-    <Button type="submit" look="primary" size="large" aria-disabled={!isReady} onClick={(event) => (event.preventDefault(), act())} className={`min-h-16 text-body ${className}`}>
+    <Button
+      type="submit"
+      look="primary"
+      size="large"
+      aria-disabled={!isReady}
+      onClick={(event) => (event.preventDefault(), act())}
+      className={`min-h-16 text-body ${className}`}
+    >
       {entry.verdict.kind === 'more' ? `Take${shown}` : `Record${shown}`}
     </Button>
   )
