@@ -248,6 +248,25 @@ describe('cautions and the ways of a walk', () => {
     lined.given(started(), readCautions, act('step-done', { node: 'saw/x1' as never, seconds: 0 })).thenPage('check')
   })
 
+  test('a caution that two charts of one page define waits again for what either of them names', () => {
+    const caller = buildChart({
+      id: 'saw',
+      cautions: [caution('lead', { standing: true })],
+      nodes: [start(), check('n1'), step('x1'), { id: 'j1', kind: 'jump', chart: 'sub', returns: true }, ask()],
+      edges: ['s > n1', 'n1.good > x1', 'n1.bad > ask', 'x1 > j1', 'j1 > ask'],
+    })
+    const called = buildChart({
+      id: 'sub',
+      cautions: [caution('lead', { standing: true, again: ['lead-off'] })],
+      nodes: [start(), check('k1', ['good', 'bad'], { needs: ['lead-off'] }), { id: 'b', kind: 'back' }],
+      edges: ['s > k1', 'k1.good > b', 'k1.bad > b'],
+    })
+    storiesOn(caller, called)
+      .given(started(), good)
+      .thenPage('caution', (page) => expect([page.guards.place, page.cautions[0]?.again]).toEqual(['sub/k1', ['lead-off']]))
+    storiesOn(caller, called).given(started(), good, good).thenAt('ask')
+  })
+
   test('a step with a caution has its caution on a page of its own, and cannot be skipped there', () => {
     const careful = row([step('x1', { cautions: ['hot'] }), check('n2')], { cautions: [caution('hot')] })
     careful.given(started()).thenPage('caution', (page) => expect([page.guards.place, page.canSkip]).toEqual(['saw/x1', false]))

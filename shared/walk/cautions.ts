@@ -35,6 +35,11 @@ function cautionsOfNode({ index, node }: Located, metal: Metal, done: Worked): r
   return definitions(index, [...standingOf(index), ...(node.cautions ?? []), ...cautionsOfAccess(index, accesses)])
 }
 
+/** A caution that two charts of one page define: one thing, which waits again for whatever either of them names. */
+function together(known: Caution | undefined, caution: Caution): Caution {
+  return known === undefined || known === caution ? caution : { ...known, again: [...new Set([...(known.again ?? []), ...(caution.again ?? [])])] }
+}
+
 /** Recording some nodes one after the other, as on one page. */
 export function actOfNodes(metal: Metal, nodes: readonly Located[]): Act {
   const cautions = new Map<CautionId, Caution>()
@@ -42,7 +47,7 @@ export function actOfNodes(metal: Metal, nodes: readonly Located[]): Act {
   let before = metal
   for (const node of nodes) {
     const done = enter(before, node)
-    for (const caution of cautionsOfNode(node, before, done)) if (!cautions.has(caution.id)) cautions.set(caution.id, caution)
+    for (const caution of cautionsOfNode(node, before, done)) cautions.set(caution.id, together(cautions.get(caution.id), caution))
     for (const trigger of done.changed) changes.add(trigger)
     before = done.metal
   }
