@@ -30,12 +30,18 @@ export function actOn(page: WalkPage, answers: Answers): readonly Draft[] {
     case 'cause': {
       const { causeId } = page.cause
       if (causeId === null) return []
-      const proof = page.proofEventId === null ? { sight: { note: 'Looked at it once more in good light: no doubt.', photoIds: [] } } : { proofEventId: page.proofEventId }
+      const proof =
+        page.proofEventId === null ? { sight: { note: 'Looked at it once more in good light: no doubt.', photoIds: [] } } : { proofEventId: page.proofEventId }
       return [{ type: 'cause-proven', payload: { causeId, ...proof } }]
     }
     case 'proven': {
       const parts = (page.fix?.items ?? []).slice(1).map(({ title, quantity }) => ({ title: title.slice(0, 200), quantity: quantity ?? 1 }))
-      return [{ type: 'repair-done', payload: { serviceDone: page.service.map(({ serviceItemId }) => serviceItemId), partsUsed: parts, minutes: page.fix?.minutes ?? 10 } }]
+      return [
+        {
+          type: 'repair-done',
+          payload: { serviceDone: page.service.map(({ serviceItemId }) => serviceItemId), partsUsed: parts, minutes: page.fix?.minutes ?? 10 },
+        },
+      ]
     }
     case 'run':
       return runIt(page)
@@ -53,7 +59,8 @@ function isAnsweredBy(node: NodeName, answers: Answers): string | undefined {
 
 function pick(page: { readonly node: NodeName; readonly outcomes: readonly OutcomeChoice[] }, answers: Answers): OutcomeChoice {
   const wanted = isAnsweredBy(page.node, answers)
-  const found = page.outcomes.find(({ outcome }) => outcome === wanted) ?? page.outcomes.find(({ confirms, isNormal }) => confirms || isNormal) ?? page.outcomes[0]
+  const found =
+    page.outcomes.find(({ outcome }) => outcome === wanted) ?? page.outcomes.find(({ confirms, isNormal }) => confirms || isNormal) ?? page.outcomes[0]
   if (found === undefined) throw new Error(`${page.node.place} has no outcome.`)
   return found
 }
@@ -72,7 +79,10 @@ function answer(page: CheckPage | ReadingPage | ProofPage, answers: Answers, bef
     photoIds: [],
     seconds: 30 + 60 * page.node.minutes,
   }
-  return [...page.lines.map((line): Draft => ({ type: 'step-done', payload: { node: line.place, seconds: 0 } })), { type: 'finding-recorded', payload: finding }]
+  return [
+    ...page.lines.map((line): Draft => ({ type: 'step-done', payload: { node: line.place, seconds: 0 } })),
+    { type: 'finding-recorded', payload: finding },
+  ]
 }
 
 function takeBefore(page: BeforePage, answers: Answers): Finding['before'] {

@@ -34,7 +34,14 @@ export async function addDemoWalks(deps: Deps, people: DemoPeople): Promise<void
 }
 
 /** Acts a story out, page by page, until it ends or comes to where it stops. */
-function tell(deps: Deps, story: DemoStory, versions: readonly ChartVersion[], models: readonly MachineModel[], people: DemoPeople, deviceId: DeviceId): WalkEvent[] {
+function tell(
+  deps: Deps,
+  story: DemoStory,
+  versions: readonly ChartVersion[],
+  models: readonly MachineModel[],
+  people: DemoPeople,
+  deviceId: DeviceId,
+): WalkEvent[] {
   const charts = toPinnedCharts(versions)
   const { person } = people[story.by]
   const walkId = deps.newId() as WalkId
@@ -44,7 +51,15 @@ function tell(deps: Deps, story: DemoStory, versions: readonly ChartVersion[], m
 
   const record = (draft: Draft): void => {
     // Type and payload of a draft belong together; the spread hides that from the compiler.
-    const event = { id: deps.newId() as EventId, walkId, seq: events.length + 1, at: new Date(at).toISOString(), deviceId, personId: person.id, ...draft } as WalkEvent
+    const event = {
+      id: deps.newId() as EventId,
+      walkId,
+      seq: events.length + 1,
+      at: new Date(at).toISOString(),
+      deviceId,
+      personId: person.id,
+      ...draft,
+    } as WalkEvent
     const next = appendEvent(charts, state, event, person)
     if (!next.ok) throw new Error(`The story "${story.about}" breaks a rule at event ${event.seq} (${event.type}): ${next.error.code}`)
     state = next.value

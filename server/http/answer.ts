@@ -9,8 +9,16 @@ import type { Endpoint } from './endpoint.ts'
 export function checkAnswer(deps: Deps, endpoint: Endpoint, answer: unknown): unknown {
   const result = endpoint.contract.response.safeParse(answer)
   if (result.success) return result.data
-  if (!deps.config.isProduction) throw new Error(`The answer of ${endpoint.name} is not what its contract says: ${JSON.stringify(result.error.issues.slice(0, 5))}`)
-  deps.log.error({ event: 'answer-off-contract', endpoint: endpoint.name, issues: result.error.issues.slice(0, 20).map(({ path, code }) => ({ path: path.join('/'), reason: code })) }, 'an answer does not fit its contract')
+  if (!deps.config.isProduction)
+    throw new Error(`The answer of ${endpoint.name} is not what its contract says: ${JSON.stringify(result.error.issues.slice(0, 5))}`)
+  deps.log.error(
+    {
+      event: 'answer-off-contract',
+      endpoint: endpoint.name,
+      issues: result.error.issues.slice(0, 20).map(({ path, code }) => ({ path: path.join('/'), reason: code })),
+    },
+    'an answer does not fit its contract',
+  )
   return withoutUnknownFields(answer, result.error.issues)
 }
 

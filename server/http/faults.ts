@@ -1,4 +1,4 @@
-import { z } from 'zod'
+import type { z } from 'zod'
 import type { Fault } from '#shared/api/problem.ts'
 
 /** Most faults that one answer names; a file that is wrong throughout is not helped by ten thousand. */

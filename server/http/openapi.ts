@@ -32,12 +32,15 @@ export function toOpenApi(endpoints: readonly Endpoint[]): Json {
     info: {
       title: 'Pullcord',
       version: '1',
-      description: 'Guided diagnosis for the repair bench. Refusals are problem documents (RFC 9457); their codes are stable. Writes take JSON and come from the same origin.',
+      description:
+        'Guided diagnosis for the repair bench. Refusals are problem documents (RFC 9457); their codes are stable. Writes take JSON and come from the same origin.',
     },
     paths,
     components: {
       schemas: { ...components.schemas, ...(Object.hasOwn(components.schemas, 'Problem') ? {} : { Problem: problem }) },
-      securitySchemes: { session: { type: 'apiKey', in: 'cookie', name: 'pullcord-session', description: 'Given by sign-in; on https its name begins with __Host-.' } },
+      securitySchemes: {
+        session: { type: 'apiKey', in: 'cookie', name: 'pullcord-session', description: 'Given by sign-in; on https its name begins with __Host-.' },
+      },
     },
   }
 }
@@ -71,7 +74,15 @@ function toOperation(endpoint: Endpoint, components: Components): Json {
       ...toParameters(contract.params, 'path', components),
       ...toParameters(contract.query, 'query', components),
       ...(endpoint.needsIfMatch === true
-        ? [{ name: 'If-Match', in: 'header', required: true, description: 'The ETag of the state that is changed.', schema: { type: 'string', pattern: '^"r[0-9]+"$' } }]
+        ? [
+            {
+              name: 'If-Match',
+              in: 'header',
+              required: true,
+              description: 'The ETag of the state that is changed.',
+              schema: { type: 'string', pattern: '^"r[0-9]+"$' },
+            },
+          ]
         : []),
     ],
     ...(contract.body ? { requestBody: { required: true, content: { 'application/json': { schema: components.read(contract.body, 'input') } } } } : {}),

@@ -55,7 +55,10 @@ export function sendRefusal(response: Response, refusal: AppError): void {
   const status = refusal instanceof DoorError ? refusal.status : problems[refusal.code].status
   response.locals['problem'] = refusal.code
   if (retryAfterSeconds !== undefined) response.set('Retry-After', String(retryAfterSeconds))
-  response.status(status).type(`${problemType}; charset=utf-8`).send(JSON.stringify({ ...problem, status }))
+  response
+    .status(status)
+    .type(`${problemType}; charset=utf-8`)
+    .send(JSON.stringify({ ...problem, status }))
 }
 
 /** The last resort: every error becomes a problem document, and what is nobody's refusal is written to the log with the request's id. */

@@ -71,8 +71,10 @@ function createHandler(deps: Deps, cookies: Cookies, endpoint: Endpoint) {
 
 function authorise(role: Access, session: CurrentSession | null): void {
   if (role === 'anyone') return
-  if (session === null) throw new AppError('signed-out', 'Nobody is signed in here, or the sign-in has ended. Sign in and go on: what this device keeps stays on it.')
-  if (!hasRole(session.person.role, role)) throw new AppError('not-allowed', `This is for the ${role === 'owner' ? 'owner' : 'lead or the owner'} of the shop. Ask them.`)
+  if (session === null)
+    throw new AppError('signed-out', 'Nobody is signed in here, or the sign-in has ended. Sign in and go on: what this device keeps stays on it.')
+  if (!hasRole(session.person.role, role))
+    throw new AppError('not-allowed', `This is for the ${role === 'owner' ? 'owner' : 'lead or the owner'} of the shop. Ask them.`)
 }
 
 type Inputs = Pick<Call<Contract, Access>, 'params' | 'query' | 'body'>
@@ -80,7 +82,7 @@ type BodyParser = ReturnType<typeof express.json>
 
 async function readInputs({ contract }: Endpoint, request: Request, response: Response, parseJson: BodyParser): Promise<Inputs> {
   const params = contract.params ? readInput(contract.params, request.params) : { data: undefined }
-  if ('faults' in params) throw new AppError('not-found', 'There is nothing at this address: a part of it can\'t be an id.')
+  if ('faults' in params) throw new AppError('not-found', "There is nothing at this address: a part of it can't be an id.")
   const query = contract.query ? readInput(contract.query, request.query, ['query']) : { data: undefined }
   if ('faults' in query) throw new AppError('invalid-input', 'Part of the address behind the question mark was not understood.', { errors: query.faults })
   return { params: params.data, query: query.data, body: await readBody(contract, request, response, parseJson) } as Inputs
@@ -99,7 +101,14 @@ async function readBody({ body: schema }: Contract, request: Request, response: 
     })
   })
   const read = readInput(schema, request.body)
-  if ('faults' in read) throw new AppError('invalid-input', read.faults.length === 1 ? 'One thing was not understood; nothing was changed.' : `${read.faults.length} things were not understood; nothing was changed.`, { errors: read.faults })
+  if ('faults' in read)
+    throw new AppError(
+      'invalid-input',
+      read.faults.length === 1
+        ? 'One thing was not understood; nothing was changed.'
+        : `${read.faults.length} things were not understood; nothing was changed.`,
+      { errors: read.faults },
+    )
   return read.data
 }
 
@@ -108,7 +117,9 @@ function isJson(request: Request): boolean {
 }
 
 function isBodyless(request: Request): boolean {
-  return request.method === 'GET' || request.method === 'HEAD' || (request.get('content-type') === undefined && Number(request.get('content-length') ?? 0) === 0)
+  return (
+    request.method === 'GET' || request.method === 'HEAD' || (request.get('content-type') === undefined && Number(request.get('content-length') ?? 0) === 0)
+  )
 }
 
 function wrongType(): DoorError {

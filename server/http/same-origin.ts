@@ -10,7 +10,7 @@ export function checkSameOrigin(deps: Deps, request: Request): void {
   const site = request.get('sec-fetch-site')
   const origin = request.get('origin')
   const isOurs = site === undefined ? origin === undefined || isOurOrigin(deps, request, origin) : site === 'same-origin' || site === 'none'
-  if (!isOurs) throw new AppError('cross-site', 'This was sent from a page of another site, so nothing was done. Open the shop\'s own address and try there.')
+  if (!isOurs) throw new AppError('cross-site', "This was sent from a page of another site, so nothing was done. Open the shop's own address and try there.")
 }
 
 function isOurOrigin(deps: Deps, request: Request, origin: string): boolean {

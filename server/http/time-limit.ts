@@ -8,7 +8,11 @@ export function createTimeLimit(limitMs: number): RequestHandler {
     const timer = setTimeout(() => {
       sendRefusal(
         response,
-        new AppError('busy', 'The server is too busy to answer this now. What was sent may still be done: look again in a moment before you send it once more.', { retryAfterSeconds: 5 }),
+        new AppError(
+          'busy',
+          'The server is too busy to answer this now. What was sent may still be done: look again in a moment before you send it once more.',
+          { retryAfterSeconds: 5 },
+        ),
       )
     }, limitMs)
     response.on('close', () => {

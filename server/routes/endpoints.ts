@@ -9,6 +9,11 @@ import { walkEndpoints } from './walks.ts'
 
 /** Every endpoint there is. Express, the OpenAPI document and the role test read this list; what is not in it is not served. */
 export const endpoints: readonly Endpoint[] = [
-  ...healthEndpoints, ...sessionEndpoints, ...peopleEndpoints, ...chartEndpoints, ...libraryEndpoints, ...walkEndpoints,
+  ...healthEndpoints,
+  ...sessionEndpoints,
+  ...peopleEndpoints,
+  ...chartEndpoints,
+  ...libraryEndpoints,
+  ...walkEndpoints,
   openApiEndpoint(() => endpoints),
 ]

@@ -14,7 +14,7 @@ export const libraryEndpoints = [
   }),
   endpoint({
     name: 'listCauses',
-    summary: 'The shop\'s library of causes, contributing ones included',
+    summary: "The shop's library of causes, contributing ones included",
     method: 'get',
     path: '/api/causes',
     role: 'junior',

@@ -2,7 +2,12 @@ import { z } from 'zod'
 import { endpoint, type Endpoint } from '#server/http/endpoint.ts'
 import { toOpenApi } from '#server/http/openapi.ts'
 
-const documentSchema = z.looseObject({ openapi: z.string(), info: z.looseObject({}), paths: z.record(z.string(), z.looseObject({})), components: z.looseObject({}) })
+const documentSchema = z.looseObject({
+  openapi: z.string(),
+  info: z.looseObject({}),
+  paths: z.record(z.string(), z.looseObject({})),
+  components: z.looseObject({}),
+})
 
 /** The description of the API, itself one of its endpoints; public on purpose: it holds nothing that the sources do not. */
 export function openApiEndpoint(list: () => readonly Endpoint[]): Endpoint {

@@ -46,7 +46,7 @@ export const sessionEndpoints = [
   }),
   endpoint({
     name: 'changePassword',
-    summary: 'Change one\'s own password; ends one\'s other sessions',
+    summary: "Change one's own password; ends one's other sessions",
     method: 'put',
     path: '/api/session/password',
     role: 'junior',
@@ -68,7 +68,7 @@ export const sessionEndpoints = [
   }),
   endpoint({
     name: 'endSession',
-    summary: 'End one of one\'s own sessions',
+    summary: "End one of one's own sessions",
     method: 'delete',
     path: '/api/sessions/:id',
     role: 'junior',

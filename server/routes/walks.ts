@@ -9,7 +9,7 @@ const batchMaxBytes = 8_000_000
 export const walkEndpoints = [
   endpoint({
     name: 'listWalks',
-    summary: 'One\'s own walks; a lead may ask for the shop\'s',
+    summary: "One's own walks; a lead may ask for the shop's",
     method: 'get',
     path: '/api/walks',
     role: 'junior',
@@ -49,7 +49,7 @@ export const walkEndpoints = [
   }),
   endpoint({
     name: 'listSideEvents',
-    summary: 'Events that did not make it into the log: one\'s own, everybody\'s for a lead',
+    summary: "Events that did not make it into the log: one's own, everybody's for a lead",
     method: 'get',
     path: '/api/walks/:id/side-events',
     role: 'junior',

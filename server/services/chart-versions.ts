@@ -50,7 +50,13 @@ export function openDocument(json: unknown): ChartDocument {
 export async function readVersions(deps: Deps, names: readonly VersionName[], db: Db = deps.db): Promise<StoredVersion[]> {
   const known = keptVersions(deps)
   const missing = names.filter((name) => known.get(toKey(name)) === undefined)
-  const fresh = missing.length === 0 ? [] : await db.select().from(chartVersions).where(or(...missing.map(isVersion)))
+  const fresh =
+    missing.length === 0
+      ? []
+      : await db
+          .select()
+          .from(chartVersions)
+          .where(or(...missing.map(isVersion)))
   const read = fresh.map((row): StoredVersion => {
     const document = openDocument(row.document)
     return { ...row, document, index: indexChart(document) }
@@ -66,7 +72,10 @@ function isVersion({ chartId, version }: VersionName) {
 
 /** Numbers of the newest versions of the charts that have one. */
 async function readNewest(db: Db, ids: readonly ChartId[]): Promise<VersionName[]> {
-  const rows = await db.select({ chartId: charts.id, version: charts.version }).from(charts).where(and(inArray(charts.id, [...ids]), isNotNull(charts.version)))
+  const rows = await db
+    .select({ chartId: charts.id, version: charts.version })
+    .from(charts)
+    .where(and(inArray(charts.id, [...ids]), isNotNull(charts.version)))
   return rows.flatMap(({ chartId, version }) => (version === null ? [] : [{ chartId, version }]))
 }
 
@@ -74,7 +83,7 @@ async function readNewest(db: Db, ids: readonly ChartId[]): Promise<VersionName[
 export async function readReach(deps: Deps, from: readonly ChartId[], db: Db = deps.db): Promise<StoredVersion[]> {
   const reach = new Map<ChartId, StoredVersion>()
   const asked = new Set(from)
-  for (let next = [...from]; next.length > 0; ) {
+  for (let next = [...from]; next.length > 0;) {
     const found = await readVersions(deps, await readNewest(db, next), db)
     for (const version of found) reach.set(version.chartId, version)
     next = found.flatMap(({ index }) => chartsNamedBy(index)).filter((id) => !asked.has(id))
@@ -92,7 +101,11 @@ export async function readNeighbours(deps: Deps, index: ChartIndex): Promise<Cha
 /** Versions as the API gives them, with the name of who published each. */
 export async function toChartVersions(db: Db, versions: readonly StoredVersion[]): Promise<ChartVersion[]> {
   const ids = [...new Set(versions.map(({ publishedBy }) => publishedBy))]
-  const names = new Map(ids.length === 0 ? [] : (await db.select({ id: people.id, name: people.name }).from(people).where(inArray(people.id, ids))).map(({ id, name }) => [id, name]))
+  const names = new Map(
+    ids.length === 0
+      ? []
+      : (await db.select({ id: people.id, name: people.name }).from(people).where(inArray(people.id, ids))).map(({ id, name }) => [id, name]),
+  )
   return versions.map(({ chartId, version, document, publishedAt, publishedBy, changeNote }) => ({
     chartId,
     version,

@@ -17,7 +17,11 @@ import type { CurrentSession } from './sessions.ts'
 export type Draft = z.output<typeof draftSchema>
 
 const revisionsKept = 50
-const problemOf: Readonly<Record<ChartProblem['code'], 'not-a-chart' | 'too-new' | 'invalid-chart'>> = { 'not-a-chart': 'not-a-chart', 'too-new': 'too-new', invalid: 'invalid-chart' }
+const problemOf: Readonly<Record<ChartProblem['code'], 'not-a-chart' | 'too-new' | 'invalid-chart'>> = {
+  'not-a-chart': 'not-a-chart',
+  'too-new': 'too-new',
+  invalid: 'invalid-chart',
+}
 
 /** Reads a document that somebody sent, by the one door; the pointers are those of the body that held it. */
 export function readDocument(json: unknown): ChartDocument {
@@ -40,7 +44,14 @@ async function findDraft(db: Db, chartId: ChartId): Promise<(Draft & { contentHa
     .where(eq(chartDrafts.chartId, chartId))
   if (row === undefined) return null
   const { draft, savedBy } = row
-  return { chartId, revision: draft.revision, document: openDocument(draft.document), savedAt: draft.savedAt.toISOString(), savedBy, contentHash: draft.contentHash }
+  return {
+    chartId,
+    revision: draft.revision,
+    document: openDocument(draft.document),
+    savedAt: draft.savedAt.toISOString(),
+    savedBy,
+    contentHash: draft.contentHash,
+  }
 }
 
 /** The draft of a chart with the hash of its content. */
@@ -64,7 +75,11 @@ export async function createChart(deps: Deps, by: CurrentSession, json: unknown)
   const document = readDocument(json)
   const savedAt = deps.clock()
   return deps.db.transaction(async (tx) => {
-    const made = await tx.insert(charts).values({ id: document.id, title: document.title, createdAt: savedAt }).onConflictDoNothing().returning({ id: charts.id })
+    const made = await tx
+      .insert(charts)
+      .values({ id: document.id, title: document.title, createdAt: savedAt })
+      .onConflictDoNothing()
+      .returning({ id: charts.id })
     if (made.length === 0) {
       const detail = `There is a chart "${document.id}" already. Open that one, or give this another id.`
       throw new AppError('chart-exists', detail, { errors: [{ pointer: '#/document/id', detail }] })
@@ -79,7 +94,11 @@ export async function createChart(deps: Deps, by: CurrentSession, json: unknown)
  * Saves a draft over the state that `ifMatch` names. A save that is there already, because its answer got lost on the way, succeeds
  * again and changes nothing; a save over a state that is gone is refused, with the state that stands in its place.
  */
-export async function saveDraft(deps: Deps, by: CurrentSession, { chartId, json, ifMatch }: { chartId: ChartId; json: unknown; ifMatch: string | null }): Promise<Draft> {
+export async function saveDraft(
+  deps: Deps,
+  by: CurrentSession,
+  { chartId, json, ifMatch }: { chartId: ChartId; json: unknown; ifMatch: string | null },
+): Promise<Draft> {
   if (ifMatch === null) throw new AppError('if-match-missing', 'Say with If-Match which state of the draft was changed, as its ETag named it.')
   const document = readDocument(json)
   if (document.id !== chartId) {
@@ -110,7 +129,10 @@ function replaceDraft(deps: Deps, by: CurrentSession, { chartId, document, conte
       .returning({ revision: chartDrafts.revision })
     if (saved === undefined) return null
     await keepRevision(tx, { chartId, revision: saved.revision, document, savedAt, savedBy: by.person.id })
-    await tx.update(charts).set({ title: document.title }).where(and(eq(charts.id, chartId), sql`${charts.version} is null`))
+    await tx
+      .update(charts)
+      .set({ title: document.title })
+      .where(and(eq(charts.id, chartId), sql`${charts.version} is null`))
     return { chartId, revision: saved.revision, document, savedAt: savedAt.toISOString(), savedBy: by.person.name }
   })
 }
@@ -123,7 +145,11 @@ async function keepRevision(tx: Db, row: typeof chartDraftRevisions.$inferInsert
 /** The refusal of a change to a state that is gone; it carries the state that stands there now. */
 export function movedOn(current: Draft & { contentHash?: string }): AppError {
   const { contentHash: _, ...draft } = current
-  return new AppError('draft-moved-on', `${draft.savedBy} saved this draft since you opened it. Nothing of yours was overwritten or lost: compare the two, then save again.`, {
-    members: { current: draft },
-  })
+  return new AppError(
+    'draft-moved-on',
+    `${draft.savedBy} saved this draft since you opened it. Nothing of yours was overwritten or lost: compare the two, then save again.`,
+    {
+      members: { current: draft },
+    },
+  )
 }

@@ -23,7 +23,9 @@ export async function makeOwnerCode(deps: Deps): Promise<{ code: string; expires
   const code = [...Buffer.from(deps.randomToken(codeCharacters), 'base64url')].map((byte) => alphabet[byte % alphabet.length]).join('')
   const now = deps.clock()
   const expiresAt = new Date(now.getTime() + lifetimeSeconds * 1000)
-  await deps.db.insert(oneTimeLinks).values({ id: deps.newId(), purpose: 'first-owner', personId: null, tokenHash: hashSecret(code), createdAt: now, expiresAt })
+  await deps.db
+    .insert(oneTimeLinks)
+    .values({ id: deps.newId(), purpose: 'first-owner', personId: null, tokenHash: hashSecret(code), createdAt: now, expiresAt })
   return { code: (code.match(/.{4}/g) ?? []).join('-'), expiresAt }
 }
 
@@ -46,7 +48,11 @@ export async function createFirstOwner(deps: Deps, given: FirstOwner): Promise<S
   if (await hasOwner(deps.db)) throw alreadySetUp()
   await takeTry(deps, { kind: 'owner-code', of: given.address, tries: 10, windowSeconds: 600 })
   // The lookup is by hash: how long it takes says nothing about how much of a code was right.
-  const isThisCode = and(eq(oneTimeLinks.purpose, 'first-owner'), eq(oneTimeLinks.tokenHash, hashSecret(normalise(given.code))), gt(oneTimeLinks.expiresAt, deps.clock()))
+  const isThisCode = and(
+    eq(oneTimeLinks.purpose, 'first-owner'),
+    eq(oneTimeLinks.tokenHash, hashSecret(normalise(given.code))),
+    gt(oneTimeLinks.expiresAt, deps.clock()),
+  )
   const [known] = await deps.db.select({ id: oneTimeLinks.id }).from(oneTimeLinks).where(isThisCode)
   if (known === undefined) throw wrongCode()
   checkPassword(given.password, { name: given.name, email: given.email, shopName: await readShopName(deps.db) })
@@ -64,7 +70,9 @@ export async function createFirstOwner(deps: Deps, given: FirstOwner): Promise<S
 async function insertOwner(tx: Db, deps: Deps, owner: Omit<FirstOwner, 'code' | 'password'> & { passwordHash: string }): Promise<StartedSession> {
   const personId = deps.newId() as StartedSession['personId']
   await createShop(tx, deps, { name: 'Our shop', isDemo: false })
-  await tx.insert(people).values({ id: personId, name: owner.name, email: owner.email, role: 'owner', passwordHash: owner.passwordHash, createdAt: deps.clock() })
+  await tx
+    .insert(people)
+    .values({ id: personId, name: owner.name, email: owner.email, role: 'owner', passwordHash: owner.passwordHash, createdAt: deps.clock() })
   await writeAudit(tx, deps, { act: 'owner-created', personId, subject: personId })
   return startSession(tx, deps, { personId, browser: owner.browser })
 }
@@ -79,6 +87,7 @@ function alreadySetUp(): AppError {
 }
 
 function wrongCode(): AppError {
-  const detail = 'This is not the code that the server printed, or it is older than a day. Look at the last lines of the server\'s window; starting it again prints a new one.'
+  const detail =
+    "This is not the code that the server printed, or it is older than a day. Look at the last lines of the server's window; starting it again prints a new one."
   return new AppError('wrong-code', detail, { errors: [{ pointer: '#/code', detail }] })
 }

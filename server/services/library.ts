@@ -27,7 +27,10 @@ export async function bringLibrary(tx: Db, deps: Deps, { library }: ChartDocumen
 
 /** The shop's causes, contributing ones included, by title. */
 export async function listCauses(deps: Deps): Promise<Cause[]> {
-  const rows = await deps.db.select().from(causes).orderBy(asc(sql`lower(${causes.title})`), asc(causes.id))
+  const rows = await deps.db
+    .select()
+    .from(causes)
+    .orderBy(asc(sql`lower(${causes.title})`), asc(causes.id))
   return rows.map((row) => ({
     id: row.id,
     title: row.title,
@@ -41,12 +44,18 @@ export async function listCauses(deps: Deps): Promise<Cause[]> {
 
 /** The models with their spec sheets, by maker and name. */
 export async function listModels(deps: Deps): Promise<MachineModel[]> {
-  const rows = await deps.db.select().from(models).orderBy(asc(sql`lower(${models.maker})`), asc(sql`lower(${models.name})`), asc(models.id))
+  const rows = await deps.db
+    .select()
+    .from(models)
+    .orderBy(asc(sql`lower(${models.maker})`), asc(sql`lower(${models.name})`), asc(models.id))
   return rows.map(({ createdAt: _, ...model }) => model)
 }
 
 /** Adds models with their spec sheets; those that are there stay as they are. */
 export async function addModels(deps: Deps, added: readonly MachineModel[]): Promise<void> {
   if (added.length === 0) return
-  await deps.db.insert(models).values(added.map((model) => ({ ...model, createdAt: deps.clock() }))).onConflictDoNothing()
+  await deps.db
+    .insert(models)
+    .values(added.map((model) => ({ ...model, createdAt: deps.clock() })))
+    .onConflictDoNothing()
 }

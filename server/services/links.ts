@@ -30,7 +30,12 @@ export async function makeLink(tx: Db, deps: Deps, person: { id: PersonId; passw
 }
 
 const usable = (deps: Deps, token: string) =>
-  and(eq(oneTimeLinks.tokenHash, hashSecret(token)), ne(oneTimeLinks.purpose, 'first-owner'), isNull(oneTimeLinks.usedAt), gt(oneTimeLinks.expiresAt, deps.clock()))
+  and(
+    eq(oneTimeLinks.tokenHash, hashSecret(token)),
+    ne(oneTimeLinks.purpose, 'first-owner'),
+    isNull(oneTimeLinks.usedAt),
+    gt(oneTimeLinks.expiresAt, deps.clock()),
+  )
 
 function usedUp(): AppError {
   return new AppError('link-used-up', 'This link was used, has expired, or was replaced by a newer one. Ask your owner for a new link.')
@@ -56,7 +61,11 @@ export async function acceptLink(deps: Deps, token: string, password: string): P
     // The condition stands in the statement: of two uses at once, one finds the link used.
     const [used] = await tx.update(oneTimeLinks).set({ usedAt: deps.clock() }).where(usable(deps, token)).returning({ personId: oneTimeLinks.personId })
     if (!used?.personId) throw usedUp()
-    const set = await tx.update(people).set({ passwordHash }).where(and(eq(people.id, used.personId), eq(people.isActive, true))).returning({ id: people.id })
+    const set = await tx
+      .update(people)
+      .set({ passwordHash })
+      .where(and(eq(people.id, used.personId), eq(people.isActive, true)))
+      .returning({ id: people.id })
     if (set.length === 0) throw usedUp()
     await endSessionsOf(tx, used.personId)
     await writeAudit(tx, deps, { act: 'password-set', personId: used.personId, subject: used.personId })

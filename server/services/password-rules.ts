@@ -25,9 +25,23 @@ const commonParts = `
   work office company business shop store bench workshop garage repair repairs service mechanic technician owner lead junior saw chain chainsaw trimmer
   mower blower pump engine engines motor small carburetor carburettor carb spark plug clutch muffler throttle choke fuel petrol gasoline
   starter cord pull pullcord chart walk ticket lawn garden tool tools machine
-`.trim().split(/\s+/)
+`
+  .trim()
+  .split(/\s+/)
 
-const runs = ['abcdefghijklmnopqrstuvwxyz', '01234567890', '12345678901234567890', 'qwertyuiop', 'qwertzuiop', 'azertyuiop', 'asdfghjkl', 'zxcvbnm', 'yxcvbnm', '1qaz2wsx3edc4rfv', 'qazwsxedcrfv']
+const runs = [
+  'abcdefghijklmnopqrstuvwxyz',
+  '01234567890',
+  '12345678901234567890',
+  'qwertyuiop',
+  'qwertzuiop',
+  'azertyuiop',
+  'asdfghjkl',
+  'zxcvbnm',
+  'yxcvbnm',
+  '1qaz2wsx3edc4rfv',
+  'qazwsxedcrfv',
+]
 const allRuns = runs.flatMap((run) => [run, [...run].reverse().join('')])
 const lookAlikes: Readonly<Record<string, string>> = { '0': 'o', '1': 'l', '3': 'e', '4': 'a', '5': 's', '7': 't', '8': 'b', '@': 'a', $: 's', '!': 'i' }
 
@@ -43,10 +57,13 @@ export function checkPassword(password: string, owner: PasswordOwner): void {
 /** Why a password is not good enough, in words, or null. No rule asks for kinds of characters. */
 export function judgePassword(password: string, owner: PasswordOwner): string | null {
   const characters = [...password].length
-  if (characters < passwordMinCharacters) return `At least ${passwordMinCharacters} characters: this has ${characters}. Four or five words that don't belong together are easy to keep.`
+  if (characters < passwordMinCharacters)
+    return `At least ${passwordMinCharacters} characters: this has ${characters}. Four or five words that don't belong together are easy to keep.`
   const bytes = Buffer.byteLength(password)
-  if (bytes > passwordMaxBytes) return `At most ${passwordMaxBytes} bytes: this has ${bytes}, and the end would not count. Take a shorter one; a letter with an accent counts as two, most other scripts as three.`
-  if (isGuessedEarly(password, owner)) return 'This is among the first that anybody would try: common words, names, rows of keys or repeats. Take words that don\'t belong together.'
+  if (bytes > passwordMaxBytes)
+    return `At most ${passwordMaxBytes} bytes: this has ${bytes}, and the end would not count. Take a shorter one; a letter with an accent counts as two, most other scripts as three.`
+  if (isGuessedEarly(password, owner))
+    return "This is among the first that anybody would try: common words, names, rows of keys or repeats. Take words that don't belong together."
   return null
 }
 

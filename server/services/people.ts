@@ -44,7 +44,11 @@ async function getPerson(db: Db, deps: Deps, id: PersonId): Promise<{ row: Perso
 }
 
 /** Adds a person, who sets a password through the link. */
-export async function addPerson(deps: Deps, by: CurrentSession, { name, email, role }: { name: string; email: string; role: Role }): Promise<{ person: Person; link: HandedLink }> {
+export async function addPerson(
+  deps: Deps,
+  by: CurrentSession,
+  { name, email, role }: { name: string; email: string; role: Role },
+): Promise<{ person: Person; link: HandedLink }> {
   const id = deps.newId() as PersonId
   try {
     return await deps.db.transaction(async (tx) => {
@@ -71,7 +75,10 @@ export async function updatePerson(deps: Deps, by: CurrentSession, id: PersonId,
     const role = change.role ?? row.role
     const isActive = change.isActive ?? row.isActive
     if (row.role === 'owner' && row.isActive && (role !== 'owner' || !isActive)) await keepAnOwner(tx, id)
-    await tx.update(people).set({ name: change.name ?? row.name, role, isActive }).where(eq(people.id, id))
+    await tx
+      .update(people)
+      .set({ name: change.name ?? row.name, role, isActive })
+      .where(eq(people.id, id))
     if (!isActive) {
       await endSessionsOf(tx, id)
       await tx.delete(oneTimeLinks).where(eq(oneTimeLinks.personId, id))

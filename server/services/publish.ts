@@ -38,7 +38,8 @@ export async function publishDraft(deps: Deps, by: CurrentSession, { chartId, re
   const draft = await getDraftWithHash(deps.db, chartId)
   if (draft.revision !== revision) throw movedOn(draft)
   const remarks = await lint(deps, draft.document)
-  if (hasErrors(remarks)) throw new AppError('chart-has-errors', 'The chart check found what must be fixed before this can be published.', { members: { remarks } })
+  if (hasErrors(remarks))
+    throw new AppError('chart-has-errors', 'The chart check found what must be fixed before this can be published.', { members: { remarks } })
   if (!acceptsWarnings && remarks.some(({ severity }) => severity === 'warning')) {
     throw new AppError('warnings-unseen', 'The chart check found things worth a look. Read them, then publish and say that you did.', { members: { remarks } })
   }
@@ -66,7 +67,13 @@ async function requireUnchanged(tx: Db, chartId: ChartId, revision: number): Pro
 }
 
 async function requireNew(tx: Db, chartId: ChartId, contentHash: string, version: number | null): Promise<void> {
-  const hashes = version === null ? [] : await tx.select({ version: chartVersions.version, contentHash: chartVersions.contentHash }).from(chartVersions).where(eq(chartVersions.chartId, chartId))
+  const hashes =
+    version === null
+      ? []
+      : await tx
+          .select({ version: chartVersions.version, contentHash: chartVersions.contentHash })
+          .from(chartVersions)
+          .where(eq(chartVersions.chartId, chartId))
   if (hashes.some((row) => row.version === version && row.contentHash === contentHash)) {
     throw new AppError('already-published', `Version ${String(version)} says exactly this already: there is nothing new to publish.`)
   }

@@ -93,7 +93,11 @@ export async function findSession(deps: Deps, { id, secret }: { id: string; secr
 
 async function markSeen(deps: Deps, row: SessionRow, now: Date): Promise<void> {
   await deps.db.transaction(async (tx) => {
-    const marked = await tx.update(sessions).set({ lastSeenAt: now }).where(and(eq(sessions.id, row.id), eq(sessions.lastSeenAt, row.lastSeenAt))).returning({ id: sessions.id })
+    const marked = await tx
+      .update(sessions)
+      .set({ lastSeenAt: now })
+      .where(and(eq(sessions.id, row.id), eq(sessions.lastSeenAt, row.lastSeenAt)))
+      .returning({ id: sessions.id })
     if (marked.length > 0) await tx.update(people).set({ lastSeenAt: now }).where(eq(people.id, row.person.id))
   })
 }
@@ -129,7 +133,10 @@ export async function listOwnSessions(deps: Deps, current: CurrentSession) {
 
 /** Ends one of one's own sessions; another person's is not found. */
 export async function endOwnSession(deps: Deps, personId: PersonId, sessionId: string): Promise<void> {
-  const ended = await deps.db.delete(sessions).where(and(eq(sessions.id, sessionId), eq(sessions.personId, personId))).returning({ id: sessions.id })
+  const ended = await deps.db
+    .delete(sessions)
+    .where(and(eq(sessions.id, sessionId), eq(sessions.personId, personId)))
+    .returning({ id: sessions.id })
   if (ended.length === 0) throw new AppError('not-found', 'There is no such sign-in of yours: it may have ended already.')
 }
 

@@ -22,7 +22,10 @@ export async function hasOwner(db: Db): Promise<boolean> {
 
 /** Whether this database is the demo shop, whose sign-ins everybody knows. */
 export async function isDemoShop(db: Db): Promise<boolean> {
-  const rows = await db.select({ id: shops.id }).from(shops).where(and(eq(shops.id, 1), eq(shops.isDemo, true)))
+  const rows = await db
+    .select({ id: shops.id })
+    .from(shops)
+    .where(and(eq(shops.id, 1), eq(shops.isDemo, true)))
   return rows.length > 0
 }
 

@@ -42,7 +42,11 @@ function limitsOf({ email, address, knownBrowser }: SignInAttempt, isKnown: bool
 }
 
 const findByEmail = (db: Db, email: string) =>
-  db.select().from(people).where(eq(sql`lower(${people.email})`, sql`lower(${email})`)).limit(1)
+  db
+    .select()
+    .from(people)
+    .where(eq(sql`lower(${people.email})`, sql`lower(${email})`))
+    .limit(1)
 
 /** Signs in. Every refusal reads alike and takes as long, whether or not the address is known, active, or has a password. */
 export async function signIn(deps: Deps, attempt: SignInAttempt): Promise<StartedSession> {

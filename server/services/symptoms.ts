@@ -43,7 +43,10 @@ export async function writeSymptoms(tx: Db, chart: ChartDocument, version: numbe
 export async function searchSymptoms(deps: Deps, asked: string): Promise<Symptom[]> {
   const question = asked.trim()
   if (question === '') {
-    const rows = await deps.db.select().from(chartSymptoms).orderBy(asc(sql`lower(${chartSymptoms.title})`), asc(chartSymptoms.chartId), asc(chartSymptoms.startId))
+    const rows = await deps.db
+      .select()
+      .from(chartSymptoms)
+      .orderBy(asc(sql`lower(${chartSymptoms.title})`), asc(chartSymptoms.chartId), asc(chartSymptoms.startId))
     return rows.map((row) => toSymptom({ ...row, matched: null }))
   }
   const plain = toPlain(sql`${question}::text`)
@@ -61,7 +64,9 @@ export async function searchSymptoms(deps: Deps, asked: string): Promise<Symptom
         chartTitle: chartSymptoms.chartTitle,
         classes: chartSymptoms.classes,
         engines: chartSymptoms.engines,
-        word: sql<string | null>`(select word from unnest(${chartSymptoms.words}) as word order by ${likeness(toPlain(sql`word`))} desc, word limit 1)`.as('word'),
+        word: sql<string | null>`(select word from unnest(${chartSymptoms.words}) as word order by ${likeness(toPlain(sql`word`))} desc, word limit 1)`.as(
+          'word',
+        ),
         wordLikeness: sql<number>`coalesce((select max(${likeness(toPlain(sql`word`))}) from unnest(${chartSymptoms.words}) as word), 0)`.as('word_likeness'),
         titleLikeness: sql<number>`${titleLikeness}`.as('title_likeness'),
         found: sql<boolean>`${chartSymptoms.search} @@ ${anyWord}`.as('found'),

@@ -14,7 +14,12 @@ beforeAll(async () => {
 })
 afterAll(() => shop.close())
 
-type Sample = { readonly params?: Readonly<Record<string, string>>; readonly query?: string; readonly body?: () => unknown; readonly headers?: Readonly<Record<string, string>> }
+type Sample = {
+  readonly params?: Readonly<Record<string, string>>
+  readonly query?: string
+  readonly body?: () => unknown
+  readonly headers?: Readonly<Record<string, string>>
+}
 
 const anyWalk = () => logOf(shop.person('junior'), [started()])
 
@@ -47,7 +52,12 @@ const samples: Readonly<Record<string, Sample>> = {
   listModels: {},
   listCauses: {},
   listWalks: {},
-  startWalk: { body: () => { const { walkId, events } = anyWalk(); return { id: walkId, event: events[0] } } },
+  startWalk: {
+    body: () => {
+      const { walkId, events } = anyWalk()
+      return { id: walkId, event: events[0] }
+    },
+  },
   getWalk: { params: { id: randomUUID() } },
   postEvents: { params: { id: randomUUID() }, body: () => ({ events: anyWalk().events }) },
   listSideEvents: { params: { id: randomUUID() } },
@@ -58,20 +68,24 @@ describe('every endpoint, as every role', () => {
     expect(Object.keys(samples).sort()).toEqual(endpoints.map(({ name }) => name).sort())
   })
 
-  test.each(endpoints.map((endpoint) => [`${endpoint.method.toUpperCase()} ${endpoint.path}`, endpoint] as const))('%s lets in whom it should, and nobody else', async (_name, endpoint) => {
-    const { params = {}, query = '', body, headers = {} } = samples[endpoint.name] ?? {}
-    const path = endpoint.path.replaceAll(/:(\w+)/g, (_, name: string) => encodeURIComponent(params[name] ?? '')) + query
-    const ask = async (client: Client) => (await client.ask(endpoint.method.toUpperCase(), path, { ...(body ? { body: body() } : {}), headers })).body['code'] as unknown
+  test.each(endpoints.map((endpoint) => [`${endpoint.method.toUpperCase()} ${endpoint.path}`, endpoint] as const))(
+    '%s lets in whom it should, and nobody else',
+    async (_name, endpoint) => {
+      const { params = {}, query = '', body, headers = {} } = samples[endpoint.name] ?? {}
+      const path = endpoint.path.replaceAll(/:(\w+)/g, (_, name: string) => encodeURIComponent(params[name] ?? '')) + query
+      const ask = async (client: Client) =>
+        (await client.ask(endpoint.method.toUpperCase(), path, { ...(body ? { body: body() } : {}), headers })).body['code'] as unknown
 
-    const nobody = await ask(shop.newClient())
-    if (endpoint.role === 'anyone') expect(['signed-out', 'not-allowed']).not.toContain(nobody)
-    else expect(nobody).toBe('signed-out')
-    for (const role of roles) {
-      const code = await ask(await shop.as(role))
-      if (endpoint.role === 'anyone' || hasRole(role, endpoint.role)) expect(['signed-out', 'not-allowed']).not.toContain(code)
-      else expect(code).toBe('not-allowed')
-    }
-  })
+      const nobody = await ask(shop.newClient())
+      if (endpoint.role === 'anyone') expect(['signed-out', 'not-allowed']).not.toContain(nobody)
+      else expect(nobody).toBe('signed-out')
+      for (const role of roles) {
+        const code = await ask(await shop.as(role))
+        if (endpoint.role === 'anyone' || hasRole(role, endpoint.role)) expect(['signed-out', 'not-allowed']).not.toContain(code)
+        else expect(code).toBe('not-allowed')
+      }
+    },
+  )
 
   test('nothing is served that is not in the list', async () => {
     const owner = await shop.as('owner')

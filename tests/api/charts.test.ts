@@ -24,7 +24,15 @@ function sound(id: string, more: { title?: string; searchWords?: string[]; cause
     id,
     title: more.title ?? `Chart ${id}`,
     causes: [{ id: 'filter-packed', title: more.causeTitle ?? 'Filter packed', system: 'air', remedy: { text: 'Clean the filter', minutes: 5 } }],
-    nodes: [start('s', { title: more.title ?? `Start of ${id}` }), reproducing(), check('n2'), proof('p2', 'filter-packed'), cause('c2', 'filter-packed'), more.jumps === undefined ? ask() : jump('ask', more.jumps), ask('a0', { reason: 'could-not-reproduce' })],
+    nodes: [
+      start('s', { title: more.title ?? `Start of ${id}` }),
+      reproducing(),
+      check('n2'),
+      proof('p2', 'filter-packed'),
+      cause('c2', 'filter-packed'),
+      more.jumps === undefined ? ask() : jump('ask', more.jumps),
+      ask('a0', { reason: 'could-not-reproduce' }),
+    ],
     edges: ['s > n1', 'n1.yes > n2', 'n1.no > a0', 'n2.good > ask', 'n2.bad > p2', 'p2.gone > c2', 'p2.still > ask'],
     more: { searchWords: more.searchWords ?? [] },
   })
@@ -35,7 +43,8 @@ const make = async (document: ChartDocument) => {
   expect(answer.status).toBe(201)
   return answer.headers.get('etag') ?? ''
 }
-const save = (document: ChartDocument, ifMatch: string | null) => lead.put(`/api/charts/${document.id}/draft`, { document }, ifMatch === null ? {} : { 'if-match': ifMatch })
+const save = (document: ChartDocument, ifMatch: string | null) =>
+  lead.put(`/api/charts/${document.id}/draft`, { document }, ifMatch === null ? {} : { 'if-match': ifMatch })
 const retitled = (document: ChartDocument, title: string): ChartDocument => ({ ...document, title })
 
 describe('a draft', () => {
@@ -68,7 +77,11 @@ describe('a draft', () => {
     await make(document)
     const changed = retitled(document, 'Changed')
     const answers = [await save(changed, '"r1"'), await save(changed, '"r1"'), await save(changed, '"r1"')]
-    expect(answers.map(({ status, headers }) => [status, headers.get('etag')])).toEqual([[200, '"r2"'], [200, '"r2"'], [200, '"r2"']])
+    expect(answers.map(({ status, headers }) => [status, headers.get('etag')])).toEqual([
+      [200, '"r2"'],
+      [200, '"r2"'],
+      [200, '"r2"'],
+    ])
   })
 
   test('saved by eight editors at once goes on from one of them, and the others are told', async () => {
@@ -87,7 +100,10 @@ describe('a draft', () => {
     const document = sound('kept')
     let tag = await make(document)
     for (let count = 0; count < 55; count++) tag = (await save(retitled(document, `State ${count}`), tag)).headers.get('etag') ?? ''
-    const kept = await shop.deps.db.select({ revision: chartDraftRevisions.revision }).from(chartDraftRevisions).where(eq(chartDraftRevisions.chartId, document.id))
+    const kept = await shop.deps.db
+      .select({ revision: chartDraftRevisions.revision })
+      .from(chartDraftRevisions)
+      .where(eq(chartDraftRevisions.chartId, document.id))
     expect(kept.map(({ revision }) => revision).sort((one, other) => one - other)).toEqual(Array.from({ length: 50 }, (_, count) => count + 7))
   })
 
@@ -128,14 +144,22 @@ describe('what the chart door refuses', () => {
 
   test('a chart of 5 MB', async () => {
     const document = { ...sketchJson(sawSketch), title: 'x'.repeat(5_000_000) }
-    for (const answer of [await lead.post('/api/charts', { document }), await lead.post('/api/charts/check', { document }), await lead.put('/api/charts/saw/draft', { document }, { 'if-match': '"r1"' })]) {
+    for (const answer of [
+      await lead.post('/api/charts', { document }),
+      await lead.post('/api/charts/check', { document }),
+      await lead.put('/api/charts/saw/draft', { document }, { 'if-match': '"r1"' }),
+    ]) {
       expect([answer.status, answer.body['code']]).toEqual([413, 'too-large'])
     }
   })
 
   test('keys that every object answers to: as a field they are refused, as an id too, and nothing else notices', async () => {
     const text = (field: string) => JSON.stringify({ document: sketchJson(sawSketch) }).replace('"title":"No guts"', `"title":"No guts",${field}`)
-    for (const field of ['"__proto__":{"isAdmin":true}', '"constructor":{"prototype":{"isAdmin":true}}', '"positions":{"__proto__":{"x":1,"y":1},"constructor":{"x":1,"y":1}}']) {
+    for (const field of [
+      '"__proto__":{"isAdmin":true}',
+      '"constructor":{"prototype":{"isAdmin":true}}',
+      '"positions":{"__proto__":{"x":1,"y":1},"constructor":{"x":1,"y":1}}',
+    ]) {
       const answer = await lead.ask('POST', '/api/charts/check', { body: text(field) })
       expect(answer.status === 422 || answer.status === 200).toBe(true)
       expect(answer.status).toBeLessThan(500)
@@ -146,14 +170,33 @@ describe('what the chart door refuses', () => {
   })
 
   test('bands that overlap or leave a gap, and a ring of returning jumps, are remarks of the check and no publishing', async () => {
-    const banded = (bands: object[]) => ({ ...sketchJson(sawSketch), id: 'banded', nodes: (sketchJson(sawSketch)['nodes'] as { id: string }[]).map((node) => (node.id === 'n2' ? { ...node, bands } : node)) })
-    const overlap = await lead.post('/api/charts/check', { document: banded([{ outcome: 'low', to: 10_000, toIncluded: true }, { outcome: 'in', from: 9_000, fromIncluded: true }]) })
-    const gap = await lead.post('/api/charts/check', { document: banded([{ outcome: 'low', to: 9_000 }, { outcome: 'in', from: 10_000 }]) })
+    const banded = (bands: object[]) => ({
+      ...sketchJson(sawSketch),
+      id: 'banded',
+      nodes: (sketchJson(sawSketch)['nodes'] as { id: string }[]).map((node) => (node.id === 'n2' ? { ...node, bands } : node)),
+    })
+    const overlap = await lead.post('/api/charts/check', {
+      document: banded([
+        { outcome: 'low', to: 10_000, toIncluded: true },
+        { outcome: 'in', from: 9_000, fromIncluded: true },
+      ]),
+    })
+    const gap = await lead.post('/api/charts/check', {
+      document: banded([
+        { outcome: 'low', to: 9_000 },
+        { outcome: 'in', from: 10_000 },
+      ]),
+    })
     for (const { status, body } of [overlap, gap]) {
       expect(status).toBe(200)
       expect((body['remarks'] as { severity: string; node?: string }[]).some(({ severity, node }) => severity === 'error' && node === 'n2')).toBe(true)
     }
-    const draft = await lead.post('/api/charts', { document: banded([{ outcome: 'low', to: 9_000 }, { outcome: 'in', from: 10_000 }]) })
+    const draft = await lead.post('/api/charts', {
+      document: banded([
+        { outcome: 'low', to: 9_000 },
+        { outcome: 'in', from: 10_000 },
+      ]),
+    })
     const answer = await lead.post('/api/charts/banded/publish', { revision: draft.body['revision'], changeNote: 'x', acceptsWarnings: true })
     expect([answer.status, answer.body['code']]).toEqual([422, 'chart-has-errors'])
     expect((answer.body['remarks'] as unknown[]).length).toBeGreaterThan(0)
@@ -191,12 +234,20 @@ describe('publishing', () => {
   test('what a walk pins: the newest version of every chart in reach, the first one first', async () => {
     await publish(lead, sound('far'), sound('near', { jumps: 'far' }), sound('first', { jumps: 'near' }))
     const charts = (await junior.get('/api/charts/first/reach')).body['charts'] as { chartId: string; version: number }[]
-    expect(charts.map(({ chartId, version }) => [chartId, version])).toEqual([['first', 1], ['near', 1], ['far', 1]])
+    expect(charts.map(({ chartId, version }) => [chartId, version])).toEqual([
+      ['first', 1],
+      ['near', 1],
+      ['far', 1],
+    ])
   })
 
   test('a start that leaves out a chart in its reach is refused', async () => {
     const { walkId, events } = logOf(shop.person('junior'), [started()])
-    const pins = (given: Record<string, number>) => ({ ...events[0], at: shop.deps.clock().toISOString(), payload: { ...events[0]?.payload, chartId: 'first', startId: 's', pins: given } })
+    const pins = (given: Record<string, number>) => ({
+      ...events[0],
+      at: shop.deps.clock().toISOString(),
+      payload: { ...events[0]?.payload, chartId: 'first', startId: 's', pins: given },
+    })
     const answer = await send(junior, walkId, [pins({ first: 1, near: 1 }) as never])
     expect(answer.results).toMatchObject([{ status: 'refused', code: 'no-such-version' }])
   })
@@ -223,7 +274,8 @@ describe('what does it do', () => {
       sound('accent', { title: 'Démarre mal', searchWords: ['á froid'] }),
     ),
   )
-  const find = async (words: string) => ((await junior.get(`/api/symptoms?q=${encodeURIComponent(words)}`)).body['symptoms'] as { chartId: string; matched: string | null }[])
+  const find = async (words: string) =>
+    (await junior.get(`/api/symptoms?q=${encodeURIComponent(words)}`)).body['symptoms'] as { chartId: string; matched: string | null }[]
 
   test.each([
     ["won't reach full speed", 'no-rev', null],
@@ -247,7 +299,22 @@ describe('what does it do', () => {
     expect((await find('')).length).toBeGreaterThan(3)
     expect(await find('   ')).toHaveLength((await find('')).length)
     expect(await find('xylophone')).toEqual([])
-    for (const words of ["'", '"', '\\', '%', '_', '&|!():*<->', "'; drop table walks; --", '"unfinished', '-', '<script>', '🪚', 'a'.repeat(200), '-power', 'or or or']) {
+    for (const words of [
+      "'",
+      '"',
+      '\\',
+      '%',
+      '_',
+      '&|!():*<->',
+      "'; drop table walks; --",
+      '"unfinished',
+      '-',
+      '<script>',
+      '🪚',
+      'a'.repeat(200),
+      '-power',
+      'or or or',
+    ]) {
       expect((await junior.get(`/api/symptoms?q=${encodeURIComponent(words)}`)).status).toBe(200)
     }
     expect((await junior.get(`/api/symptoms?q=${'a'.repeat(201)}`)).status).toBe(422)

@@ -36,7 +36,9 @@ test('the demo shop lists its sign-ins, and each of them works', async () => {
 test('nobody signs in with them, and nothing is loaded, with NODE_ENV=production', async () => {
   const production = { ...shop.deps, config: { ...shop.deps.config, isProduction: true } }
   const { email, password } = signIns[0] ?? { email: '', password: '' }
-  await expect(signIn(production, { email, password, address: '192.0.2.1', browser: '', knownBrowser: null, oldSessionId: null })).rejects.toMatchObject({ code: 'demo-only' })
+  await expect(signIn(production, { email, password, address: '192.0.2.1', browser: '', knownBrowser: null, oldSessionId: null })).rejects.toMatchObject({
+    code: 'demo-only',
+  })
   await expect(loadDemo(production)).rejects.toThrow('NODE_ENV=production')
 })
 
@@ -50,22 +52,43 @@ test('every chart is published, every symptom can be found, and the models have 
 
 test('its walks ended in the causes that their stories tell, and the open ones wait at the bench', async () => {
   const ended = await walks('&state=ended')
-  expect(ended.filter(({ phase }) => phase === 'closed').map(({ causeTitle }) => causeTitle).toSorted()).toEqual([
-    'Air filter packed', 'Brake band drags', 'Chain too tight', 'Choke part closed', 'Plug fouled', 'Spark screen shut', 'Stale fuel', 'Water in the fuel',
+  expect(
+    ended
+      .filter(({ phase }) => phase === 'closed')
+      .map(({ causeTitle }) => causeTitle)
+      .toSorted(),
+  ).toEqual([
+    'Air filter packed',
+    'Brake band drags',
+    'Chain too tight',
+    'Choke part closed',
+    'Plug fouled',
+    'Spark screen shut',
+    'Stale fuel',
+    'Water in the fuel',
   ])
   const open = await walks('&state=open')
-  expect(open.map(({ hasQuestion, isPaused }) => [hasQuestion, isPaused])).toEqual([[false, false], [true, false], [false, true], [true, false]])
+  expect(open.map(({ hasQuestion, isPaused }) => [hasQuestion, isPaused])).toEqual([
+    [false, false],
+    [true, false],
+    [false, true],
+    [true, false],
+  ])
 })
 
 test('every row says what its log comes to', async () => {
   for (const row of await walks()) {
     const { body } = await lead.get(`/api/walks/${row.id}`)
     const state = replay(toPinnedCharts(body['charts'] as ChartVersion[]), body['events'] as WalkEvent[])
-    expect([state.phase, state.phase === 'new' ? 0 : state.lastSeq, state.phase === 'new' ? 0 : state.minutesUsed]).toEqual([row.phase, row.lastSeq, row.minutesUsed])
+    expect([state.phase, state.phase === 'new' ? 0 : state.lastSeq, state.phase === 'new' ? 0 : state.minutesUsed]).toEqual([
+      row.phase,
+      row.lastSeq,
+      row.minutesUsed,
+    ])
   }
 })
 
-test('loading again changes nothing, and a shop of somebody\'s own is left as it is', async () => {
+test("loading again changes nothing, and a shop of somebody's own is left as it is", async () => {
   const before = JSON.stringify(await walks())
   await loadDemo(shop.deps)
   expect(JSON.stringify(await walks())).toBe(before)

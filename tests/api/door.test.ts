@@ -35,14 +35,20 @@ function isProblem(answer: Answer, status: number, code: string): void {
 }
 
 /** A request as it is written, for what `fetch` would not send. */
-function raw(path: string, { method = 'GET', headers = {}, body = '' }: { method?: string; headers?: Record<string, string | string[]>; body?: string | Buffer } = {}): Promise<{ status: number; headers: Record<string, unknown>; text: string }> {
+function raw(
+  path: string,
+  { method = 'GET', headers = {}, body = '' }: { method?: string; headers?: Record<string, string | string[]>; body?: string | Buffer } = {},
+): Promise<{ status: number; headers: Record<string, unknown>; text: string }> {
   const { port } = new URL(shop.base)
   return new Promise((resolve, reject) => {
-    const asking = request({ port, host: '127.0.0.1', path, method, headers: { ...headers, ...(body.length > 0 ? { 'content-length': String(body.length) } : {}) } }, (response) => {
-      let text = ''
-      response.on('data', (chunk: Buffer) => (text += chunk.toString()))
-      response.on('end', () => resolve({ status: response.statusCode ?? 0, headers: response.headers, text }))
-    })
+    const asking = request(
+      { port, host: '127.0.0.1', path, method, headers: { ...headers, ...(body.length > 0 ? { 'content-length': String(body.length) } : {}) } },
+      (response) => {
+        let text = ''
+        response.on('data', (chunk: Buffer) => (text += chunk.toString()))
+        response.on('end', () => resolve({ status: response.statusCode ?? 0, headers: response.headers, text }))
+      },
+    )
     asking.on('error', reject)
     asking.end(body)
   })
@@ -71,7 +77,14 @@ describe('a write from another site', () => {
   })
 
   test('a form of another site can neither post text nor sign somebody out', async () => {
-    isProblem(await owner.ask('POST', '/api/people', { body: '{"name":"X"}', headers: { 'content-type': 'text/plain', origin: 'https://elsewhere.example', 'sec-fetch-site': 'cross-site' } }), 403, 'cross-site')
+    isProblem(
+      await owner.ask('POST', '/api/people', {
+        body: '{"name":"X"}',
+        headers: { 'content-type': 'text/plain', origin: 'https://elsewhere.example', 'sec-fetch-site': 'cross-site' },
+      }),
+      403,
+      'cross-site',
+    )
     isProblem(await owner.ask('DELETE', '/api/session', { headers: { origin: 'https://elsewhere.example' } }), 403, 'cross-site')
     expect((await owner.get('/api/people')).status).toBe(200)
   })
@@ -96,7 +109,11 @@ describe('a body that is not what it should be', () => {
   })
 
   test('a packed body is not unpacked', async () => {
-    const answer = await raw('/api/session', { method: 'POST', headers: { 'content-type': 'application/json', 'content-encoding': 'gzip' }, body: Buffer.from([0x1f, 0x8b, 8, 0]) })
+    const answer = await raw('/api/session', {
+      method: 'POST',
+      headers: { 'content-type': 'application/json', 'content-encoding': 'gzip' },
+      body: Buffer.from([0x1f, 0x8b, 8, 0]),
+    })
     expect(answer.status).toBe(415)
   })
 
@@ -124,7 +141,7 @@ describe('a body that is not what it should be', () => {
     expect(chunked.status).toBeLessThan(500)
   })
 
-  test('a zero character and half a character are refused where they stand: nothing that a table can\'t hold gets that far', async () => {
+  test("a zero character and half a character are refused where they stand: nothing that a table can't hold gets that far", async () => {
     for (const text of ['a\\u0000b', 'a\\ud800b']) {
       const answer = await owner.ask('POST', '/api/people', { body: `{"name":"${text}","email":"a@fernhill.example","role":"junior"}` })
       isProblem(answer, 422, 'invalid-input')
@@ -139,12 +156,35 @@ describe('a body that is not what it should be', () => {
 })
 
 describe('an address that is not what it should be', () => {
-  test.each(['/api/walks/1', '/api/walks/%00', '/api/walks/%E0%A4%A', '/api/charts/__proto__/reach', '/api/charts/..%2f..%2fetc/reach', '/api/charts/saw/versions/x', '/api/charts/saw/versions/0', '/api/charts/saw/versions/99999999999999999999', '/api/people/undefined/link'])('%s is not found', async (path) => {
+  test.each([
+    '/api/walks/1',
+    '/api/walks/%00',
+    '/api/walks/%E0%A4%A',
+    '/api/charts/__proto__/reach',
+    '/api/charts/..%2f..%2fetc/reach',
+    '/api/charts/saw/versions/x',
+    '/api/charts/saw/versions/0',
+    '/api/charts/saw/versions/99999999999999999999',
+    '/api/people/undefined/link',
+  ])('%s is not found', async (path) => {
     const answer = await raw(path, { headers: { cookie: [...owner.cookies].map(([name, value]) => `${name}=${value}`).join('; ') } })
     expect([answer.status === 404 || answer.status === 405, answer.headers['content-type']]).toEqual([true, 'application/problem+json; charset=utf-8'])
   })
 
-  test.each(['?page=1&page=2', '?page[]=1', '?page[x]=1', '?page=-1', '?page=1e9', '?page=0x', '?state=OPEN', '?scope=all', '?x=1', '?__proto__=1', '?constructor=1', '?page=%00'])('%s is no question', async (query) => {
+  test.each([
+    '?page=1&page=2',
+    '?page[]=1',
+    '?page[x]=1',
+    '?page=-1',
+    '?page=1e9',
+    '?page=0x',
+    '?state=OPEN',
+    '?scope=all',
+    '?x=1',
+    '?__proto__=1',
+    '?constructor=1',
+    '?page=%00',
+  ])('%s is no question', async (query) => {
     const answer = await owner.get(`/api/walks${query}`)
     isProblem(answer, 422, 'invalid-input')
     expect((answer.body['errors'] as { pointer: string }[])[0]?.pointer).toMatch(/^#\/query\//)
@@ -152,14 +192,37 @@ describe('an address that is not what it should be', () => {
 })
 
 describe('headers', () => {
-  const everywhere = () => [...endpoints.filter(({ method }) => method === 'get').map(({ path }) => path.replace(/:\w+/, 'x')), '/', '/sign-in', '/link/abc', '/assets/entry-8f2c1a.js', '/nothing.js', '/api/nothing']
+  const everywhere = () => [
+    ...endpoints.filter(({ method }) => method === 'get').map(({ path }) => path.replace(/:\w+/, 'x')),
+    '/',
+    '/sign-in',
+    '/link/abc',
+    '/assets/entry-8f2c1a.js',
+    '/nothing.js',
+    '/api/nothing',
+  ]
 
   test('every answer carries the policy, no hint of what serves it, and no door for other sites', async () => {
     for (const path of everywhere()) {
       const { headers } = await owner.get(path)
       const policy = new Map((headers.get('content-security-policy') ?? '').split(';').map((part) => [part.split(' ')[0], part.split(' ').slice(1)]))
-      expect([path, policy.get('default-src'), policy.get('script-src'), policy.get('object-src'), policy.get('base-uri'), policy.get('frame-ancestors')]).toEqual([path, ["'self'"], ["'self'"], ["'none'"], ["'none'"], ["'none'"]])
-      expect([path, headers.get('x-content-type-options'), headers.get('referrer-policy'), headers.get('x-powered-by'), headers.get('access-control-allow-origin'), headers.get('strict-transport-security'), headers.get('server')]).toEqual([path, 'nosniff', 'no-referrer', null, null, null, null])
+      expect([
+        path,
+        policy.get('default-src'),
+        policy.get('script-src'),
+        policy.get('object-src'),
+        policy.get('base-uri'),
+        policy.get('frame-ancestors'),
+      ]).toEqual([path, ["'self'"], ["'self'"], ["'none'"], ["'none'"], ["'none'"]])
+      expect([
+        path,
+        headers.get('x-content-type-options'),
+        headers.get('referrer-policy'),
+        headers.get('x-powered-by'),
+        headers.get('access-control-allow-origin'),
+        headers.get('strict-transport-security'),
+        headers.get('server'),
+      ]).toEqual([path, 'nosniff', 'no-referrer', null, null, null, null])
       expect([path, headers.get('content-type')]).toEqual([path, expect.stringMatching(/charset=utf-8|image\/svg/)])
       if (path.startsWith('/api')) expect([path, headers.get('cache-control')]).toEqual([path, 'no-store'])
     }
@@ -186,9 +249,27 @@ describe('pages', () => {
     expect((await owner.get('/favicon.svg')).headers.get('cache-control')).toBe('no-cache')
   })
 
-  test.each(['/.env', '/.git/config', '/.git/HEAD', '/assets/entry-8f2c1a.js.map', '/package.json', '/server/main.ts', '/../package.json', '/%2e%2e/package.json', '/assets/', '/wp-login.php', '/data/base.tar', '/index.html.bak', '/node_modules/express/package.json'])('%s is not there', async (path) => {
+  test.each([
+    '/.env',
+    '/.git/config',
+    '/.git/HEAD',
+    '/assets/entry-8f2c1a.js.map',
+    '/package.json',
+    '/server/main.ts',
+    '/../package.json',
+    '/%2e%2e/package.json',
+    '/assets/',
+    '/wp-login.php',
+    '/data/base.tar',
+    '/index.html.bak',
+    '/node_modules/express/package.json',
+  ])('%s is not there', async (path) => {
     const answer = await raw(path)
-    expect([path, answer.status === 404 || (answer.status === 200 && answer.text.includes('<title>Pullcord')), answer.text.includes('SECRET')]).toEqual([path, true, false])
+    expect([path, answer.status === 404 || (answer.status === 200 && answer.text.includes('<title>Pullcord')), answer.text.includes('SECRET')]).toEqual([
+      path,
+      true,
+      false,
+    ])
     expect(/\.(env|git|json|ts|map|tar|bak|php)/.test(path) ? answer.status : 404).toBe(404)
   })
 
@@ -215,7 +296,12 @@ describe('when something breaks', () => {
 
   test('the answer says no more than that, with the number under which the log has the rest', async () => {
     const lines: object[] = []
-    const log = { ...shop.deps.log, info: () => undefined, debug: () => undefined, error: (fields: object) => lines.push(fields) } as unknown as TestShop['deps']['log']
+    const log = {
+      ...shop.deps.log,
+      info: () => undefined,
+      debug: () => undefined,
+      error: (fields: object) => lines.push(fields),
+    } as unknown as TestShop['deps']['log']
     const { status, body } = await broken({ log, database: { engine: 'pglite', isAnswering: () => Promise.reject(new Error('secret of the engine room')) } })
     expect([status, body['code'], JSON.stringify(body).includes('secret')]).toEqual([500, 'broken', false])
     expect(lines).toMatchObject([{ requestId: String(body['instance']).slice('urn:uuid:'.length) }])
@@ -237,9 +323,20 @@ describe('the log', () => {
     await owner.get('/api/links/secret-token-of-a-link')
     await owner.get('/link/secret-token-of-a-link')
     await owner.post('/api/session', { email: 'a\r\nforged: line@fernhill.example', password: 'very secret words' })
-    const lines = shop.logLines.slice(before).map((line) => JSON.parse(line) as Record<string, unknown>).filter(({ event }) => event === 'request')
+    const lines = shop.logLines
+      .slice(before)
+      .map((line) => JSON.parse(line) as Record<string, unknown>)
+      .filter(({ event }) => event === 'request')
     expect(lines).toHaveLength(3)
-    expect(lines[0]).toMatchObject({ method: 'GET', route: '/api/links/:token', status: 410, problem: 'link-used-up', personId: shop.person('owner').id, requestId: expect.any(String), ms: expect.any(Number) })
+    expect(lines[0]).toMatchObject({
+      method: 'GET',
+      route: '/api/links/:token',
+      status: 410,
+      problem: 'link-used-up',
+      personId: shop.person('owner').id,
+      requestId: expect.any(String),
+      ms: expect.any(Number),
+    })
     expect(shop.logLines.slice(before).join('')).not.toMatch(/secret-token|very secret|forged/)
   })
 })

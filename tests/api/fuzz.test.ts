@@ -32,12 +32,22 @@ function bodyOf({ method, path }: Endpoint): fc.Arbitrary<unknown> {
   return fc.oneof({ weight: 3, arbitrary: valid }, { weight: 5, arbitrary: spoiled(valid) }, { weight: 1, arbitrary: oddValues })
 }
 
-const pathPart = fc.oneof(fc.constantFrom('saw', '1', '01900000-0000-7000-8000-000000000001'), oddValues.map((value) => (typeof value === 'string' ? value : JSON.stringify(value)) ?? ''))
+const pathPart = fc.oneof(
+  fc.constantFrom('saw', '1', '01900000-0000-7000-8000-000000000001'),
+  oddValues.map((value) => (typeof value === 'string' ? value : JSON.stringify(value)) ?? ''),
+)
 
 function addressOf({ path, contract }: Endpoint): fc.Arbitrary<string> {
   const names = [...path.matchAll(/:(\w+)/g)].map(([, name]) => name ?? '')
-  const query = contract.query === undefined ? fc.constant('') : fc.array(fc.tuple(fc.constantFrom('q', 'page', 'scope', 'state', 'x', '__proto__'), pathPart), { maxLength: 3 }).map((pairs) => `?${pairs.map(([key, value]) => `${key}=${encode(value)}`).join('&')}`)
-  return fc.tuple(fc.tuple(...names.map(() => pathPart)), query).map(([parts, search]) => names.reduce((here, name, order) => here.replace(`:${name}`, encode(parts[order] ?? '') || 'x'), path as string) + search)
+  const query =
+    contract.query === undefined
+      ? fc.constant('')
+      : fc
+          .array(fc.tuple(fc.constantFrom('q', 'page', 'scope', 'state', 'x', '__proto__'), pathPart), { maxLength: 3 })
+          .map((pairs) => `?${pairs.map(([key, value]) => `${key}=${encode(value)}`).join('&')}`)
+  return fc
+    .tuple(fc.tuple(...names.map(() => pathPart)), query)
+    .map(([parts, search]) => names.reduce((here, name, order) => here.replace(`:${name}`, encode(parts[order] ?? '') || 'x'), path as string) + search)
 }
 
 function encode(text: string): string {
@@ -52,7 +62,10 @@ test.each(endpoints.map((endpoint) => [`${endpoint.method.toUpperCase()} ${endpo
       fc.asyncProperty(addressOf(endpoint), bodyOf(endpoint), headers, fc.nat(clients.length - 1), async (path, body, more, who) => {
         // A client whose session an earlier request ended asks as nobody.
         const client = clients[who] ?? clients[0]
-        const answer = await client?.ask(endpoint.method.toUpperCase(), path, { ...(body === undefined ? {} : { body: JSON.stringify(body) ?? 'null' }), headers: more })
+        const answer = await client?.ask(endpoint.method.toUpperCase(), path, {
+          ...(body === undefined ? {} : { body: JSON.stringify(body) ?? 'null' }),
+          headers: more,
+        })
         expect(answer?.status).toBeLessThan(500)
         if ((answer?.status ?? 0) >= 400) {
           expect(answer?.headers.get('content-type')).toBe('application/problem+json; charset=utf-8')

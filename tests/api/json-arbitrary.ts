@@ -4,7 +4,31 @@ type Json = { readonly [key: string]: unknown }
 
 /** Values that no schema expects where they turn up. */
 export const oddValues: fc.Arbitrary<unknown> = fc.oneof(
-  fc.constantFrom(null, true, 0, -1, 1e308, 0.1, '', ' ', '\0', '\ud800', '../../etc/passwd', "'; drop table people; --", '<script>alert(1)</script>', '1,275', '２８００', '2 800', 'NaN', {}, [], [[]], [null], { $gt: '' }, { constructor: 1 }),
+  fc.constantFrom(
+    null,
+    true,
+    0,
+    -1,
+    1e308,
+    0.1,
+    '',
+    ' ',
+    '\0',
+    '\ud800',
+    '../../etc/passwd',
+    "'; drop table people; --",
+    '<script>alert(1)</script>',
+    '1,275',
+    '２８００',
+    '2 800',
+    'NaN',
+    {},
+    [],
+    [[]],
+    [null],
+    { $gt: '' },
+    { constructor: 1 },
+  ),
   fc.string({ unit: 'binary', maxLength: 40 }),
   fc.double(),
   fc.string({ minLength: 3000, maxLength: 3000 }),
@@ -24,7 +48,10 @@ export function fromSchema(schema: Json, components: Json, depth = 0): fc.Arbitr
     case 'object':
       return objectOf(schema, inner, depth)
     case 'array':
-      return fc.array(inner(schema['items'] ?? {}), { minLength: Number(schema['minItems'] ?? 0), maxLength: Math.max(Number(schema['minItems'] ?? 0), depth > 4 ? 1 : 3) })
+      return fc.array(inner(schema['items'] ?? {}), {
+        minLength: Number(schema['minItems'] ?? 0),
+        maxLength: Math.max(Number(schema['minItems'] ?? 0), depth > 4 ? 1 : 3),
+      })
     case 'string':
       return textOf(schema)
     case 'integer':
@@ -45,7 +72,9 @@ function objectOf(schema: Json, inner: (json: unknown) => fc.Arbitrary<unknown>,
   }
   const required = new Set((schema['required'] ?? []) as string[])
   const fields = Object.entries(properties).filter(([name]) => required.has(name) || depth < 5)
-  return fc.record(Object.fromEntries(fields.map(([name, json]) => [name, inner(json)])), { requiredKeys: fields.map(([name]) => name).filter((name) => required.has(name)) })
+  return fc.record(Object.fromEntries(fields.map(([name, json]) => [name, inner(json)])), {
+    requiredKeys: fields.map(([name]) => name).filter((name) => required.has(name)),
+  })
 }
 
 function textOf(schema: Json): fc.Arbitrary<string> {

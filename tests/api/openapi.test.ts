@@ -16,14 +16,19 @@ type Operation = {
 }
 
 let shop: TestShop
-let document: { openapi: string; paths: { [path: string]: { [method: string]: Operation } }; components: { schemas: { [name: string]: Json }; securitySchemes: Json } } & Json
+let document: {
+  openapi: string
+  paths: { [path: string]: { [method: string]: Operation } }
+  components: { schemas: { [name: string]: Json }; securitySchemes: Json }
+} & Json
 beforeAll(async () => {
   shop = await openTestShop({ withPeople: false })
   document = (await shop.newClient().get('/api/openapi.json')).body as typeof document
 })
 afterAll(() => shop.close())
 
-const operations = () => Object.entries(document.paths).flatMap(([path, methods]) => Object.entries(methods).map(([method, operation]) => ({ path, method, operation })))
+const operations = () =>
+  Object.entries(document.paths).flatMap(([path, methods]) => Object.entries(methods).map(([method, operation]) => ({ path, method, operation })))
 
 /** Every object in a JSON value. */
 function* objectsIn(value: unknown): Generator<Json> {
@@ -36,7 +41,11 @@ describe('the description of the API', () => {
   test('is OpenAPI 3.1, without a base path, and names every endpoint once', () => {
     expect(document.openapi).toBe('3.1.0')
     expect(document['servers']).toBeUndefined()
-    expect(operations().map(({ path, method }) => `${method} ${path}`).sort()).toEqual(endpoints.map(({ path, method }) => `${method} ${path.replaceAll(/:(\w+)/g, '{$1}')}`).sort())
+    expect(
+      operations()
+        .map(({ path, method }) => `${method} ${path}`)
+        .sort(),
+    ).toEqual(endpoints.map(({ path, method }) => `${method} ${path.replaceAll(/:(\w+)/g, '{$1}')}`).sort())
     const ids = operations().map(({ operation }) => operation.operationId)
     expect(new Set(ids).size).toBe(ids.length)
   })
@@ -44,7 +53,10 @@ describe('the description of the API', () => {
   test('every reference leads somewhere, and every named part is used', () => {
     const references = [...objectsIn(document)].flatMap(({ $ref }) => (typeof $ref === 'string' ? [$ref] : []))
     for (const reference of references) {
-      const found = reference.slice(2).split('/').reduce<unknown>((here, part) => (here as Json | undefined)?.[part], document)
+      const found = reference
+        .slice(2)
+        .split('/')
+        .reduce<unknown>((here, part) => (here as Json | undefined)?.[part], document)
       expect([reference, typeof found]).toEqual([reference, 'object'])
     }
     for (const name of Object.keys(document.components.schemas)) expect(references).toContain(`#/components/schemas/${name}`)
@@ -53,7 +65,10 @@ describe('the description of the API', () => {
   test('the parameters of a path are those that stand in it', () => {
     for (const { path, operation } of operations()) {
       const inPath = [...path.matchAll(/\{(\w+)\}/g)].map(([, name]) => name)
-      expect([path, operation.parameters.filter((parameter) => parameter.in === 'path').map(({ name, required }) => [name, required])]).toEqual([path, inPath.map((name) => [name, true])])
+      expect([path, operation.parameters.filter((parameter) => parameter.in === 'path').map(({ name, required }) => [name, required])]).toEqual([
+        path,
+        inPath.map((name) => [name, true]),
+      ])
       for (const { schema } of operation.parameters) expect(Object.keys(schema).length).toBeGreaterThan(0)
     }
   })

@@ -92,7 +92,8 @@ describe('a session', () => {
 
   test('writes its last-seen every five minutes at most', async () => {
     const client = await shop.as('owner')
-    const lastSeen = async () => ((await client.get('/api/sessions')).body['sessions'] as { isThisOne: boolean; lastSeenAt: string }[]).find(({ isThisOne }) => isThisOne)?.lastSeenAt
+    const lastSeen = async () =>
+      ((await client.get('/api/sessions')).body['sessions'] as { isThisOne: boolean; lastSeenAt: string }[]).find(({ isThisOne }) => isThisOne)?.lastSeenAt
     const first = await lastSeen()
     shop.wait(4 * 60)
     expect(await lastSeen()).toBe(first)
@@ -103,8 +104,16 @@ describe('a session', () => {
   test('is listed with its browser, and can be ended from another one', async () => {
     const { email, password } = shop.person('lead')
     const [desk, phone] = [shop.newClient(), shop.newClient()]
-    await desk.post('/api/session', { email, password }, { 'user-agent': 'Mozilla/5.0 (X11; Linux x86_64) AppleWebKit/537.36 (KHTML, like Gecko) Chrome/150.0 Safari/537.36' })
-    await phone.post('/api/session', { email, password }, { 'user-agent': 'Mozilla/5.0 (iPhone; CPU iPhone OS 18_0 like Mac OS X) AppleWebKit/605 Version/18.0 Mobile/15E148 Safari/604.1' })
+    await desk.post(
+      '/api/session',
+      { email, password },
+      { 'user-agent': 'Mozilla/5.0 (X11; Linux x86_64) AppleWebKit/537.36 (KHTML, like Gecko) Chrome/150.0 Safari/537.36' },
+    )
+    await phone.post(
+      '/api/session',
+      { email, password },
+      { 'user-agent': 'Mozilla/5.0 (iPhone; CPU iPhone OS 18_0 like Mac OS X) AppleWebKit/605 Version/18.0 Mobile/15E148 Safari/604.1' },
+    )
     const list = (await desk.get('/api/sessions')).body['sessions'] as { id: string; browser: string; isThisOne: boolean }[]
     expect(list.filter(({ isThisOne }) => isThisOne)).toHaveLength(1)
     const other = list.find(({ browser }) => browser === 'Safari on iPhone')
@@ -163,28 +172,40 @@ describe('a change by the owner acts on the next request', () => {
 })
 
 describe('a forged cookie', () => {
-  test.each(['none', 'another key', 'jwk in the head', 'another purpose', 'no purpose', 'another algorithm', 'changed payload', 'ended'])('%s opens nothing', async (kind) => {
-    const client = await shop.as('owner')
-    const token = client.cookies.get('pullcord-session') ?? ''
-    const [head = '', payload = '', signature = ''] = token.split('.')
-    const claims = JSON.parse(Buffer.from(payload, 'base64url').toString()) as Record<string, unknown>
-    const keyOf = (purpose: string) => createHmac('sha256', shop.deps.config.sessionSecret).update(`pullcord ${purpose}`).digest()
-    const forge = (alg: string, key: Uint8Array, body: Record<string, unknown> = claims, more: Record<string, unknown> = {}) => new SignJWT(body).setProtectedHeader({ alg, typ: 'JWT', ...more }).sign(key)
-    const forged = {
-      none: () => new UnsecuredJWT(claims).encode(),
-      'another key': () => forge('HS256', Buffer.from('x'.repeat(32))),
-      'jwk in the head': () => forge('HS256', Buffer.from('y'.repeat(32)), claims, { jwk: { kty: 'oct', k: Buffer.from('y'.repeat(32)).toString('base64url') } }),
-      'another purpose': () => client.cookies.get('pullcord-browser') ?? '',
-      'no purpose': () => forge('HS256', keyOf('session'), { ...claims, purpose: undefined }),
-      'another algorithm': () => forge('HS512', keyOf('session')),
-      'changed payload': () => [head, Buffer.from(JSON.stringify({ ...claims, data: { ...(claims['data'] as object), id: '01900000-0000-7000-8000-000000000001' } })).toString('base64url'), signature].join('.'),
-      ended: () => forge('HS256', keyOf('session'), { ...claims, exp: Math.floor(shop.deps.clock().getTime() / 1000) - 1 }),
-    }[kind]
-    const thief = shop.newClient()
-    thief.cookies.set('pullcord-session', (await forged?.()) ?? '')
-    expect((await thief.get('/api/people')).body['code']).toBe('signed-out')
-    expect(await isIn(client)).toBe(true)
-  })
+  test.each(['none', 'another key', 'jwk in the head', 'another purpose', 'no purpose', 'another algorithm', 'changed payload', 'ended'])(
+    '%s opens nothing',
+    async (kind) => {
+      const client = await shop.as('owner')
+      const token = client.cookies.get('pullcord-session') ?? ''
+      const [head = '', payload = '', signature = ''] = token.split('.')
+      const claims = JSON.parse(Buffer.from(payload, 'base64url').toString()) as Record<string, unknown>
+      const keyOf = (purpose: string) => createHmac('sha256', shop.deps.config.sessionSecret).update(`pullcord ${purpose}`).digest()
+      const forge = (alg: string, key: Uint8Array, body: Record<string, unknown> = claims, more: Record<string, unknown> = {}) =>
+        new SignJWT(body).setProtectedHeader({ alg, typ: 'JWT', ...more }).sign(key)
+      const forged = {
+        none: () => new UnsecuredJWT(claims).encode(),
+        'another key': () => forge('HS256', Buffer.from('x'.repeat(32))),
+        'jwk in the head': () =>
+          forge('HS256', Buffer.from('y'.repeat(32)), claims, { jwk: { kty: 'oct', k: Buffer.from('y'.repeat(32)).toString('base64url') } }),
+        'another purpose': () => client.cookies.get('pullcord-browser') ?? '',
+        'no purpose': () => forge('HS256', keyOf('session'), { ...claims, purpose: undefined }),
+        'another algorithm': () => forge('HS512', keyOf('session')),
+        'changed payload': () =>
+          [
+            head,
+            Buffer.from(JSON.stringify({ ...claims, data: { ...(claims['data'] as object), id: '01900000-0000-7000-8000-000000000001' } })).toString(
+              'base64url',
+            ),
+            signature,
+          ].join('.'),
+        ended: () => forge('HS256', keyOf('session'), { ...claims, exp: Math.floor(shop.deps.clock().getTime() / 1000) - 1 }),
+      }[kind]
+      const thief = shop.newClient()
+      thief.cookies.set('pullcord-session', (await forged?.()) ?? '')
+      expect((await thief.get('/api/people')).body['code']).toBe('signed-out')
+      expect(await isIn(client)).toBe(true)
+    },
+  )
 
   test.each(['', 'a', 'a.b.c', '%00', '{}', 'x'.repeat(5000)])('nonsense (%#) opens nothing and breaks nothing', async (value) => {
     const thief = shop.newClient()
@@ -206,7 +227,8 @@ describe('one-time links', () => {
     expect(person.status).toBe('invited')
     const client = shop.newClient()
     const path = `/api/links/${tokenOf(link.url)}`
-    for (let times = 0; times < 2; times++) expect((await client.get(path)).body).toMatchObject({ purpose: 'invite', name: 'Ada', email: 'ada@fernhill.example' })
+    for (let times = 0; times < 2; times++)
+      expect((await client.get(path)).body).toMatchObject({ purpose: 'invite', name: 'Ada', email: 'ada@fernhill.example' })
     expect((await client.post('/api/session', { email: person.email, password })).body['code']).toBe('wrong-sign-in')
     expect((await client.post(path, { password })).body).toEqual({ done: true })
     expect(await who(client)).toBeNull()
@@ -216,7 +238,9 @@ describe('one-time links', () => {
 
   test('twenty uses at once set one password', async () => {
     const { link } = await invite('Bea')
-    const answers = await Promise.all(Array.from({ length: 20 }, (_, count) => shop.newClient().post(`/api/links/${tokenOf(link.url)}`, { password: `${password} ${count}` })))
+    const answers = await Promise.all(
+      Array.from({ length: 20 }, (_, count) => shop.newClient().post(`/api/links/${tokenOf(link.url)}`, { password: `${password} ${count}` })),
+    )
     expect(answers.filter(({ status }) => status === 200)).toHaveLength(1)
     expect(answers.filter(({ status }) => status === 410)).toHaveLength(19)
   })
@@ -256,7 +280,7 @@ describe('one-time links', () => {
     expect(await isIn(client)).toBe(false)
   })
 
-  test('is worth nothing from a copy of the table, as a session, or as the owner\'s code', async () => {
+  test("is worth nothing from a copy of the table, as a session, or as the owner's code", async () => {
     const { link } = await invite('Fay')
     const token = tokenOf(link.url)
     const rows = JSON.stringify(await shop.deps.db.select().from(oneTimeLinks))
@@ -278,7 +302,11 @@ describe('the first owner', () => {
     expect((await client.get('/api/session')).body['needsOwner']).toBe(true)
     expect((await client.post('/api/owner', { ...owner, code: 'WRNG-WRNG' })).body['code']).toBe('wrong-code')
     expect((await client.post('/api/owner', { ...owner, code, password: 'password123456789' })).body['code']).toBe('weak-password')
-    const answers = await Promise.all(Array.from({ length: 5 }, (_, count) => fresh.newClient().post('/api/owner', { ...owner, email: `o${count}@fernhill.example`, code: code.toLowerCase().replaceAll('-', ' ') })))
+    const answers = await Promise.all(
+      Array.from({ length: 5 }, (_, count) =>
+        fresh.newClient().post('/api/owner', { ...owner, email: `o${count}@fernhill.example`, code: code.toLowerCase().replaceAll('-', ' ') }),
+      ),
+    )
     expect(answers.map(({ status }) => status).toSorted()).toEqual([201, 409, 409, 409, 409])
     expect(await makeOwnerCode(fresh.deps)).toBeNull()
     expect((await client.get('/api/session')).body['needsOwner']).toBe(false)

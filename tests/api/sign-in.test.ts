@@ -16,7 +16,8 @@ afterEach(() => {
 afterAll(() => shop.close())
 
 const wrong = 'not the one at all'
-const tryIn = (client: Client, email: string, password = wrong, headers: Readonly<Record<string, string>> = {}) => client.post('/api/session', { email, password }, headers)
+const tryIn = (client: Client, email: string, password = wrong, headers: Readonly<Record<string, string>> = {}) =>
+  client.post('/api/session', { email, password }, headers)
 
 describe('a refused sign-in', () => {
   test('reads alike for a wrong password, an unknown address, an invited and a deactivated person', async () => {
@@ -132,7 +133,11 @@ describe('a password', () => {
     const person = await shop.addPerson('junior', 'Pia West')
     const [here, elsewhere] = [await shop.signIn(person), await shop.signIn(person)]
     const refused = await here.put('/api/session/password', { present: wrong, password: 'vellum tractor paris' })
-    expect([refused.status, refused.body['code'], refused.body['errors']]).toEqual([422, 'wrong-present-password', [{ pointer: '#/present', detail: 'This is not your present password.' }]])
+    expect([refused.status, refused.body['code'], refused.body['errors']]).toEqual([
+      422,
+      'wrong-present-password',
+      [{ pointer: '#/present', detail: 'This is not your present password.' }],
+    ])
     expect((await here.put('/api/session/password', { present: person.password, password: 'vellum tractor paris' })).body).toEqual({ done: true })
     expect((await here.get('/api/sessions')).status).toBe(200)
     expect((await elsewhere.get('/api/sessions')).status).toBe(401)

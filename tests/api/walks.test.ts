@@ -26,7 +26,8 @@ async function begun(acts = [started(), tap('yes'), revs(9000)], person: TestPer
 }
 
 const logLength = async (walkId: WalkId) => (await clients.lead.get(`/api/walks/${walkId}`)).body['lastSeq']
-const sideEvents = async (client: Client, walkId: WalkId) => (await client.get(`/api/walks/${walkId}/side-events`)).body['sideEvents'] as { event: WalkEvent; status: string; code: string }[]
+const sideEvents = async (client: Client, walkId: WalkId) =>
+  (await client.get(`/api/walks/${walkId}/side-events`)).body['sideEvents'] as { event: WalkEvent; status: string; code: string }[]
 
 describe('a walk through the API', () => {
   test('a junior walks a chart to a proven cause, one batch a tap, and the row tells where it stands', async () => {
@@ -37,7 +38,15 @@ describe('a walk through the API', () => {
     const { body } = await clients.junior.get(`/api/walks/${walkId}`)
     expect(body).toMatchObject({
       lastSeq: events.length,
-      walk: { phase: 'closed', isOpen: false, standsAt: 'repaired, run passed', causeTitle: 'Filter packed', chartTitle: 'No guts', machineTitle: 'Chain saw, two-stroke', startedBy: { name: 'Jun Okoro' } },
+      walk: {
+        phase: 'closed',
+        isOpen: false,
+        standsAt: 'repaired, run passed',
+        causeTitle: 'Filter packed',
+        chartTitle: 'No guts',
+        machineTitle: 'Chain saw, two-stroke',
+        startedBy: { name: 'Jun Okoro' },
+      },
       people: { [junior().id]: 'Jun Okoro' },
     })
     expect(body['events']).toEqual(events)
@@ -54,7 +63,12 @@ describe('a walk through the API', () => {
   test('the row says the check at which the walk stands, a question, and a pause', async () => {
     const { walkId, last } = await begun([started(), tap('yes'), revs(9000), asked])
     const row = async () => (await clients.junior.get(`/api/walks/${walkId}`)).body['walk']
-    expect(await row()).toMatchObject({ phase: 'at-node', standsAt: expect.stringMatching(/^check \d+ · Look at|^check \d+ · /), hasQuestion: true, isPaused: false })
+    expect(await row()).toMatchObject({
+      phase: 'at-node',
+      standsAt: expect.stringMatching(/^check \d+ · Look at|^check \d+ · /),
+      hasQuestion: true,
+      isPaused: false,
+    })
     await send(clients.junior, walkId, [after(last, { type: 'paused', payload: {} })])
     expect(await row()).toMatchObject({ isPaused: true, isOpen: true })
   })
@@ -107,7 +121,10 @@ describe('what becomes of an event', () => {
 
   test('an event for a check that the walk has left is refused, and kept beside the log with its reason', async () => {
     const { walkId, last } = await begun()
-    const stray = after(last, { type: 'finding-recorded', payload: { node: 'saw/n1', outcome: 'yes', judgedBy: 'hand', photoIds: [], seconds: 1 } } as unknown as Pick<WalkEvent, 'type' | 'payload'>)
+    const stray = after(last, {
+      type: 'finding-recorded',
+      payload: { node: 'saw/n1', outcome: 'yes', judgedBy: 'hand', photoIds: [], seconds: 1 },
+    } as unknown as Pick<WalkEvent, 'type' | 'payload'>)
     const answer = await send(clients.junior, walkId, [stray])
     expect(answer.results).toEqual([{ id: stray.id, status: 'refused', code: 'wrong-node' }])
     expect(await sideEvents(clients.junior, walkId)).toMatchObject([{ event: stray, status: 'refused', code: 'wrong-node' }])
@@ -122,7 +139,11 @@ describe('what becomes of an event', () => {
     const five = after(four, note('five'))
     const answer = await send(clients.junior, walkId, [one, two, bad, four, five])
     expect(answer.results.map(({ status, code }) => [status, code])).toEqual([
-      ['appended', undefined], ['appended', undefined], ['refused', 'wrong-phase'], ['fork', 'wrong-seq'], ['fork', 'wrong-seq'],
+      ['appended', undefined],
+      ['appended', undefined],
+      ['refused', 'wrong-phase'],
+      ['fork', 'wrong-seq'],
+      ['fork', 'wrong-seq'],
     ])
     expect(answer.lastSeq).toBe(events.length + 2)
     expect((await sideEvents(clients.junior, walkId)).map(({ event }) => event.id)).toEqual([bad.id, four.id, five.id])
@@ -202,7 +223,11 @@ async function openSecondProcess() {
   return {
     postAs: async (client: Client, walkId: WalkId, events: readonly WalkEvent[]) => {
       const cookie = [...client.cookies].map(([name, value]) => `${name}=${value}`).join('; ')
-      const response = await fetch(`http://127.0.0.1:${port}/api/walks/${walkId}/events`, { method: 'POST', headers: { 'content-type': 'application/json', cookie }, body: JSON.stringify({ events }) })
+      const response = await fetch(`http://127.0.0.1:${port}/api/walks/${walkId}/events`, {
+        method: 'POST',
+        headers: { 'content-type': 'application/json', cookie },
+        body: JSON.stringify({ events }),
+      })
       return (await response.json()) as { results: { status: string }[] }
     },
     close: () =>
@@ -228,10 +253,16 @@ describe('who holds a walk', () => {
   test('a lead takes a walk over; its junior sees it go on and can no longer write to it', async () => {
     const { walkId, last } = await begun()
     const lead = shop.person('lead')
-    const taken = after(last, { type: 'taken-over', payload: { from: junior().id, why: 'Needed for a saw that has to go out.' } }, { personId: lead.id, deviceId: otherDevice })
+    const taken = after(
+      last,
+      { type: 'taken-over', payload: { from: junior().id, why: 'Needed for a saw that has to go out.' } },
+      { personId: lead.id, deviceId: otherDevice },
+    )
     expect(statuses(await send(clients.lead, walkId, [taken]))).toEqual(['appended'])
     expect((await clients.junior.get(`/api/walks/${walkId}`)).body['walk']).toMatchObject({ heldBy: { name: 'Lena Marsh', deviceId: otherDevice } })
-    expect(statuses(await send(clients.junior, walkId, [after(taken, note(), { personId: junior().id, deviceId: last?.deviceId ?? otherDevice })]))).toEqual(['fork'])
+    expect(statuses(await send(clients.junior, walkId, [after(taken, note(), { personId: junior().id, deviceId: last?.deviceId ?? otherDevice })]))).toEqual([
+      'fork',
+    ])
     const mine = (await clients.lead.get('/api/walks?scope=mine')).body['walks'] as { id: string }[]
     expect(mine.map(({ id }) => id)).toContain(walkId)
   })
@@ -241,7 +272,11 @@ describe('who holds a walk', () => {
     const mateClient = await shop.signIn(mate)
     const { walkId, last } = await begun()
     const taken = after(last, { type: 'taken-over', payload: { from: junior().id, why: 'Lunch is over.' } }, { personId: mate.id, deviceId: otherDevice })
-    for (const answer of [await mateClient.get(`/api/walks/${walkId}`), await send(mateClient, walkId, [taken]), await mateClient.get(`/api/walks/${walkId}/side-events`)]) {
+    for (const answer of [
+      await mateClient.get(`/api/walks/${walkId}`),
+      await send(mateClient, walkId, [taken]),
+      await mateClient.get(`/api/walks/${walkId}/side-events`),
+    ]) {
       expect(answer.status).toBe(404)
     }
     const handed = after(last, { type: 'handed-over', payload: { to: mate.id } })
@@ -256,7 +291,9 @@ describe('who holds a walk', () => {
     await clients.owner.patch(`/api/people/${gone.id}`, { isActive: false })
     for (const to of [randomUUID() as PersonId, gone.id]) {
       const { walkId, last } = await begun()
-      expect((await send(clients.junior, walkId, [after(last, { type: 'handed-over', payload: { to } })])).results).toMatchObject([{ status: 'refused', code: 'no-such-person' }])
+      expect((await send(clients.junior, walkId, [after(last, { type: 'handed-over', payload: { to } })])).results).toMatchObject([
+        { status: 'refused', code: 'no-such-person' },
+      ])
     }
   })
 
@@ -270,8 +307,15 @@ describe('who holds a walk', () => {
 
   test('only a lead answers a question; the answer is appended whatever device holds the walk', async () => {
     const { walkId, last } = await begun([started(), tap('yes'), asked])
-    const answered = (person: TestPerson, deviceId: DeviceId) => after(last, { type: 'answered', payload: { questionId: JSON.parse(JSON.stringify(last?.payload)).questionId ?? questionId, text: 'Yes, go on.', photoIds: [] } }, { personId: person.id, deviceId })
-    expect((await send(clients.junior, walkId, [answered(junior(), last?.deviceId ?? otherDevice)])).results).toMatchObject([{ status: 'refused', code: 'lead-only' }])
+    const answered = (person: TestPerson, deviceId: DeviceId) =>
+      after(
+        last,
+        { type: 'answered', payload: { questionId: JSON.parse(JSON.stringify(last?.payload)).questionId ?? questionId, text: 'Yes, go on.', photoIds: [] } },
+        { personId: person.id, deviceId },
+      )
+    expect((await send(clients.junior, walkId, [answered(junior(), last?.deviceId ?? otherDevice)])).results).toMatchObject([
+      { status: 'refused', code: 'lead-only' },
+    ])
     expect(statuses(await send(clients.lead, walkId, [answered(shop.person('lead'), otherDevice)]))).toEqual(['appended'])
   })
 
@@ -308,7 +352,11 @@ describe('the start of a walk', () => {
     const draft = await clients.lead.get('/api/charts/saw/draft')
     const document = { ...(draft.body['document'] as object), title: 'No guts at all' }
     const saved = await clients.lead.put('/api/charts/saw/draft', { document }, { 'if-match': draft.headers.get('etag') ?? '' })
-    expect((await clients.lead.post('/api/charts/saw/publish', { revision: saved.body['revision'], changeNote: 'New title', acceptsWarnings: true })).body['version']).toBe(2)
+    expect(
+      (await clients.lead.post('/api/charts/saw/publish', { revision: saved.body['revision'], changeNote: 'New title', acceptsWarnings: true })).body[
+        'version'
+      ],
+    ).toBe(2)
     expect(new Set(statuses(await send(clients.junior, offline.walkId, offline.events)))).toEqual(new Set(['appended']))
     expect((await clients.junior.get(`/api/walks/${offline.walkId}`)).body['walk']).toMatchObject({ version: 1, chartTitle: 'No guts' })
   })
@@ -330,7 +378,7 @@ describe('the start of a walk', () => {
 })
 
 describe('lists of walks', () => {
-  test('one\'s own by default, the shop\'s for a lead, a page at a time, newest first', async () => {
+  test("one's own by default, the shop's for a lead, a page at a time, newest first", async () => {
     const quiet = await shop.addPerson('junior', 'Quinn Lark')
     const client = await shop.signIn(quiet)
     const ids: string[] = []

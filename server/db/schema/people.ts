@@ -17,10 +17,7 @@ export const people = pgTable(
     createdAt: moment('created_at').notNull(),
     lastSeenAt: moment('last_seen_at'),
   },
-  (table) => [
-    uniqueIndex('people_email_key').on(sql`lower(${table.email})`),
-    check('people_role_known', sql`${table.role} in ('junior', 'lead', 'owner')`),
-  ],
+  (table) => [uniqueIndex('people_email_key').on(sql`lower(${table.email})`), check('people_role_known', sql`${table.role} in ('junior', 'lead', 'owner')`)],
 )
 
 /** One row a sign-in. The cookie carries the row's id and a secret of which only the hash is kept. */

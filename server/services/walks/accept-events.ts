@@ -20,15 +20,19 @@ const triesAtMost = 4
 
 /** Takes a batch of events of one walk, in order and in one transaction; says of each what became of it. */
 export async function acceptEvents(deps: Deps, by: CurrentSession, walkId: WalkId, events: readonly WalkEvent[]): Promise<BatchResult> {
-  const strays = events.flatMap((event, order) => (event.walkId === walkId ? [] : [{ pointer: `#/events/${order}/walkId`, detail: 'This event belongs to another walk.' }]))
-  if (strays.length > 0) throw new AppError('wrong-walk', 'The batch holds events of another walk. Nothing was stored; send each walk its own.', { errors: strays })
+  const strays = events.flatMap((event, order) =>
+    event.walkId === walkId ? [] : [{ pointer: `#/events/${order}/walkId`, detail: 'This event belongs to another walk.' }],
+  )
+  if (strays.length > 0)
+    throw new AppError('wrong-walk', 'The batch holds events of another walk. Nothing was stored; send each walk its own.', { errors: strays })
   const hashed = events.map((event): HashedEvent => ({ event, bodyHash: hashContent({ ...event, seq: undefined }) }))
   return (await tryAppend(deps, by, walkId, hashed)) ?? (await appendJudged(deps, by, walkId, hashed))
 }
 
 /** Starts a walk: the same as appending event 1. A walk of somebody else under this id stays hidden but for the fact that the id is taken. */
 export async function startWalk(deps: Deps, by: CurrentSession, walkId: WalkId, event: WalkEvent): Promise<BatchResult> {
-  if (event.walkId !== walkId) throw new AppError('wrong-walk', 'The event names another walk.', { errors: [{ pointer: '#/event/walkId', detail: 'This has to be the id of the walk.' }] })
+  if (event.walkId !== walkId)
+    throw new AppError('wrong-walk', 'The event names another walk.', { errors: [{ pointer: '#/event/walkId', detail: 'This has to be the id of the walk.' }] })
   try {
     return await acceptEvents(deps, by, walkId, [event])
   } catch (error) {
@@ -67,7 +71,13 @@ async function appendJudged(deps: Deps, by: CurrentSession, walkId: WalkId, hash
   }
 }
 
-async function judgeAndStore(deps: Deps, tx: Db, by: CurrentSession, walkId: WalkId, hashed: readonly HashedEvent[]): Promise<{ judged: Judged; memory: WalkMemory }> {
+async function judgeAndStore(
+  deps: Deps,
+  tx: Db,
+  by: CurrentSession,
+  walkId: WalkId,
+  hashed: readonly HashedEvent[],
+): Promise<{ judged: Judged; memory: WalkMemory }> {
   const lastSeq = await lockWalk(tx, walkId)
   const memory = lastSeq === null ? nothingYet : await catchUp(deps, tx, walkId, lastSeq)
   const first = hashed[0]?.event
@@ -82,7 +92,10 @@ async function judgeAndStore(deps: Deps, tx: Db, by: CurrentSession, walkId: Wal
       state: memory.state,
       lastSeq: memory.lastSeq,
       actor: by.person,
-      known: await readKnown(tx, events.map(({ id }) => id)),
+      known: await readKnown(
+        tx,
+        events.map(({ id }) => id),
+      ),
       vetoOf: await readVetoes(deps, tx, versions, events),
     },
     hashed,
@@ -95,7 +108,10 @@ async function judgeAndStore(deps: Deps, tx: Db, by: CurrentSession, walkId: Wal
 
 /** What is known of some ids, in this walk or any other. */
 async function readKnown(tx: Db, ids: readonly EventId[]): Promise<ReadonlyMap<EventId, KnownEvent>> {
-  const logged = await tx.select({ id: walkEvents.id, bodyHash: walkEvents.bodyHash }).from(walkEvents).where(inArray(walkEvents.id, [...ids]))
+  const logged = await tx
+    .select({ id: walkEvents.id, bodyHash: walkEvents.bodyHash })
+    .from(walkEvents)
+    .where(inArray(walkEvents.id, [...ids]))
   const aside = await tx
     .select({ id: walkSideEvents.id, bodyHash: walkSideEvents.bodyHash, status: walkSideEvents.status, code: walkSideEvents.code })
     .from(walkSideEvents)

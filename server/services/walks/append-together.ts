@@ -55,7 +55,9 @@ export async function appendTogether(deps: Deps, walkId: WalkId, memory: WalkMem
 /** Of each addition, whether it took effect. In the order of the walks, so that two of these can't wait for each other. */
 async function appendAll(db: Db, additions: readonly Addition[]): Promise<readonly boolean[]> {
   // A second batch of the same walk was judged on what the first has changed by now.
-  const firsts = [...new Map(additions.toReversed().map((addition) => [addition.walk_id, addition])).values()].sort((one, other) => (one.walk_id < other.walk_id ? -1 : 1))
+  const firsts = [...new Map(additions.toReversed().map((addition) => [addition.walk_id, addition])).values()].sort((one, other) =>
+    one.walk_id < other.walk_id ? -1 : 1,
+  )
   try {
     const { rows } = await db.execute<{ walk_id: WalkId }>(sql`
       with addition as (

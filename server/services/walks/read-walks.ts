@@ -89,7 +89,10 @@ function peopleIn(event: WalkEvent): PersonId[] {
 }
 
 async function readNames(deps: Deps, ids: readonly PersonId[]): Promise<Record<PersonId, string>> {
-  const rows = await deps.db.select({ id: people.id, name: people.name }).from(people).where(inArray(people.id, [...new Set(ids)]))
+  const rows = await deps.db
+    .select({ id: people.id, name: people.name })
+    .from(people)
+    .where(inArray(people.id, [...new Set(ids)]))
   return Object.fromEntries(rows.map(({ id, name }) => [id, name]))
 }
 

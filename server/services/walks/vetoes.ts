@@ -10,8 +10,16 @@ import type { Veto } from './judge-batch.ts'
 import type { WalkMemory } from './walk-memory.ts'
 
 /** What only the database can say against an event that the rules of the walk would take: read ahead for a whole batch. */
-export async function readVetoes(_deps: Deps, tx: Db, versions: WalkMemory['versions'], events: readonly WalkEvent[]): Promise<(event: WalkEvent) => Veto | null> {
-  const receivers = await readActive(tx, events.flatMap((event) => (event.type === 'handed-over' ? [event.payload.to] : [])))
+export async function readVetoes(
+  _deps: Deps,
+  tx: Db,
+  versions: WalkMemory['versions'],
+  events: readonly WalkEvent[],
+): Promise<(event: WalkEvent) => Veto | null> {
+  const receivers = await readActive(
+    tx,
+    events.flatMap((event) => (event.type === 'handed-over' ? [event.payload.to] : [])),
+  )
   const begin = events.find((event) => event.type === 'started')
   const hasHoles = begin === undefined ? false : await leavesOut(tx, versions, begin)
   return (event) => {
@@ -22,7 +30,10 @@ export async function readVetoes(_deps: Deps, tx: Db, versions: WalkMemory['vers
 
 async function readActive(tx: Db, ids: readonly EventOf<'handed-over'>['payload']['to'][]): Promise<ReadonlySet<string>> {
   if (ids.length === 0) return new Set()
-  const rows = await tx.select({ id: people.id }).from(people).where(and(inArray(people.id, [...ids]), eq(people.isActive, true)))
+  const rows = await tx
+    .select({ id: people.id })
+    .from(people)
+    .where(and(inArray(people.id, [...ids]), eq(people.isActive, true)))
   return new Set(rows.map(({ id }) => id))
 }
 

@@ -13,7 +13,18 @@ import type { walks } from '#server/db/schema/walks.ts'
 /** What a walk's row says of where it stands: all of it derived from the log. */
 export type Standing = Pick<
   typeof walks.$inferInsert,
-  'machine' | 'phase' | 'isPaused' | 'isOpen' | 'standsAt' | 'minutesUsed' | 'causeId' | 'causeTitle' | 'hasQuestion' | 'holderPersonId' | 'holderDeviceId' | 'lastSeq'
+  | 'machine'
+  | 'phase'
+  | 'isPaused'
+  | 'isOpen'
+  | 'standsAt'
+  | 'minutesUsed'
+  | 'causeId'
+  | 'causeTitle'
+  | 'hasQuestion'
+  | 'holderPersonId'
+  | 'holderDeviceId'
+  | 'lastSeq'
 >
 
 /** Derives the row of a walk from what its log comes to. */

@@ -41,18 +41,38 @@ export async function writeLog(deps: Deps, tx: Db, walkId: WalkId, memory: WalkM
       startedAt: receivedAt,
     })
   } else {
-    await tx.update(walks).set({ ...standing, ...machineTitle }).where(eq(walks.id, walkId))
+    await tx
+      .update(walks)
+      .set({ ...standing, ...machineTitle })
+      .where(eq(walks.id, walkId))
   }
   const events = appended.map(({ event }) => event)
   const added = [...withPeopleOf(memory.people, events)].filter((personId) => !memory.people.has(personId))
-  if (added.length > 0) await tx.insert(walkPeople).values(added.map((personId) => ({ walkId, personId }))).onConflictDoNothing()
-  await tx.insert(walkEvents).values(
-    appended.map(({ event, bodyHash }) => ({ id: event.id, walkId, seq: event.seq, type: event.type, personId: event.personId, deviceId: event.deviceId, event, bodyHash, receivedAt })),
-  )
+  if (added.length > 0)
+    await tx
+      .insert(walkPeople)
+      .values(added.map((personId) => ({ walkId, personId })))
+      .onConflictDoNothing()
+  await tx
+    .insert(walkEvents)
+    .values(
+      appended.map(({ event, bodyHash }) => ({
+        id: event.id,
+        walkId,
+        seq: event.seq,
+        type: event.type,
+        personId: event.personId,
+        deviceId: event.deviceId,
+        event,
+        bodyHash,
+        receivedAt,
+      })),
+    )
 }
 
 async function nameMachine(tx: Db, machine: Machine): Promise<string> {
-  const [model] = machine.modelId === undefined ? [] : await tx.select({ maker: models.maker, name: models.name }).from(models).where(eq(models.id, machine.modelId))
+  const [model] =
+    machine.modelId === undefined ? [] : await tx.select({ maker: models.maker, name: models.name }).from(models).where(eq(models.id, machine.modelId))
   return machineWords(machine, model ?? null)
 }
 
@@ -60,7 +80,19 @@ async function nameMachine(tx: Db, machine: Machine): Promise<string> {
 export async function writeAside(deps: Deps, tx: Db, walkId: WalkId, aside: readonly AsideEvent[]): Promise<void> {
   if (aside.length === 0) return
   const receivedAt = deps.clock()
-  await tx.insert(walkSideEvents).values(
-    aside.map(({ event, bodyHash, status, code }) => ({ id: event.id, walkId, personId: event.personId, deviceId: event.deviceId, event, bodyHash, status, code, receivedAt })),
-  )
+  await tx
+    .insert(walkSideEvents)
+    .values(
+      aside.map(({ event, bodyHash, status, code }) => ({
+        id: event.id,
+        walkId,
+        personId: event.personId,
+        deviceId: event.deviceId,
+        event,
+        bodyHash,
+        status,
+        code,
+        receivedAt,
+      })),
+    )
 }
