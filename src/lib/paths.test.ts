@@ -15,5 +15,6 @@ test('sign-in leads back to a page of ours and never to another address', () => 
   expect(paths.signIn('/walks/1?x=2')).toBe('/sign-in?next=%2Fwalks%2F1%3Fx%3D2')
   expect(paths.signIn('/')).toBe('/sign-in')
   expect(toLocalPath('/walks/1')).toBe('/walks/1')
-  for (const foreign of [null, '', 'https://other.example', '//other.example', '/\\other.example', 'javascript:alert(1)']) expect(toLocalPath(foreign)).toBe('/')
+  for (const foreign of [null, '', 'https://other.example', '//other.example', '/\\other.example', 'javascript:alert(1)'])
+    expect(toLocalPath(foreign)).toBe('/')
 })

@@ -1,0 +1,36 @@
+import { desk, listAxeFindings, listSidewaysScroll, listSmallTargets, phone } from '#tests/support/browser.ts'
+
+import type { Technician } from './technician.ts'
+
+/** WCAG 2.2 AA (2023), 2.5.8: the least size of a target. */
+const leastTarget = 24
+/** The least size of a control for a gloved hand: our own, larger than any standard asks for. */
+const leastBenchTarget = 56
+/** WCAG 2.2 AA (2023), 1.4.10: the width at which nothing may need sideways scroll. */
+const narrowWidth = 320
+
+/**
+ * Looks a screen over at both sizes and in both themes, and tells what is wrong with it. Every rule of axe runs in each size and in each theme
+ * once; the colours, which alone hang on the theme, run in each theme at each size.
+ */
+export async function inspect({ page }: Technician, screen: string, { isBench = false }: { readonly isBench?: boolean } = {}): Promise<readonly string[]> {
+  const findings: string[] = []
+  const note = (where: string, found: readonly string[]): void => void findings.push(...found.map((words) => `${screen}, ${where}: ${words}`))
+
+  for (const [size, viewport, fullTheme] of [
+    ['phone', phone, 'light'],
+    ['desk', desk, 'dark'],
+  ] as const) {
+    await page.setViewportSize(viewport)
+    for (const colorScheme of ['light', 'dark'] as const) {
+      await page.emulateMedia({ colorScheme })
+      note(`${size}, ${colorScheme}`, await listAxeFindings(page, colorScheme === fullTheme ? undefined : ['color-contrast']))
+    }
+    note(size, await listSmallTargets(page, isBench ? leastBenchTarget : leastTarget))
+  }
+  await page.emulateMedia({ colorScheme: 'light' })
+  await page.setViewportSize({ width: narrowWidth, height: phone.height })
+  note(`${narrowWidth} px`, await listSidewaysScroll(page))
+  await page.setViewportSize(phone)
+  return findings
+}
