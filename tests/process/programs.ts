@@ -1,6 +1,5 @@
 import { spawn } from 'node:child_process'
 import type { ChildProcess } from 'node:child_process'
-import { rmSync } from 'node:fs'
 import { cp, mkdtemp, rm } from 'node:fs/promises'
 import { createServer } from 'node:net'
 import type { Server } from 'node:net'
@@ -8,7 +7,7 @@ import { tmpdir } from 'node:os'
 import { join } from 'node:path'
 import { fileURLToPath } from 'node:url'
 
-import { onTestFinished } from 'vitest'
+import { afterAll, onTestFinished } from 'vitest'
 
 const root = fileURLToPath(new URL('../..', import.meta.url))
 
@@ -34,9 +33,12 @@ export async function makeUsedFolder(kind: 'demo' | 'own'): Promise<string> {
   return folder
 }
 
+afterAll(async () => {
+  for (const folder of made.values()) await rm(await folder, { recursive: true, force: true })
+})
+
 async function runOnce(kind: 'demo' | 'own'): Promise<string> {
   const folder = await mkdtemp(join(tmpdir(), 'pullcord-used-'))
-  process.once('exit', () => rmSync(folder, { recursive: true, force: true }))
   const server = await startServer({ PULLCORD_DATA: folder, DEMO: kind === 'demo' ? '1' : '0' })
   const status = await server.end('SIGTERM')
   if (status !== 0) throw new Error(`The server ended with status ${status}.`)
