@@ -1,11 +1,11 @@
 import type { Cause, ChartNode, DecisionNode } from '#shared/chart/document.ts'
 import { chartNumbers, isDecision, type ChartIndex } from '#shared/chart/graph.ts'
-import { splitPlace, type CauseId, type NodeId, type OutcomeId, type Place } from '#shared/lib/ids.ts'
+import { splitPlace, type CauseId, type ChartId, type NodeId, type OutcomeId, type Place } from '#shared/lib/ids.ts'
 import { causeOf } from './endings.ts'
 import { bandedOutcomes } from './judging.ts'
 import type { Worked } from './metal.ts'
 import type { AccessOpening, CauseWords, Entering, NodeName, NodeWords, OutcomeChoice } from './page.ts'
-import { accessOnStack, locate, placeOf, type Located, type PinnedCharts } from './pinned-charts.ts'
+import { accessOnStack, chartOf, locate, placeOf, type Located, type PinnedCharts } from './pinned-charts.ts'
 import type { ProvenCause, WalkRecord } from './state.ts'
 
 /** Numbers of a chart that were worked out before; an index never changes. */
@@ -15,6 +15,11 @@ function numberOf(index: ChartIndex, nodeId: NodeId): string {
   const numbers = knownNumbers.get(index) ?? chartNumbers(index)
   knownNumbers.set(index, numbers)
   return numbers.get(nodeId) ?? ''
+}
+
+function chartTitle(charts: PinnedCharts, walk: WalkRecord, chartId: ChartId | undefined): string {
+  if (chartId === undefined) return 'another chart'
+  return chartOf(charts, walk.pins, chartId)?.chart.title ?? chartId
 }
 
 /** What a node without a title of its own is called. */
@@ -32,7 +37,7 @@ function titleOf(charts: PinnedCharts, walk: WalkRecord, { index, node }: Locate
     case 'back':
       return 'Back to where it was called'
     case 'jump':
-      return node.pick === undefined ? `Go on in ${node.chart ?? 'another chart'}` : 'What does it do?'
+      return node.pick === undefined ? `Go on in ${chartTitle(charts, walk, node.chart)}` : 'What does it do?'
     default:
       return node.id
   }
