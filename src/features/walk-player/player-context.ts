@@ -4,6 +4,7 @@ import type { ChartVersion } from '#shared/api/charts.ts'
 import type { SignedIn } from '#shared/api/session.ts'
 import type { EventId, PersonId } from '#shared/lib/ids.ts'
 import type { NumberFormat } from '#shared/units/number-format.ts'
+import type { WalkEvent } from '#shared/walk/events.ts'
 import type { WalkPage } from '#shared/walk/page.ts'
 import type { PinnedCharts } from '#shared/walk/pinned-charts.ts'
 import type { StartedWalk } from '#shared/walk/state.ts'
@@ -20,6 +21,8 @@ export type Player = {
   /** The versions behind `charts`, as documents. */
   readonly versions: readonly ChartVersion[]
   readonly page: WalkPage
+  /** The event that brought the walk to this page. */
+  readonly arrivedBy: WalkEvent | null
   /** Changes when another page is shown, and with nothing else. */
   readonly pageKey: string
   readonly machineTitle: string

@@ -97,6 +97,7 @@ export function usePlayerState({ detail, person, format }: PlayerInput): PlayerS
           charts: rules.charts,
           versions: rules.versions,
           page,
+          arrivedBy: snapshot.events[state.arrival.seq - 1] ?? null,
           pageKey,
           machineTitle: detail.walk.machineTitle,
           person,

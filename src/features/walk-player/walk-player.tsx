@@ -8,6 +8,7 @@ import type { NumberFormat } from '#shared/units/number-format.ts'
 import type { WalkPage } from '#shared/walk/page.ts'
 import { passedOver } from '#shared/walk/select.ts'
 import { isOpen } from '#shared/walk/state.ts'
+import { causeWords } from '#shared/walk/words.ts'
 import type { WalkDetail } from '#src/api/walk-logs.ts'
 import { walkQueries } from '#src/api/walks.ts'
 import { EmptyState } from '#src/components/ui/empty-state.tsx'
@@ -70,6 +71,7 @@ export function WalkPlayer({ detail, person, format }: WalkPlayerProps) {
                 {refusal.words}
               </Notice>
             )}
+            {panel === null && <RuledOut />}
             {panel === null && <Passed />}
             {panel === null && <Answered />}
           </>
@@ -168,6 +170,18 @@ function PanelOf({ name }: { readonly name: PanelName }): ReactNode {
     default:
       return assertNever(name)
   }
+}
+
+/** A cause that turned out not to be it brought the walk back here; the page says which and why. */
+function RuledOut() {
+  const { walk, charts, arrivedBy } = usePlayer()
+  const last = walk.ruledOut.at(-1)
+  if (last === undefined || last.eventId !== arrivedBy?.id) return null
+  return (
+    <Notice state="care" title={`Ruled out: ${causeWords(charts, walk, last.causeId).title}`} className="mt-4">
+      {last.how === 'run-failed' ? 'The hand-back run failed.' : 'It was not proven.'} The walk goes on at the last check that could lead elsewhere.
+    </Notice>
+  )
 }
 
 /** Shared charts that are not there yet were passed over on the way here; the page says so. */

@@ -1,4 +1,5 @@
 import { assertNever } from '#shared/lib/assert-never.ts'
+import type { OfferedAnswer } from '#shared/walk/page.ts'
 import type { SignalWord } from '#shared/trade/signal-words.ts'
 import type { WalkResult } from '#shared/walk/state.ts'
 import type { SavedState } from '#src/lib/walk-log.ts'
@@ -37,4 +38,14 @@ export function toSavedWords(saved: SavedState): string {
 /** "1 tap", "3 taps". */
 export function toCount(count: number, one: string, many: string): string {
   return `${count}\u00a0${count === 1 ? one : many}`
+}
+
+/** Where an offered answer comes from. */
+export function toOfferedWords({ from }: OfferedAnswer): string {
+  switch (from) {
+    case 'noticed':
+      return 'you noticed this on the way: tap to keep it'
+    case 'stepped-back':
+      return 'your answer before you stepped back: tap to keep it'
+  }
 }

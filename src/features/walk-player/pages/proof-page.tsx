@@ -6,8 +6,9 @@ import { formatValue } from '#shared/units/format-value.ts'
 import type { OutcomeChoice, ProofPage as Page } from '#shared/walk/page.ts'
 import type { Answer } from '#shared/walk/state.ts'
 import { StateMark } from '#src/components/ui/state-mark.tsx'
-import { AnswerList, NoAnswerList } from '#src/features/walk-player/parts/answer-list.tsx'
+import { AnswerList, NoAnswerList, toOfferedAnswer } from '#src/features/walk-player/parts/answer-list.tsx'
 import { NoteField, toLengthWords } from '#src/features/walk-player/parts/note-field.tsx'
+import { OfferedValue } from '#src/features/walk-player/parts/offered-value.tsx'
 import { OutcomeButton } from '#src/features/walk-player/parts/outcome-button.tsx'
 import { DoFirst, NodeHelp, NodeReasons, PageHead, Sheet, toMachineWords, toMinutesWords } from '#src/features/walk-player/parts/page-parts.tsx'
 import { ReadingEntry } from '#src/features/walk-player/parts/reading-entry.tsx'
@@ -22,15 +23,27 @@ import { toValueMark, useReadingEntry } from '#src/features/walk-player/use-read
 import { announce } from '#src/lib/announce.ts'
 
 /** The value or answer that was taken on this page before the change, and the way to take it again. */
-export type TakenBefore = { readonly payload: NonNullable<Given['before']>; readonly onTakeAgain: () => void; readonly onRecorded: () => void }
+export type TakenBefore = { readonly payload: NonNullable<Given['before']>; readonly onTakeAgain?: () => void; readonly onRecorded?: () => void }
 
 type ProofPageProps = { readonly page: Page; readonly taken?: TakenBefore }
 
 /** A proof: one change, then the same look again. Before, changed and after stand under each other. */
-export function ProofPage({ page, taken }: ProofPageProps) {
+export function ProofPage({ page, taken: takenNow }: ProofPageProps) {
+  const takenBefore = useBeforeOfOffered(page)
+  const taken = takenNow ?? takenBefore
   const { judging } = page
   if (judging === null) return <ProofByLook page={page} {...(taken && { taken })} />
   return <ProofByValue page={page} judging={judging} {...(taken && { taken })} />
+}
+
+/** A proof that was recorded and stepped back from keeps what it took before its change: the metal has not been put back since. */
+function useBeforeOfOffered({ before, compares, offered }: Page): TakenBefore | undefined {
+  const { walk } = usePlayer()
+  if (before !== null || compares === null || offered === null) return undefined
+  const line = walk.trail.find(({ eventId }) => eventId === offered.eventId)
+  if (line?.kind !== 'finding' || line.before === null) return undefined
+  const { outcome, value, unit } = line.before
+  return { payload: { outcome, ...(value === null || unit === null ? {} : { value, unit }) } }
 }
 
 function ProofByValue({ page, judging, taken }: ProofPageProps & { readonly judging: NonNullable<Page['judging']> }) {
@@ -42,7 +55,7 @@ function ProofByValue({ page, judging, taken }: ProofPageProps & { readonly judg
     const value = measured.value === undefined || measured.unit === undefined ? '' : `${formatValue(measured.value, measured.unit, format)}, `
     if (!answer({ choice, judgedBy, measured, said: `${value}${choice.title}`, ...(taken && { before: taken.payload }) })) return
     entry.forget()
-    taken?.onRecorded()
+    taken?.onRecorded?.()
   }
   const act = useRecordAct(entry, page.outcomes, onRecord)
   const wordsOf = (choice: OutcomeChoice): string | undefined => toProofWords(page, choice)
@@ -54,6 +67,7 @@ function ProofByValue({ page, judging, taken }: ProofPageProps & { readonly judg
           <NoAnswerList question={page.node.title} noAnswer={page.noAnswer} onPick={skip} onClose={noAnswer.toggle} />
         ) : (
           <div className="grid gap-1">
+            <OfferedValue page={page} />
             <p className="label">After</p>
             <ReadingEntry entry={entry} label={`After: ${page.node.title}`} onEnter={act}>
               <JudgedProof entry={entry} outcomes={page.outcomes} wordsOf={wordsOf} onPress={act}>
@@ -94,6 +108,11 @@ function ProofByLook({ page, taken }: ProofPageProps) {
   const field = useRef<HTMLTextAreaElement>(null)
   const text = note ?? ''
   const press = (choice: OutcomeChoice): void => {
+    const reuses = page.offered?.answer.outcome === choice.outcome && text.trim() === '' ? page.offered : null
+    if (reuses !== null) {
+      answer({ choice, reuses })
+      return
+    }
     const wrong =
       toLengthWords(text) ?? (page.needsNote && choice.confirms && text.trim() === '' ? 'Write what the second look showed: it is the proof.' : undefined)
     setError(wrong)
@@ -104,7 +123,7 @@ function ProofByLook({ page, taken }: ProofPageProps) {
     }
     if (!answer({ choice, note: text, ...(taken && { before: taken.payload }) })) return
     setNote(null)
-    taken?.onRecorded()
+    taken?.onRecorded?.()
   }
   return (
     <Sheet
@@ -128,16 +147,7 @@ function ProofByLook({ page, taken }: ProofPageProps) {
       answers={
         <AnswerList
           question={page.node.title}
-          answers={page.outcomes.map((choice) => {
-            const words = toProofWords(page, choice)
-            return {
-              key: choice.outcome,
-              numeral: choice.balloon,
-              title: choice.title,
-              onPress: () => press(choice),
-              ...(words === undefined ? {} : { words }),
-            }
-          })}
+          answers={page.outcomes.map((choice) => toOfferedAnswer(choice, page.offered, toProofWords(page, choice), () => press(choice)))}
           noAnswer={page.noAnswer}
           onNoAnswer={skip}
         />
@@ -157,21 +167,29 @@ function toLowerFirst(text: string): string {
 }
 
 function ProofWhat({ page, taken, stage }: { readonly page: Page; readonly taken: TakenBefore | undefined; readonly stage: string }) {
+  const { walk } = usePlayer()
   const { node, entering, suspect, before, change, afterwards } = page
+  const isRuledOut = suspect !== null && walk.ruledOut.some(({ causeId }) => causeId === suspect.causeId)
   return (
     <>
       <DoFirst entering={entering} lines={taken === undefined ? page.lines : []} />
       <PageHead
         knot="proof"
         stage={stage}
-        over={['Prove it', suspect?.title ?? null, toMinutesWords(node.minutes, entering.minutes), toMachineWords(entering.machine)]}
+        over={[
+          'Prove it',
+          suspect?.title ?? null,
+          isRuledOut ? 'ruled out before' : null,
+          toMinutesWords(node.minutes, entering.minutes),
+          toMachineWords(entering.machine),
+        ]}
         title={node.title}
       />
       <dl className="mt-4 border-t-3 border-ink [&>div]:border-b [&>div]:border-hair">
         {before !== null && (
           <ProofRow lead="Before">
             <AnswerWords answer={before.answer} title={before.title} page={page} />
-            {taken !== undefined && (
+            {taken?.onTakeAgain !== undefined && (
               <button type="button" onClick={taken.onTakeAgain} className="min-h-14 px-2 text-small text-cord underline underline-offset-4">
                 Take it again
               </button>

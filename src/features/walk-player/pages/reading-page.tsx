@@ -1,13 +1,11 @@
 import { formatValue } from '#shared/units/format-value.ts'
-import { judgeTries } from '#shared/walk/judging.ts'
 import type { OutcomeChoice, ReadingPage as Page } from '#shared/walk/page.ts'
-import { OutcomeButton } from '#src/features/walk-player/parts/outcome-button.tsx'
 import { NoAnswerList, toOutcomeWords } from '#src/features/walk-player/parts/answer-list.tsx'
+import { OfferedValue } from '#src/features/walk-player/parts/offered-value.tsx'
 import { DoFirst, NodeHelp, NodeReasons, PageHead, Sheet, toKindWords, toMachineWords, toMinutesWords } from '#src/features/walk-player/parts/page-parts.tsx'
 import { ReadingEntry } from '#src/features/walk-player/parts/reading-entry.tsx'
 import { Timer } from '#src/features/walk-player/parts/timer.tsx'
 import { ValueAnswers, useRecordAct } from '#src/features/walk-player/parts/value-answers.tsx'
-import { toOfferedWords } from '#src/features/walk-player/pages/check-page.tsx'
 import { usePlayer } from '#src/features/walk-player/player-context.ts'
 import { useAnswering } from '#src/features/walk-player/use-answering.ts'
 import { useReadingEntry } from '#src/features/walk-player/use-reading-entry.ts'
@@ -44,7 +42,7 @@ export function ReadingPage({ page }: { readonly page: Page }) {
           <NoAnswerList question={node.title} noAnswer={page.noAnswer} onPick={skip} onClose={noAnswer.toggle} />
         ) : (
           <div className="grid gap-3">
-            <Offered page={page} />
+            <OfferedValue page={page} />
             <ReadingEntry entry={entry} label={node.title} onEnter={act}>
               <ValueAnswers question={node.title} entry={entry} outcomes={outcomes} wordsOf={toOutcomeWords} onRecord={onRecord} />
             </ReadingEntry>
@@ -54,21 +52,4 @@ export function ReadingPage({ page }: { readonly page: Page }) {
       later={<NodeReasons node={node} />}
     />
   )
-}
-
-/** The value that is already there, to be kept with one tap instead of measured again. */
-function Offered({ page }: { readonly page: Page }) {
-  const { format, tap } = usePlayer()
-  const { answer } = useAnswering(page)
-  const { offered, outcomes, judging } = page
-  const choice = outcomes.find(({ outcome }) => outcome === offered?.answer.outcome)
-  if (offered === null || choice === undefined) return null
-  const { value, unit } = offered.answer
-  const title = value === null || unit === null ? choice.title : `${formatValue(value, unit, format)}, ${choice.title}`
-  const keep = (): void => {
-    const isMeasured = value !== null && unit !== null
-    const isJudged = isMeasured && choice.isBanded && judgeTries({ ...judging, repeat: null }, [value], unit).kind === 'outcome'
-    answer({ choice, reuses: offered, said: title, judgedBy: isJudged ? 'limits' : 'hand', ...(isMeasured && { measured: { value, unit } }) })
-  }
-  return <OutcomeButton numeral={null} title={`Keep ${title}`} words={toOfferedWords(offered)} look="leading" onPress={() => tap(keep)} />
 }

@@ -1,12 +1,13 @@
 import type { ReactNode } from 'react'
 import { useState } from 'react'
 
-import type { NoAnswer, OutcomeChoice } from '#shared/walk/page.ts'
+import type { NoAnswer, OfferedAnswer, OutcomeChoice } from '#shared/walk/page.ts'
 import { OutcomeButton } from '#src/features/walk-player/parts/outcome-button.tsx'
 import { usePlayer } from '#src/features/walk-player/player-context.ts'
 import { useTapGuard } from '#src/features/walk-player/tap-guard.ts'
 import type { SkipWhy } from '#src/lib/walk-words.ts'
 import { skipWords } from '#src/lib/walk-words.ts'
+import { toOfferedWords } from '#src/features/walk-player/words.ts'
 import { useShortcut } from '#src/lib/shortcuts.ts'
 
 export type Answer = {
@@ -123,4 +124,18 @@ export function NoAnswerList({ question, noAnswer, onPick, onClose }: NoAnswerLi
 export function toOutcomeWords(choice: OutcomeChoice): string | undefined {
   if (choice.isServiceable) return choice.serviceItem === null ? 'serviceable: the walk goes on' : `serviceable: “${choice.serviceItem}” joins the list`
   return undefined
+}
+
+/** An outcome as a button; the one that was answered before says so, and one tap keeps it. */
+export function toOfferedAnswer(choice: OutcomeChoice, offered: OfferedAnswer | null, words: string | undefined, onPress: () => void): Answer {
+  const isOffered = offered?.answer.outcome === choice.outcome
+  const said = isOffered ? toOfferedWords(offered) : words
+  return {
+    key: choice.outcome,
+    numeral: choice.balloon,
+    title: choice.title,
+    look: isOffered ? 'leading' : 'plain',
+    onPress,
+    ...(said === undefined ? {} : { words: said }),
+  }
 }
