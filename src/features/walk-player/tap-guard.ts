@@ -1,4 +1,4 @@
-import { useCallback, useEffect, useRef, useState } from 'react'
+import { useCallback, useEffect, useLayoutEffect, useRef, useState } from 'react'
 
 /** A second tap within this time is a slip of a gloved or wet finger. */
 export const doubleTapMs = 350
@@ -15,7 +15,8 @@ let lastActAt = -Infinity
  */
 export function useTapGuard(pageKey: string, deadMs: number = newPageMs): (act: () => void) => void {
   const shownAt = useRef(-Infinity)
-  useEffect(() => {
+  // Counted from the moment when the page stands there, not from when the browser finds time for it.
+  useLayoutEffect(() => {
     shownAt.current = performance.now()
   }, [pageKey])
   return useCallback(
