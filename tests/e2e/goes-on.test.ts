@@ -68,11 +68,11 @@ test.each(bothHands)('a server that is lost in the middle of a walk holds nobody
 
   await shop.process().kill()
   await ivy.answer('No change')
-  await ivy.sees('Does air pass freely through the fuel line?')
+  await ivy.comesTo('Does air pass freely through the fuel line?')
   await ivy.seesWords(/1 not sent yet/)
   await ivy.seesWords('The server does not answer.')
   await ivy.answer('Passes freely')
-  await ivy.sees('What does the plug look like?')
+  await ivy.comesTo('What does the plug look like?')
   await ivy.seesWords(/2 not sent yet/)
 
   await shop.process().start()
