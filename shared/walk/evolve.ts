@@ -163,7 +163,7 @@ function notice(charts: PinnedCharts, walk: OpenWalk, event: EventOf<'noticed'>)
 }
 
 /** What was noticed, as an answer: the outcome that was named, else the one whose band holds the value; `null` when neither tells. */
-export function noticedAnswer(walk: WalkRecord, check: LocatedDecision, { outcome, value, unit }: EventOf<'noticed'>['payload']): Answer | null {
+function noticedAnswer(walk: WalkRecord, check: LocatedDecision, { outcome, value, unit }: EventOf<'noticed'>['payload']): Answer | null {
   if (outcome !== undefined) return toAnswer({ outcome, value, unit })
   const judging = takenOnce(judgingOf(walk, check))
   const verdict = judging && value !== undefined && unit !== undefined ? judgeTries(judging, [value], unit) : null

@@ -1,10 +1,9 @@
 import { isDecision } from '#shared/chart/graph.ts'
-import type { CautionId, ServiceItemId } from '#shared/lib/ids.ts'
+import type { CautionId, Place, ServiceItemId } from '#shared/lib/ids.ts'
 import type { Worked } from './metal.ts'
 import { locate, type PinnedCharts } from './pinned-charts.ts'
 import type { Arrived } from './route.ts'
 import { liveTrail, type Answer, type CautionRead, type OpenWalk, type Phase, type Position, type StartedWalk, type Trigger, type WalkRecord } from './state.ts'
-import type { Place } from '#shared/lib/ids.ts'
 
 type KeyOfAny<Union> = Union extends unknown ? keyof Union : never
 
