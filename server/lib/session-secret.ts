@@ -25,7 +25,7 @@ export async function keepSessionSecret(folder: string): Promise<string> {
 
 async function makeSecret(folder: string, path: string): Promise<string> {
   await mkdir(folder, { recursive: true, mode: 0o700 })
-  const draft = `${path}.${process.pid}`
+  const draft = `${path}.${randomBytes(6).toString('hex')}`
   await writeFile(draft, `${randomBytes(48).toString('base64url')}\n`, { mode: 0o600, flush: true })
   // Of two processes that make one at once the first wins, and both read the winner's.
   await link(draft, path).catch((error: NodeJS.ErrnoException) => {
