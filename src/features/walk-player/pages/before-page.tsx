@@ -5,6 +5,7 @@ import { formatValue } from '#shared/units/format-value.ts'
 import { unitSchema } from '#shared/units/limits.ts'
 import type { BeforePage as Page, OutcomeChoice } from '#shared/walk/page.ts'
 import { AnswerList, NoAnswerList } from '#src/features/walk-player/parts/answer-list.tsx'
+import { OfferedValue } from '#src/features/walk-player/parts/offered-value.tsx'
 import { DoFirst, NodeHelp, NodeReasons, PageHead, Sheet, toMachineWords, toMinutesWords } from '#src/features/walk-player/parts/page-parts.tsx'
 import { ReadingEntry } from '#src/features/walk-player/parts/reading-entry.tsx'
 import { Timer } from '#src/features/walk-player/parts/timer.tsx'
@@ -63,17 +64,20 @@ function BeforeByLook({ page, onTaken, skip }: StageProps) {
     <Sheet
       what={<BeforeWhat page={page} />}
       answers={
-        <AnswerList
-          question={page.node.title}
-          answers={page.outcomes.map(({ outcome, balloon, title }) => ({
-            key: outcome,
-            numeral: balloon,
-            title,
-            onPress: () => onTaken({ outcome, title, measured: null }),
-          }))}
-          noAnswer={page.noAnswer}
-          onNoAnswer={skip}
-        />
+        <div className="grid gap-3">
+          <OfferedValue page={page.proof} />
+          <AnswerList
+            question={page.node.title}
+            answers={page.outcomes.map(({ outcome, balloon, title }) => ({
+              key: outcome,
+              numeral: balloon,
+              title,
+              onPress: () => onTaken({ outcome, title, measured: null }),
+            }))}
+            noAnswer={page.noAnswer}
+            onNoAnswer={skip}
+          />
+        </div>
       }
     />
   )
@@ -95,9 +99,12 @@ function BeforeByValue({ page, judging, onTaken, skip }: StageProps & { readonly
         noAnswer.isOpen ? (
           <NoAnswerList question={page.node.title} noAnswer={page.noAnswer} onPick={skip} onClose={noAnswer.toggle} />
         ) : (
-          <ReadingEntry entry={entry} label={page.node.title} onEnter={act}>
-            <ValueAnswers question={page.node.title} entry={entry} outcomes={page.outcomes} onRecord={onRecord} />
-          </ReadingEntry>
+          <div className="grid gap-3">
+            <OfferedValue page={page.proof} />
+            <ReadingEntry entry={entry} label={page.node.title} onEnter={act}>
+              <ValueAnswers question={page.node.title} entry={entry} outcomes={page.outcomes} onRecord={onRecord} />
+            </ReadingEntry>
+          </div>
         )
       }
       later={<NodeReasons node={page.node} />}

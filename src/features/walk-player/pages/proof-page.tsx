@@ -23,27 +23,15 @@ import { toValueMark, useReadingEntry } from '#src/features/walk-player/use-read
 import { announce } from '#src/lib/announce.ts'
 
 /** The value or answer that was taken on this page before the change, and the way to take it again. */
-export type TakenBefore = { readonly payload: NonNullable<Given['before']>; readonly onTakeAgain?: () => void; readonly onRecorded?: () => void }
+export type TakenBefore = { readonly payload: NonNullable<Given['before']>; readonly onTakeAgain: () => void; readonly onRecorded: () => void }
 
 type ProofPageProps = { readonly page: Page; readonly taken?: TakenBefore }
 
 /** A proof: one change, then the same look again. Before, changed and after stand under each other. */
-export function ProofPage({ page, taken: takenNow }: ProofPageProps) {
-  const takenBefore = useBeforeOfOffered(page)
-  const taken = takenNow ?? takenBefore
+export function ProofPage({ page, taken }: ProofPageProps) {
   const { judging } = page
   if (judging === null) return <ProofByLook page={page} {...(taken && { taken })} />
   return <ProofByValue page={page} judging={judging} {...(taken && { taken })} />
-}
-
-/** A proof that was recorded and stepped back from keeps what it took before its change: the metal has not been put back since. */
-function useBeforeOfOffered({ before, compares, offered }: Page): TakenBefore | undefined {
-  const { walk } = usePlayer()
-  if (before !== null || compares === null || offered === null) return undefined
-  const line = walk.trail.find(({ eventId }) => eventId === offered.eventId)
-  if (line?.kind !== 'finding' || line.before === null) return undefined
-  const { outcome, value, unit } = line.before
-  return { payload: { outcome, ...(value === null || unit === null ? {} : { value, unit }) } }
 }
 
 function ProofByValue({ page, judging, taken }: ProofPageProps & { readonly judging: NonNullable<Page['judging']> }) {
@@ -55,7 +43,7 @@ function ProofByValue({ page, judging, taken }: ProofPageProps & { readonly judg
     const value = measured.value === undefined || measured.unit === undefined ? '' : `${formatValue(measured.value, measured.unit, format)}, `
     if (!answer({ choice, judgedBy, measured, said: `${value}${choice.title}`, ...(taken && { before: taken.payload }) })) return
     entry.forget()
-    taken?.onRecorded?.()
+    taken?.onRecorded()
   }
   const act = useRecordAct(entry, page.outcomes, onRecord)
   const wordsOf = (choice: OutcomeChoice): string | undefined => toProofWords(page, choice)
@@ -123,7 +111,7 @@ function ProofByLook({ page, taken }: ProofPageProps) {
     }
     if (!answer({ choice, note: text, ...(taken && { before: taken.payload }) })) return
     setNote(null)
-    taken?.onRecorded?.()
+    taken?.onRecorded()
   }
   return (
     <Sheet
@@ -189,7 +177,7 @@ function ProofWhat({ page, taken, stage }: { readonly page: Page; readonly taken
         {before !== null && (
           <ProofRow lead="Before">
             <AnswerWords answer={before.answer} title={before.title} page={page} />
-            {taken?.onTakeAgain !== undefined && (
+            {taken !== undefined && (
               <button type="button" onClick={taken.onTakeAgain} className="min-h-14 px-2 text-small text-cord underline underline-offset-4">
                 Take it again
               </button>
