@@ -1,10 +1,24 @@
 import { screen, waitFor, within } from '@testing-library/react'
 import { expect, test } from 'vitest'
 
+import { searchSymptoms } from '#shared/api/charts.ts'
 import { createFirstOwner, getSession, listSessions, signIn, signOut } from '#shared/api/session.ts'
+import { listWalks } from '#shared/api/walks.ts'
 import { fakeApi, ok, problem } from '#tests/support/fake-api.ts'
 import { renderApp } from '#tests/support/render-app.tsx'
 import { buildSession, sessionEndpoint } from '#tests/support/session-builder.ts'
+
+/** The bench of a shop where nothing happened yet. */
+const emptyBench = [
+  { method: 'GET', path: /^\/api\/walks(\?.*)?$/, contract: listWalks, answer: () => ok({ walks: [], page: 1, hasMore: false }) },
+  { method: 'GET', path: /^\/api\/symptoms/, contract: searchSymptoms, answer: () => ok({ symptoms: [] }) },
+]
+
+/** Waits until the bench has asked for all that it shows, so that nothing is asked after the test. */
+async function atTheBench(): Promise<void> {
+  expect(await screen.findByRole('heading', { level: 1, name: 'Bench' })).toBeVisible()
+  expect(await screen.findByRole('searchbox', { name: 'What does it do?' })).toBeVisible()
+}
 
 const noSessions = { method: 'GET', path: '/api/sessions', contract: listSessions, answer: () => ok({ sessions: [] }) }
 
@@ -12,6 +26,7 @@ function shopWhere(holder: { session: ReturnType<typeof buildSession> }, passwor
   return fakeApi([
     sessionEndpoint(holder),
     noSessions,
+    ...emptyBench,
     {
       method: 'POST',
       path: '/api/session',
@@ -75,7 +90,8 @@ test('the demo shop offers its people, a press fills the form and the person sti
   expect(screen.getByRole('textbox', { name: 'E-mail' })).toHaveValue('mara@shop.example')
   expect(calls.filter(({ method }) => method === 'POST')).toEqual([])
   await user.click(screen.getByRole('button', { name: 'Sign in' }))
-  await waitFor(() => expect(calls.some(({ method }) => method === 'POST')).toBe(true))
+  await atTheBench()
+  expect(calls.some(({ method }) => method === 'POST')).toBe(true)
 })
 
 test('a real shop shows no demo people and no demo banner', async () => {
@@ -109,10 +125,11 @@ test('a session that ended meanwhile leads to the sign-in page and remembers the
 test('a junior who asks for the people page is led to the bench, and nothing of it is asked of the server', async () => {
   const { calls } = fakeApi([
     sessionEndpoint({ session: buildSession('junior') }),
-    { method: 'GET', path: /./, contract: listSessions, answer: () => problem(503, 'busy', 'Try again in a moment.') },
+    ...emptyBench,
   ])
   const { router } = renderApp('/people')
-  await waitFor(() => expect(router.state.location.pathname).toBe('/'))
+  await atTheBench()
+  expect(router.state.location.pathname).toBe('/')
   expect(calls.some(({ path }) => path === '/api/people')).toBe(false)
 })
 
