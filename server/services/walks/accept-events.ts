@@ -10,11 +10,10 @@ import { AppError } from '#server/lib/app-error.ts'
 import type { Deps } from '#server/lib/deps.ts'
 import { hashContent } from '#server/services/content-hash.ts'
 import type { CurrentSession } from '#server/services/sessions.ts'
-import { appendTogether } from './append-together.ts'
 import { judgeBatch, type HashedEvent, type Judged, type KnownEvent } from './judge-batch.ts'
-import { readVetoes } from './vetoes.ts'
+import { needsVetting, readVetoes } from './vetoes.ts'
 import { catchUp, nothingYet, recall, remember, toPinned, withPeopleOf, withPinnedBy, type WalkMemory } from './walk-memory.ts'
-import { lockWalk, writeAside, writeLog } from './write-walk.ts'
+import { lockWalk, toAddition, writeAdditions, writeAside, writeInCompany } from './write-walk.ts'
 
 const triesAtMost = 4
 
@@ -45,17 +44,37 @@ function maySee(by: CurrentSession, { people }: WalkMemory): boolean {
   return hasRole(by.person.role, 'lead') || people.has(by.person.id)
 }
 
-/** The usual case, judged on what is remembered and stored in one statement that holds only if the log is where it was. */
+/**
+ * The usual case: judged on what is remembered, or on nothing where a walk begins, and written only if the log is still where it was
+ * judged. Null when it has to be looked at more closely.
+ */
 async function tryAppend(deps: Deps, by: CurrentSession, walkId: WalkId, hashed: readonly HashedEvent[]): Promise<BatchResult | null> {
-  const memory = recall(deps, walkId)
-  if (memory === null || !maySee(by, memory)) return null
+  const events = hashed.map(({ event }) => event)
+  const memory = recall(deps, walkId) ?? (events[0]?.type === 'started' ? nothingYet : null)
+  if (memory === null || (memory.lastSeq > 0 && !maySee(by, memory))) return null
+  const versions = await withPinnedBy(deps, deps.db, memory.versions, events)
+  if (needsVetting(versions, events)) return null
   const judged = judgeBatch(
-    { charts: toPinned(memory.versions), state: memory.state, lastSeq: memory.lastSeq, actor: by.person, known: new Map(), vetoOf: () => null },
+    { charts: toPinned(versions), state: memory.state, lastSeq: memory.lastSeq, actor: by.person, known: new Map(), vetoOf: () => null },
     hashed,
   )
-  if (judged.appended.length !== hashed.length || !(await appendTogether(deps, walkId, memory, judged))) return null
-  remember(deps, walkId, { ...memory, lastSeq: judged.lastSeq, state: judged.state })
+  if (judged.appended.length !== hashed.length) return null
+  const after = remembering(memory, versions, judged)
+  if (!(await writeInCompany(deps.db, toAddition(deps, walkId, memory, after, judged)))) return null
+  remember(deps, walkId, after)
   return { results: [...judged.results], lastSeq: judged.lastSeq }
+}
+
+function remembering(memory: WalkMemory, versions: WalkMemory['versions'], { appended, state, lastSeq }: Judged): WalkMemory {
+  return {
+    lastSeq,
+    state,
+    versions,
+    people: withPeopleOf(
+      memory.people,
+      appended.map(({ event }) => event),
+    ),
+  }
 }
 
 /** Every case, with the walk's row locked; tried again when another batch with the same ids came between. */
@@ -66,7 +85,7 @@ async function appendJudged(deps: Deps, by: CurrentSession, walkId: WalkId, hash
       remember(deps, walkId, memory)
       return { results: [...judged.results], lastSeq: judged.lastSeq }
     } catch (error) {
-      if (tries >= triesAtMost || !(isUniqueViolation(error) || isWorthRetrying(error))) throw error
+      if (tries >= triesAtMost || !(error instanceof BegunMeanwhile || isUniqueViolation(error) || isWorthRetrying(error))) throw error
     }
   }
 }
@@ -96,15 +115,22 @@ async function judgeAndStore(
         tx,
         events.map(({ id }) => id),
       ),
-      vetoOf: await readVetoes(deps, tx, versions, events),
+      vetoOf: await readVetoes(tx, versions, events),
     },
     hashed,
   )
-  await writeLog(deps, tx, walkId, memory, judged, toPinned(versions))
+  const after = remembering(memory, versions, judged)
+  if (judged.appended.length > 0) {
+    const written = await writeAdditions(tx, [toAddition(deps, walkId, memory, after, judged)])
+    // The row is locked, so only a walk that somebody else began since can be in the way.
+    if (!written.has(walkId)) throw new BegunMeanwhile()
+  }
   await writeAside(deps, tx, walkId, judged.aside)
-  const added = judged.appended.map(({ event }) => event)
-  return { judged, memory: { lastSeq: judged.lastSeq, state: judged.state, versions, people: withPeopleOf(memory.people, added) } }
+  return { judged, memory: after }
 }
+
+/** Two batches began the same walk at the same moment, and the other one was first. */
+class BegunMeanwhile extends Error {}
 
 /** What is known of some ids, in this walk or any other. */
 async function readKnown(tx: Db, ids: readonly EventId[]): Promise<ReadonlyMap<EventId, KnownEvent>> {

@@ -13,25 +13,13 @@ import type { walks } from '#server/db/schema/walks.ts'
 /** What a walk's row says of where it stands: all of it derived from the log. */
 export type Standing = Pick<
   typeof walks.$inferInsert,
-  | 'machine'
-  | 'phase'
-  | 'isPaused'
-  | 'isOpen'
-  | 'standsAt'
-  | 'minutesUsed'
-  | 'causeId'
-  | 'causeTitle'
-  | 'hasQuestion'
-  | 'holderPersonId'
-  | 'holderDeviceId'
-  | 'lastSeq'
+  'phase' | 'isPaused' | 'isOpen' | 'standsAt' | 'minutesUsed' | 'causeId' | 'causeTitle' | 'hasQuestion' | 'holderPersonId' | 'holderDeviceId' | 'lastSeq'
 >
 
 /** Derives the row of a walk from what its log comes to. */
 export function toStanding(charts: PinnedCharts, walk: StartedWalk): Standing {
   const cause = provenCause(charts, walk)
   return {
-    machine: walk.machine,
     phase: walk.phase,
     isPaused: walk.isPaused,
     isOpen: isOpen(walk),
@@ -108,7 +96,7 @@ function nodeWords(charts: PinnedCharts, walk: StartedWalk): string {
   return `${[kindWords[kind], number].filter((word) => word !== '').join(' ')} · ${title}`
 }
 
-/** A machine in the words of a list; its maker and name where the shop keeps its spec sheet. */
-export function machineWords({ class: equipmentClass, engine }: Machine, model: { maker: string; name: string } | null): string {
-  return model === null ? `${equipmentClassWords[equipmentClass]}, ${engineKindWords[engine].toLowerCase()}` : `${model.maker} ${model.name}`
+/** A machine whose spec sheet the shop does not keep, in the words of a list. */
+export function machineWords({ class: equipmentClass, engine }: Machine): string {
+  return `${equipmentClassWords[equipmentClass]}, ${engineKindWords[engine].toLowerCase()}`
 }
