@@ -14,7 +14,7 @@ import { SkipLink } from '#src/components/layout/top-bar.tsx'
 import { Button } from '#src/components/ui/button.tsx'
 import { StateMark } from '#src/components/ui/state-mark.tsx'
 import type { PanelName } from '#src/features/walk-player/player-context.ts'
-import { usePlayer } from '#src/features/walk-player/player-context.ts'
+import { useIsHere, usePlayer } from '#src/features/walk-player/player-context.ts'
 import { toLineWords } from '#src/lib/walk-words.ts'
 import { toSavedWords } from '#src/features/walk-player/words.ts'
 import { formatMinutes } from '#src/lib/format.ts'
@@ -85,7 +85,8 @@ const backClass = 'flex min-h-14 items-center gap-2 pr-3 text-[1.125rem] font-me
 
 function BackButton({ panel }: { readonly panel: PanelName | null }) {
   const { closePanel, walk, charts, stepBack, tap } = usePlayer()
-  const line = isOpen(walk) && !walk.isPaused ? backTo(charts, walk) : null
+  const isHere = useIsHere()
+  const line = isHere && isOpen(walk) && !walk.isPaused ? backTo(charts, walk) : null
   const goBack = (): void => {
     if (panel !== null) closePanel()
     else if (line !== null) tap(() => stepBack(line, 'Stepped back.'))
@@ -171,7 +172,8 @@ function toLeftWords(page: WalkPage, left: ChecksLeft | null): string | null {
 /** What was just recorded, with its way back, until the next finding. */
 function Undo() {
   const { walk, charts, format, stepBack, tap } = usePlayer()
-  const line = isOpen(walk) && !walk.isPaused ? backTo(charts, walk) : null
+  const isHere = useIsHere()
+  const line = isHere && isOpen(walk) && !walk.isPaused ? backTo(charts, walk) : null
   const entry = line === null ? undefined : walk.trail.find(({ eventId }) => eventId === line)
   if (line === null || entry === undefined) return null
   const { node, found } = toLineWords({ charts, walk, format }, entry)
@@ -196,7 +198,7 @@ const footClass = 'flex min-h-14 items-center font-medium hover:underline hover:
 
 function Foot({ saved, onRetry, panel }: Pick<FrameProps, 'saved' | 'onRetry' | 'panel'>) {
   const { page, openPanel, noAnswer, walk } = usePlayer()
-  const isPlain = panel === null && isOpen(walk)
+  const isPlain = useIsHere() && panel === null
   const isPad = isPlain && hasPad(page)
   useShortcut(isPlain ? 'n' : null, 'Write a note', () => openPanel('note'))
   useShortcut(isPlain ? '?' : null, 'List of keys', () => openPanel('keys'))
@@ -218,9 +220,11 @@ function Foot({ saved, onRetry, panel }: Pick<FrameProps, 'saved' | 'onRetry' | 
               <button type="button" onClick={() => openPanel('note')} className={footClass}>
                 Note
               </button>
-              <button type="button" onClick={() => openPanel('ask')} className={footClass}>
-                Ask<span className="max-sm:for-ears">&nbsp;the lead</span>
-              </button>
+              {!walk.isPaused && (
+                <button type="button" onClick={() => openPanel('ask')} className={footClass}>
+                  Ask<span className="max-sm:for-ears">&nbsp;the lead</span>
+                </button>
+              )}
             </>
           )}
           {panel === null && (

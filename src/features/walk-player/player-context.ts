@@ -8,6 +8,8 @@ import type { WalkEvent } from '#shared/walk/events.ts'
 import type { WalkPage } from '#shared/walk/page.ts'
 import type { PinnedCharts } from '#shared/walk/pinned-charts.ts'
 import type { StartedWalk } from '#shared/walk/state.ts'
+import { isOpen } from '#shared/walk/state.ts'
+import { getDeviceId } from '#src/lib/device.ts'
 import type { EventDraft } from '#src/lib/walk-log.ts'
 
 /** Pages beside the walk's own: each takes the place of the check until it is closed. */
@@ -52,4 +54,10 @@ export function usePlayer(): Player {
   const player = use(PlayerContext)
   if (player === null) throw new Error('This part stands outside the walk player.')
   return player
+}
+
+/** Whether the walk is open and in hand on this device: elsewhere it is read, and nothing is recorded by accident. */
+export function useIsHere(): boolean {
+  const { walk, person } = usePlayer()
+  return isOpen(walk) && walk.holder.deviceId === getDeviceId() && walk.holder.personId === person.id
 }

@@ -38,11 +38,10 @@ import { AskPanel, FlagPanel, GiveUpPanel, NotePanel } from '#src/features/walk-
 import { Answered } from '#src/features/walk-player/parts/answered.tsx'
 import { SetAsideNotice } from '#src/features/walk-player/parts/set-aside-notice.tsx'
 import type { PanelName } from '#src/features/walk-player/player-context.ts'
-import { PlayerContext, usePlayer } from '#src/features/walk-player/player-context.ts'
+import { PlayerContext, useIsHere, usePlayer } from '#src/features/walk-player/player-context.ts'
 import { usePlayerState } from '#src/features/walk-player/use-player.ts'
 import { useWakeLock } from '#src/features/walk-player/wake-lock.ts'
 import { announce } from '#src/lib/announce.ts'
-import { getDeviceId } from '#src/lib/device.ts'
 
 type WalkPlayerProps = { readonly detail: WalkDetail; readonly person: SignedIn; readonly format: NumberFormat }
 
@@ -94,8 +93,8 @@ function useSavedAnnouncement(kind: 'saved' | 'sending' | 'waiting' | 'stuck'): 
 }
 
 function Page(): ReactNode {
-  const { page, walk, person } = usePlayer()
-  const isHere = walk.holder.deviceId === getDeviceId() && walk.holder.personId === person.id
+  const { page, walk } = usePlayer()
+  const isHere = useIsHere()
   return isOpen(walk) && !isHere ? <OtherHandsPage page={page} /> : <PageOf page={page} />
 }
 
