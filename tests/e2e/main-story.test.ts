@@ -1,4 +1,4 @@
-import { expect, test } from 'vitest'
+import { test } from 'vitest'
 
 import { bothHands } from '#tests/support/browser.ts'
 

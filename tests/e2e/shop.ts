@@ -1,5 +1,5 @@
 import type { BrowserContext } from 'playwright-core'
-import { afterAll, beforeAll, expect, inject } from 'vitest'
+import { afterAll, beforeAll, beforeEach, expect, inject } from 'vitest'
 
 import { demoSignIns } from '#server/services/demo-sign-ins.ts'
 import type { Role } from '#shared/trade/roles.ts'
@@ -29,6 +29,10 @@ export function shopOfFile(environment?: Readonly<Record<string, string>>): Shop
   }
   beforeAll(async () => {
     shop = await ShopProcess.open(environment === undefined ? { prepared: inject('preparedShop') } : { environment })
+  })
+  beforeEach(async () => {
+    // A test that failed while the server was lost leaves it lost.
+    if (!running().isRunning) await running().start()
   })
   afterAll(async () => {
     const faults = running().listFaults()

@@ -92,7 +92,7 @@ export class Technician {
 
   /** The page's heading after a load: the browser itself starts at the top, so the focus stays where it puts it. */
   async findsAgain(heading: string | RegExp): Promise<void> {
-    await this.page.getByRole('heading', { level: 1, name: heading }).waitFor()
+    await this.page.getByRole('heading', { level: 1, name: toHeading(heading) }).waitFor()
   }
 
   // The bench
@@ -145,7 +145,7 @@ export class Technician {
 
   /** The page whose heading this is: the focus stands on it, and the tab says another name than before. */
   async sees(heading: string | RegExp): Promise<void> {
-    await this.page.getByRole('heading', { level: 1, name: heading }).and(this.page.locator(':focus')).waitFor()
+    await this.page.getByRole('heading', { level: 1, name: toHeading(heading) }).and(this.page.locator(':focus')).waitFor()
     const title = await this.page.title()
     expect(title, 'the name of the tab changes with the page').not.toBe(this.#lastTitle)
     this.#lastTitle = title
@@ -166,7 +166,7 @@ export class Technician {
   /** The page whose heading this is, with the cautions before it read if any stand there: for stories that are about something else. */
   async comesTo(heading: string | RegExp): Promise<void> {
     const caution = this.page.getByRole('heading', { level: 1, name: /read before you go on/ })
-    await caution.or(this.page.getByRole('heading', { level: 1, name: heading })).and(this.page.locator(':focus')).waitFor()
+    await caution.or(this.page.getByRole('heading', { level: 1, name: toHeading(heading) })).and(this.page.locator(':focus')).waitFor()
     if (await caution.isVisible()) await this.acknowledge()
     await this.sees(heading)
   }
@@ -291,6 +291,10 @@ export class Technician {
 
 async function isBox(target: Locator): Promise<boolean> {
   return target.evaluate((element) => element instanceof HTMLInputElement && ['checkbox', 'radio'].includes(element.type))
+}
+
+function toHeading(heading: string | RegExp): RegExp {
+  return typeof heading === 'string' ? toPattern(heading, '^') : heading
 }
 
 /** Words as they stand on the screen, with either apostrophe. */

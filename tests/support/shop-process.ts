@@ -43,6 +43,10 @@ export class ShopProcess {
     return this.#running?.words ?? ''
   }
 
+  get isRunning(): boolean {
+    return this.#running !== null
+  }
+
   /** Starts the server, after the first time on the port that it had; resolves once it says that it is ready. */
   async start(): Promise<void> {
     const { PATH = '', HOME = '' } = process.env
