@@ -52,7 +52,7 @@ function usePanel(): { panel: PanelName | null; openPanel: (name: PanelName) => 
 
 /** Seconds since the page with this key appeared. */
 function usePageSeconds(pageKey: string): () => number {
-  const shownAt = useRef(performance.now())
+  const shownAt = useRef(0)
   useEffect(() => {
     shownAt.current = performance.now()
   }, [pageKey])

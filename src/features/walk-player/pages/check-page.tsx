@@ -25,11 +25,10 @@ export function CheckPage({ page }: { readonly page: Page }) {
       answers={
         <AnswerList
           question={node.title}
-          answers={page.outcomes.map((choice) =>
-            toOfferedAnswer(choice, offered, toOutcomeWords(choice), () =>
-              answer({ choice, reuses: offered?.answer.outcome === choice.outcome ? offered : null }),
-            ),
-          )}
+          answers={page.outcomes.map((choice) => ({
+            ...toOfferedAnswer(choice, offered, toOutcomeWords(choice)),
+            onPress: () => answer({ choice, reuses: offered?.answer.outcome === choice.outcome ? offered : null }),
+          }))}
           noAnswer={page.noAnswer}
           onNoAnswer={skip}
         />

@@ -135,7 +135,7 @@ function ProofByLook({ page, taken }: ProofPageProps) {
       answers={
         <AnswerList
           question={page.node.title}
-          answers={page.outcomes.map((choice) => toOfferedAnswer(choice, page.offered, toProofWords(page, choice), () => press(choice)))}
+          answers={page.outcomes.map((choice) => ({ ...toOfferedAnswer(choice, page.offered, toProofWords(page, choice)), onPress: () => press(choice) }))}
           noAnswer={page.noAnswer}
           onNoAnswer={skip}
         />

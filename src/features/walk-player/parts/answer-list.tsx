@@ -126,8 +126,8 @@ export function toOutcomeWords(choice: OutcomeChoice): string | undefined {
   return undefined
 }
 
-/** An outcome as a button; the one that was answered before says so, and one tap keeps it. */
-export function toOfferedAnswer(choice: OutcomeChoice, offered: OfferedAnswer | null, words: string | undefined, onPress: () => void): Answer {
+/** What the button of an outcome says; the one that was answered before says so, and one tap keeps it. */
+export function toOfferedAnswer(choice: OutcomeChoice, offered: OfferedAnswer | null, words: string | undefined): Omit<Answer, 'onPress'> {
   const isOffered = offered?.answer.outcome === choice.outcome
   const said = isOffered ? toOfferedWords(offered) : words
   return {
@@ -135,7 +135,6 @@ export function toOfferedAnswer(choice: OutcomeChoice, offered: OfferedAnswer | 
     numeral: choice.balloon,
     title: choice.title,
     look: isOffered ? 'leading' : 'plain',
-    onPress,
     ...(said === undefined ? {} : { words: said }),
   }
 }
