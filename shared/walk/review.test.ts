@@ -74,6 +74,33 @@ describe('the story of a walk', () => {
     expect(whole[8]?.cause?.title).toBe('Filter packed')
   })
 
+  test('holds the value of a proof against the one found before the change, in the same unit', () => {
+    expect(whole[7]?.reading).toEqual({ before: 9850, values: [12_400], unit: '1/min' })
+  })
+
+  test('says how the walk ended, what led to the cause and what joined the service list', () => {
+    const lines = told(
+      started(),
+      tap('yes'),
+      revs(9850),
+      tap('dark'),
+      revs(12_400),
+      proven,
+      act('contributing-set', { causeIds: ['never-cleaned'] } as never),
+      act('service-changed', { added: ['clean-filter'], dropped: [] } as never),
+      act('service-changed', { added: [], dropped: ['clean-filter'] } as never),
+      repaired,
+      runPassed,
+      closedAs('repaired'),
+    )
+    expect(lines.flatMap(({ type, text }) => (type === 'contributing-set' || type === 'service-changed' ? [text] : []))).toEqual([
+      'Never cleaned',
+      'Clean the air filter',
+      'Clean the air filter: left out',
+    ])
+    expect(lines.at(-1)?.result).toBe('repaired')
+  })
+
   test('keeps every word that was written', () => {
     const lines = told(
       started(),

@@ -1,14 +1,16 @@
 import { isDecision } from '#shared/chart/graph.ts'
 import type { DecisionNode, Outcome } from '#shared/chart/document.ts'
-import type { EventId, OutcomeId, PersonId, PhotoId, Place } from '#shared/lib/ids.ts'
+import type { EventId, OutcomeId, PersonId, PhotoId, Place, ServiceItemId } from '#shared/lib/ids.ts'
+import { convertValue } from '#shared/units/convert.ts'
 import type { Unit } from '#shared/units/quantities.ts'
 import { evolve } from './evolve.ts'
-import type { WalkEvent, WalkEventType } from './events.ts'
+import type { EventOf, WalkEvent, WalkEventType } from './events.ts'
+import { comparedWith, findingOf, locateDecision } from './findings.ts'
 import type { CauseWords, NodeName } from './page.ts'
 import { accessOnStack, chartsOf, locate, type PinnedCharts } from './pinned-charts.ts'
 import { arrive, goOn } from './route.ts'
-import { newWalk, type SkipLine, type SpentWhy, type StartedWalk, type TrailEntry, type WalkRecord, type WalkState } from './state.ts'
-import { causeWords, nameAt } from './words.ts'
+import { newWalk, type SkipLine, type SpentWhy, type StartedWalk, type TrailEntry, type WalkRecord, type WalkResult, type WalkState } from './state.ts'
+import { causeWords, nameAt, serviceItemOf } from './words.ts'
 
 /** What a finding says of the machine. `off` points on to a suspect; an outcome that says nothing of the kind has none. */
 export type Judgement = 'good' | 'serviceable' | 'off' | 'reproduced' | 'proven' | 'not-proven' | 'no-answer'
@@ -28,6 +30,8 @@ export interface ReviewLine {
   /** Why a check got no answer. */
   readonly noAnswer: SkipLine['why'] | null
   readonly cause: CauseWords | null
+  /** How the walk ended, at the line that closes it. */
+  readonly result: WalkResult | null
   /** What was written: a note, a question, a reason, the titles of what was opened. */
   readonly text: string | null
   readonly photoIds: readonly PhotoId[]
@@ -77,7 +81,7 @@ export function toReview(charts: PinnedCharts, events: readonly WalkEvent[]): re
   }))
 }
 
-type Told = Pick<ReviewLine, 'node' | 'outcome' | 'reading' | 'judgement' | 'noAnswer' | 'cause' | 'text' | 'photoIds'>
+type Told = Pick<ReviewLine, 'node' | 'outcome' | 'reading' | 'judgement' | 'noAnswer' | 'cause' | 'result' | 'text' | 'photoIds'>
 
 /** What an event tells by itself, at the walk as it stood before. */
 function toldBy(charts: PinnedCharts, walk: StartedWalk, event: WalkEvent): Told {
@@ -87,9 +91,10 @@ function toldBy(charts: PinnedCharts, walk: StartedWalk, event: WalkEvent): Told
   return {
     node: nameAt(charts, walk, place),
     ...outcomeTold(charts, walk, place, outcome),
-    reading: readingTold(event),
+    reading: readingTold(charts, walk, event),
     ...(event.type === 'check-skipped' ? { judgement: 'no-answer' as const, noAnswer: event.payload.why } : { noAnswer: null }),
     cause: 'causeId' in payload && payload.causeId !== undefined ? causeWords(charts, walk, payload.causeId) : null,
+    result: event.type === 'closed' ? event.payload.result : null,
     text: textOf(charts, walk, event),
     photoIds: photosOf(event),
   }
@@ -103,11 +108,20 @@ function outcomeTold(charts: PinnedCharts, walk: WalkRecord, place: Place, id: O
   return { outcome: { title: outcome.title, balloon: order < 9 ? order + 1 : null }, judgement: judgementOf(node, outcome) }
 }
 
-function readingTold({ payload }: WalkEvent): ReviewLine['reading'] {
+function readingTold(charts: PinnedCharts, walk: WalkRecord, event: WalkEvent): ReviewLine['reading'] {
+  const { payload } = event
   if (!('unit' in payload) || payload.unit === undefined || payload.value === undefined) return null
-  const before = 'before' in payload ? (payload.before?.value ?? null) : null
   const values = 'values' in payload && payload.values !== undefined ? payload.values : [payload.value]
-  return { before, values, unit: payload.unit }
+  return { before: event.type === 'finding-recorded' ? valueBefore(charts, walk, event.payload, payload.unit) : null, values, unit: payload.unit }
+}
+
+/** What a proof's value is held against, in its unit: taken on the proof's own page, or found earlier on the walk. */
+function valueBefore(charts: PinnedCharts, walk: WalkRecord, { node, before }: EventOf<'finding-recorded'>['payload'], unit: Unit): number | null {
+  const proof = locateDecision(charts, walk, node)
+  const compared = proof && comparedWith(proof)
+  if (!compared) return null
+  const { value, unit: taken } = before ?? findingOf(charts, walk, compared)?.answer ?? {}
+  return value == null || taken == null ? null : convertValue(value, taken, unit)
 }
 
 function textOf(charts: PinnedCharts, walk: WalkRecord, event: WalkEvent): string | null {
@@ -123,6 +137,12 @@ function textOf(charts: PinnedCharts, walk: WalkRecord, event: WalkEvent): strin
       return event.payload.sight?.note ?? null
     case 'check-noted':
       return `${event.payload.title}: ${event.payload.found}`
+    case 'contributing-set':
+      return titlesOf(event.payload.causeIds, (id) => causeWords(charts, walk, id).title)
+    case 'service-changed': {
+      const title = (id: ServiceItemId) => serviceItemOf(charts, walk, id)?.title ?? id
+      return [titlesOf(event.payload.added, title), titlesOf(event.payload.dropped, (id) => `${title(id)}: left out`)].filter(Boolean).join(', ')
+    }
     case 'cause-noted':
       return event.payload.title ?? event.payload.note ?? null
     case 'escalated':
@@ -132,6 +152,11 @@ function textOf(charts: PinnedCharts, walk: WalkRecord, event: WalkEvent): strin
     default:
       return writtenIn(event.payload)
   }
+}
+
+/** Titles in one line; `null` when there are none. */
+function titlesOf<Id>(ids: readonly Id[], title: (id: Id) => string): string | null {
+  return ids.length === 0 ? null : ids.map(title).join(', ')
 }
 
 /** The words that a person wrote, under whichever name their event keeps them. */

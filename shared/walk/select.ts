@@ -35,7 +35,7 @@ import { inOrder, pageNodes, pageNodesAt, type PageNodes } from './page-nodes.ts
 import { accessOnStack, chartsOf, locate, type Located, type PinnedCharts } from './pinned-charts.ts'
 import { outcomeIfSkipped } from './route.ts'
 import { isOpen, liveTrail, type OpenWalk, type ProvenCause, type StartedWalk, type WalkRecord, type WalkState } from './state.ts'
-import { causeWords, enteringWords, nameAt, nameOf, outcomeChoices, outcomeTitle, provenWords, wordsOf } from './words.ts'
+import { causeWords, enteringWords, nameAt, nameOf, outcomeChoices, outcomeTitle, provenWords, serviceItemOf, wordsOf } from './words.ts'
 
 /** A walk in one of its phases. */
 type In<Phase extends StartedWalk['phase']> = Extract<StartedWalk, { phase: Phase }>
@@ -249,10 +249,6 @@ function contributingChoices(charts: PinnedCharts, walk: WalkRecord): readonly C
     const cause = causeOf(charts, walk, causeId)
     return { causeId, title: cause?.title ?? causeId, advice: cause?.advice ?? null, isSet: walk.contributing.includes(causeId) }
   })
-}
-
-function serviceItemOf(charts: PinnedCharts, walk: WalkRecord, id: WalkRecord['serviceList'][number]) {
-  return chartsOf(charts, walk.pins).flatMap((index) => index.serviceItems.get(id) ?? [])[0]
 }
 
 /** The service list in words, in the order in which its items came up. */

@@ -1,11 +1,11 @@
-import type { Cause, ChartNode, DecisionNode } from '#shared/chart/document.ts'
+import type { Cause, ChartNode, DecisionNode, ServiceItem } from '#shared/chart/document.ts'
 import { chartNumbers, isDecision, type ChartIndex } from '#shared/chart/graph.ts'
-import { splitPlace, type CauseId, type ChartId, type NodeId, type OutcomeId, type Place } from '#shared/lib/ids.ts'
+import { splitPlace, type CauseId, type ChartId, type NodeId, type OutcomeId, type Place, type ServiceItemId } from '#shared/lib/ids.ts'
 import { causeOf } from './endings.ts'
 import { bandedOutcomes } from './judging.ts'
 import type { Worked } from './metal.ts'
 import type { AccessOpening, CauseWords, Entering, NodeName, NodeWords, OutcomeChoice } from './page.ts'
-import { accessOnStack, chartOf, locate, placeOf, type Located, type PinnedCharts } from './pinned-charts.ts'
+import { accessOnStack, chartOf, chartsOf, locate, placeOf, type Located, type PinnedCharts } from './pinned-charts.ts'
 import type { ProvenCause, WalkRecord } from './state.ts'
 
 /** Numbers of a chart that were worked out before; an index never changes. */
@@ -77,6 +77,11 @@ export function wordsOf(charts: PinnedCharts, walk: WalkRecord, located: Located
     timer: node.timer ?? null,
     minutes: node.minutes ?? 0,
   }
+}
+
+/** An item of the service list, by the first of the walk's charts that has it. */
+export function serviceItemOf(charts: PinnedCharts, walk: WalkRecord, id: ServiceItemId): ServiceItem | undefined {
+  return chartsOf(charts, walk.pins).flatMap((index) => index.serviceItems.get(id) ?? [])[0]
 }
 
 /** A cause in words; one that no chart defines is called by its id. */

@@ -89,8 +89,10 @@ test.each(bothHands)('a server that is lost in the middle of a walk holds nobody
 test('whoever opens a page while the server is lost reads what happened and what is safe', async () => {
   const ivy = await shop.seat('junior', thumb)
   ivy.device.allow(/ERR_CONNECTION_REFUSED|ERR_CONNECTION_RESET|ERR_EMPTY_RESPONSE/)
+  const start = ivy.page.getByRole('link', { name: 'Hard to start' })
+  await start.waitFor()
   await shop.process().kill()
-  await ivy.page.getByRole('link', { name: 'Hard to start' }).tap()
+  await start.tap()
   await ivy.seesWords('The server does not answer')
   await shop.process().start()
   await ivy.comesToTheBench()

@@ -26,7 +26,8 @@ export async function inspect({ page }: Technician, screen: string, { isBench = 
       await page.emulateMedia({ colorScheme })
       note(`${size}, ${colorScheme}`, await listAxeFindings(page, colorScheme === fullTheme ? undefined : ['color-contrast']))
     }
-    note(size, await listSmallTargets(page, isBench ? leastBenchTarget : leastTarget))
+    note(size, await listSmallTargets(page, leastTarget))
+    if (isBench) note(`${size}, bench`, await listSmallTargets(page, leastBenchTarget, '[data-mode="bench"]'))
   }
   await page.emulateMedia({ colorScheme: 'light' })
   await page.setViewportSize({ width: narrowWidth, height: phone.height })

@@ -68,7 +68,7 @@ test.each(bothHands)('a junior walks a saw without full speed to a dragging brak
     ['Note', /Band seat packed with chips, a stripe as wide as the band/],
   ] as const) {
     const line = log.getByRole('listitem').filter({ hasText: what }).first()
-    for (const words of found) await line.getByText(words).first().waitFor()
+    for (const words of found) await line.getByText(words).filter({ visible: true }).first().waitFor()
   }
   await tobias.seesWords('Brake band drags')
   await tobias.seesWords(/^54.min$/)

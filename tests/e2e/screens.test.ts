@@ -215,7 +215,7 @@ test('the review, the lists of walks and the charts are clean in both sizes and 
   await who.comesToTheBench()
   await who.page.getByRole('heading', { name: 'Questions to the lead' }).waitFor()
   await see('bench of the lead')
-  await who.press(who.page.getByRole('link', { name: /^Answer/ }))
+  await who.press(who.page.getByRole('link', { name: /^Answer/ }).first())
   await who.page.getByRole('list', { name: 'Log of the walk' }).waitFor()
   await see('review')
   await who.page.goto('/walks')

@@ -113,9 +113,9 @@ export class Technician {
     await this.page.waitForURL(/\/walks\//)
   }
 
-  /** From the bench back into the open walk whose row says this. */
+  /** From the bench back into the open walk whose row says this: the one last touched, where several do. */
   async goesOnWith(words: string): Promise<void> {
-    const row = this.page.getByRole('listitem').filter({ hasText: words })
+    const row = this.page.getByRole('listitem').filter({ hasText: words }).first()
     await this.press(row.getByRole('link', { name: /^Go on/ }))
   }
 

@@ -132,18 +132,22 @@ export async function listAxeFindings(page: Page, only?: readonly string[]): Pro
   return violations.flatMap(({ id, help, nodes }) => nodes.map(({ target, failureSummary }) => `${id} (${help}): ${target.join(' ')}: ${failureSummary ?? ''}`))
 }
 
-/** Controls that are narrower or lower than they may be, and how large they are. A link inside a sentence is as high as its line. */
-export async function listSmallTargets(page: Page, least: number): Promise<readonly string[]> {
-  return page.evaluate((leastSize) => {
-    const isShown = (element: Element): boolean => element.checkVisibility({ checkOpacity: true, checkVisibilityCSS: true }) && element.getBoundingClientRect().width > 1
+/**
+ * Controls in what `within` selects that are narrower or lower than they may be, and how large they are. A link inside a sentence is as high as
+ * its line, and one that shows only with the focus on it has no size before.
+ */
+export async function listSmallTargets(page: Page, least: number, within = 'body'): Promise<readonly string[]> {
+  return page.evaluate(([leastSize, root]) => {
+    const isShown = (element: Element): boolean => element.checkVisibility({ checkOpacity: true, checkVisibilityCSS: true }) && element.getBoundingClientRect().width > 1 && getComputedStyle(element).clipPath === 'none'
     const targetOf = (element: Element): Element => (element instanceof HTMLInputElement && ['checkbox', 'radio'].includes(element.type) ? (element.closest('label') ?? element) : element)
     const isInSentence = (element: Element): boolean => element instanceof HTMLAnchorElement && getComputedStyle(element).display === 'inline'
-    return [...document.querySelectorAll('a[href], button, input:not([type=hidden]), select, textarea, summary')]
+    return [...document.querySelectorAll(root)]
+      .flatMap((part) => [...part.querySelectorAll('a[href], button, input:not([type=hidden]), select, textarea, summary')])
       .filter((element) => isShown(element) && !isInSentence(element))
       .map((element) => ({ element, box: targetOf(element).getBoundingClientRect() }))
       .filter(({ box }) => box.width < leastSize - 0.5 || box.height < leastSize - 0.5)
       .map(({ element, box }) => `${element.tagName.toLowerCase()} "${(element.getAttribute('aria-label') ?? element.textContent ?? '').trim().slice(0, 40)}" ${Math.round(box.width)} x ${Math.round(box.height)}`)
-  }, least)
+  }, [least, within] as const)
 }
 
 /** Whether the page can be pushed sideways, and by what. */

@@ -50,7 +50,7 @@ export function Frame({ saved, onRetry, panel, notices, children }: FrameProps) 
       <div ref={sheet} className="flex min-h-0 grow flex-col overflow-x-hidden [@media(min-height:520px)]:overflow-y-auto">
         {isDemo && (
           <div className="order-last md:order-none">
-            <DemoBanner />
+            <DemoBanner isAtCheck />
           </div>
         )}
         <header>
@@ -194,7 +194,7 @@ function Undo() {
   )
 }
 
-const footClass = 'flex min-h-14 items-center font-medium hover:underline hover:underline-offset-4 aria-expanded:underline aria-expanded:underline-offset-4'
+const footClass = 'flex min-h-14 min-w-14 items-center font-medium hover:underline hover:underline-offset-4 aria-expanded:underline aria-expanded:underline-offset-4'
 
 function Foot({ saved, onRetry, panel }: Pick<FrameProps, 'saved' | 'onRetry' | 'panel'>) {
   const { page, openPanel, noAnswer, walk } = usePlayer()
@@ -207,8 +207,8 @@ function Foot({ saved, onRetry, panel }: Pick<FrameProps, 'saved' | 'onRetry' | 
   return (
     <footer className="border-t border-rule bg-card [--mark-ground:var(--card)]">
       {isLost && <LostBar saved={saved} onRetry={onRetry} />}
-      <div className="corded flex min-h-14 flex-wrap items-center justify-between gap-x-4">
-        <nav aria-label="Beside the check" className="flex flex-wrap gap-x-4 text-[1rem] sm:gap-x-8 sm:text-[1.125rem]">
+      <div className="corded flex min-h-14 flex-wrap items-center justify-between gap-x-2">
+        <nav aria-label="Beside the check" className="flex flex-wrap text-[1rem] sm:gap-x-8 sm:text-[1.125rem]">
           {isPlain && page.kind === 'caution' && <Unsafe />}
           {isPad && (
             <button type="button" aria-expanded={noAnswer.isOpen} onClick={noAnswer.toggle} className={footClass}>

@@ -5,7 +5,7 @@ import type { WalkEventType } from '#shared/walk/events.ts'
 import type { ReviewLine } from '#shared/walk/review.ts'
 import type { KnotKind, KnotLook } from '#src/components/knots/knot.tsx'
 import type { MarkState } from '#src/components/ui/state-mark.tsx'
-import { skipWords } from '#src/lib/walk-words.ts'
+import { resultWords, skipWords } from '#src/lib/walk-words.ts'
 
 /** Lines that are kept out of the short log: read by who wants every tap. */
 const minorTypes: ReadonlySet<WalkEventType> = new Set<WalkEventType>([
@@ -22,7 +22,8 @@ export function isMinor({ type }: ReviewLine): boolean {
 }
 
 /** What was found, in the words of the log: the value with its unit, a proof's before and after, the outcome with its balloon. */
-export function toFound({ reading, outcome, noAnswer, type, cause }: ReviewLine, format: NumberFormat): string | null {
+export function toFound({ reading, outcome, noAnswer, type, cause, result }: ReviewLine, format: NumberFormat): string | null {
+  if (result !== null) return resultWords[result]
   if (noAnswer !== null) return `0 · ${skipWords[noAnswer]}`
   const value = reading?.values.at(-1)
   if (reading !== null && value !== undefined) {
