@@ -95,8 +95,8 @@ describe('the story of a walk', () => {
     )
     expect(lines.flatMap(({ type, text }) => (type === 'contributing-set' || type === 'service-changed' ? [text] : []))).toEqual([
       'Never cleaned',
-      'Clean the air filter',
-      'Clean the air filter: left out',
+      'Clean the filter',
+      'Clean the filter: left out',
     ])
     expect(lines.at(-1)?.result).toBe('repaired')
   })
