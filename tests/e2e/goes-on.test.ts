@@ -93,7 +93,7 @@ test('whoever opens a page while the server is lost reads what happened and what
   await start.waitFor()
   await shop.process().kill()
   await start.tap()
-  await ivy.seesWords('The server does not answer')
+  await ivy.seesWords(/The server does not answer/)
   await shop.process().start()
   await ivy.comesToTheBench()
   await ivy.leaves()

@@ -86,7 +86,7 @@ test('the pages of the walk player from the cautions to the closed walk are clea
   await who.seesWords('No answer: why?')
   await seePlayer('no answer')
   await who.answer('Back to the answers')
-  await who.check('What does it do when you open it up?', 'Steady, below full')
+  await who.answer('Steady, below full')
   await who.comesTo('What full speed does it reach without load?')
   await seePlayer('reading')
   await who.readValue('9850')

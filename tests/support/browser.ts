@@ -122,11 +122,11 @@ const wcagTags = ['wcag2a', 'wcag2aa', 'wcag21a', 'wcag21aa', 'wcag22aa']
 
 /** What axe finds on the page as it stands, in words that name the rule and the element; `only` runs some rules alone. */
 export async function listAxeFindings(page: Page, only?: readonly string[]): Promise<readonly string[]> {
-  const builder = new AxeBuilder({ page })
+  const builder = new AxeBuilder({ page }).setLegacyMode()
   const axe =
     only === undefined
       ? // target-size is off by default even with its tag; the rules on headings and landmarks carry no WCAG tag.
-        builder.options({ runOnly: { type: 'tag', values: [...wcagTags, 'best-practice'] }, rules: { 'target-size': { enabled: true } } })
+        builder.options({ runOnly: { type: 'tag', values: [...wcagTags, 'best-practice'] }, resultTypes: ['violations'], rules: { 'target-size': { enabled: true } } })
       : builder.withRules([...only])
   const { violations } = await axe.analyze()
   return violations.flatMap(({ id, help, nodes }) => nodes.map(({ target, failureSummary }) => `${id} (${help}): ${target.join(' ')}: ${failureSummary ?? ''}`))

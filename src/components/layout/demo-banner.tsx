@@ -13,9 +13,9 @@ export function DemoBanner({ isAtCheck = false }: DemoBannerProps) {
   const [isOpen, setOpen] = useState(false)
   return (
     <aside aria-label="Demo shop" data-screen-only className="corded border-b border-hair bg-well text-small [--mark-ground:var(--well)]">
-      <p className="flex min-h-8 flex-wrap items-center gap-x-2">
+      <p className="flex min-h-8 items-center gap-x-2">
         <StateShape state="info" className="size-3.5 text-info" />
-        <span>{isAtCheck ? 'Demo shop: start your own from the bench page' : 'Demo shop:'}</span>
+        <span>{isAtCheck ? 'Demo shop: start your own from the bench' : 'Demo shop:'}</span>
         {!isAtCheck && (
           <button
             type="button"

@@ -41,7 +41,9 @@ function Drawing({ chart, format }: { readonly chart: ChartVersion; readonly for
     <div className="pt-3 pb-6">
       <div data-screen-only className="flex flex-wrap items-center justify-between gap-x-6 gap-y-2 pb-3">
         <p className="flex flex-wrap items-baseline gap-x-4 text-small text-ink-2">
-          <TextLink to={paths.charts()}>All charts</TextLink>
+          <TextLink to={paths.charts()} className="py-1">
+            All charts
+          </TextLink>
           <span>
             Version {chart.version}, {formatDay(chart.publishedAt)}, {chart.publishedBy}: {chart.changeNote}
           </span>

@@ -6,6 +6,7 @@ import { Button } from '#src/components/ui/button.tsx'
 import { Notice } from '#src/components/ui/notice.tsx'
 import { usePlayer } from '#src/features/walk-player/player-context.ts'
 import { useScratch } from '#src/features/walk-player/scratch.ts'
+import { focusHeading } from '#src/lib/focus-heading.ts'
 
 /** The lead's latest answer, on the page until it was read there. */
 export function Answered() {
@@ -20,7 +21,13 @@ export function Answered() {
       <p className="text-small text-ink-2">{question.text}</p>
       <p className="whitespace-pre-wrap">{answer.text}</p>
       {answer.goTo !== null && <p className="text-small">Go on at: {nameAt(charts, walk, answer.goTo).title}</p>}
-      <Button className="mt-2" onClick={() => setReadId(answer.eventId)}>
+      <Button
+        className="mt-2"
+        onClick={() => {
+          focusHeading()
+          setReadId(answer.eventId)
+        }}
+      >
         Understood
       </Button>
     </Notice>

@@ -5,6 +5,7 @@ import { Notice } from '#src/components/ui/notice.tsx'
 import { usePlayer } from '#src/features/walk-player/player-context.ts'
 import { toCount } from '#src/features/walk-player/words.ts'
 import { toEventWords } from '#src/lib/walk-words.ts'
+import { focusHeading } from '#src/lib/focus-heading.ts'
 import { formatClock } from '#src/lib/format.ts'
 import type { SetAside } from '#src/lib/walk-log.ts'
 
@@ -21,7 +22,14 @@ export function SetAsideNotice({ setAside, onRead }: { readonly setAside: readon
           </li>
         ))}
       </ul>
-      <Button onClick={onRead}>Understood</Button>
+      <Button
+        onClick={() => {
+          focusHeading()
+          onRead()
+        }}
+      >
+        Understood
+      </Button>
     </Notice>
   )
 }
