@@ -40,7 +40,8 @@ export default defineConfig({
           globalSetup: ['tests/support/browser-setup.ts'],
           testTimeout: 180_000,
           hookTimeout: 180_000,
-          fileParallelism: false,
+          // A journey waits more than it works: two side by side, each with a server and devices of its own.
+          maxWorkers: 2,
         },
       },
     ],

@@ -1,7 +1,7 @@
 import * as api from '#shared/api/people.ts'
 import { done, endpoint } from '#server/http/endpoint.ts'
 import { acceptLink, readLink } from '#server/services/links.ts'
-import { addPerson, createLink, listPeople, updatePerson } from '#server/services/people.ts'
+import { addPerson, createLink, listActivePeople, listPeople, updatePerson } from '#server/services/people.ts'
 
 export const peopleEndpoints = [
   endpoint({
@@ -12,6 +12,16 @@ export const peopleEndpoints = [
     role: 'owner',
     contract: api.listPeople,
     run: async (deps) => ({ people: await listPeople(deps) }),
+  }),
+  // Before the addresses with an id in them, which would take the word for one.
+  endpoint({
+    name: 'listActivePeople',
+    summary: 'Who can sign in now: name and role alone',
+    method: 'get',
+    path: '/api/people/active',
+    role: 'junior',
+    contract: api.listActivePeople,
+    run: async (deps) => ({ people: await listActivePeople(deps) }),
   }),
   endpoint({
     name: 'addPerson',

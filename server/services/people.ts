@@ -1,5 +1,5 @@
-import { and, asc, eq, gt, ne, sql } from 'drizzle-orm'
-import type { Person } from '#shared/api/people.ts'
+import { and, asc, eq, gt, isNotNull, ne, sql } from 'drizzle-orm'
+import type { Colleague, Person } from '#shared/api/people.ts'
 import type { SignedIn } from '#shared/api/session.ts'
 import type { PersonId } from '#shared/lib/ids.ts'
 import type { Role } from '#shared/trade/roles.ts'
@@ -31,10 +31,22 @@ function selectPeople(db: Db, deps: Deps) {
   return db.select({ person: people, linkExpiresAt: oneTimeLinks.expiresAt }).from(people).leftJoin(oneTimeLinks, alive)
 }
 
+const byName = [asc(sql`lower(${people.name})`), asc(people.id)]
+
 /** Everybody of the shop, the deactivated included. */
 export async function listPeople(deps: Deps): Promise<Person[]> {
-  const rows = await selectPeople(deps.db, deps).orderBy(asc(sql`lower(${people.name})`), asc(people.id))
+  const rows = await selectPeople(deps.db, deps).orderBy(...byName)
   return rows.map(({ person, linkExpiresAt }) => toPerson(person, linkExpiresAt))
+}
+
+/** Everybody who can sign in now, with nothing of theirs but name and role. */
+export async function listActivePeople(deps: Deps): Promise<Colleague[]> {
+  const canSignIn = and(eq(people.isActive, true), isNotNull(people.passwordHash))
+  return deps.db
+    .select({ id: people.id, name: people.name, role: people.role })
+    .from(people)
+    .where(canSignIn)
+    .orderBy(...byName)
 }
 
 async function getPerson(db: Db, deps: Deps, id: PersonId): Promise<{ row: PersonRow; person: Person }> {

@@ -17,6 +17,11 @@ export const personSchema = z.strictObject({
 /** A person of the shop as the owner sees them. */
 export type Person = z.infer<typeof personSchema>
 
+/** A person of the shop as everybody in it sees them. */
+export const colleagueSchema = z.strictObject({ id: personIdSchema, name: z.string(), role: z.enum(roles) })
+/** A person of the shop as everybody in it sees them. */
+export type Colleague = z.infer<typeof colleagueSchema>
+
 /** A one-time link to hand over; shown once, kept only as a hash. */
 export const oneTimeLinkSchema = z.strictObject({ url: z.string(), expiresAt: momentSchema })
 
@@ -25,6 +30,8 @@ const tokenParams = z.strictObject({ token: z.string().min(1).max(200) })
 
 /** GET /api/people: owner. */
 export const listPeople = { response: z.strictObject({ people: z.array(personSchema) }) }
+/** GET /api/people/active: anybody signed in; who can be handed a walk: neither the deactivated nor those who have set no password yet. */
+export const listActivePeople = { response: z.strictObject({ people: z.array(colleagueSchema) }) }
 /** POST /api/people: owner; adds a person and gives the link where they set their password (`e-mail-taken`). */
 export const addPerson = {
   body: z.strictObject({ name: personNameSchema, email: emailSchema, role: z.enum(roles) }),

@@ -3,7 +3,7 @@ import { queryOptions, useMutation, useQueryClient } from '@tanstack/react-query
 import type { z } from 'zod'
 
 import type { Person } from '#shared/api/people.ts'
-import { addPerson, createLink, getLink, listPeople, updatePerson, useLink } from '#shared/api/people.ts'
+import { addPerson, createLink, getLink, listActivePeople, listPeople, updatePerson, useLink } from '#shared/api/people.ts'
 import type { PersonId } from '#shared/lib/ids.ts'
 import { request } from '#src/lib/api-client.ts'
 import { paths } from '#src/lib/paths.ts'
@@ -14,6 +14,12 @@ export const peopleQueries = {
     queryOptions({
       queryKey: peopleQueries.lists(),
       queryFn: ({ signal }) => request(paths.api.people(), listPeople.response, { signal }),
+    }),
+  /** Who can be handed something; name and role alone, so that everybody may read it. */
+  active: () =>
+    queryOptions({
+      queryKey: ['people', 'active'],
+      queryFn: ({ signal }) => request(paths.api.activePeople(), listActivePeople.response, { signal }),
     }),
   link: (token: string) =>
     queryOptions({
@@ -39,6 +45,7 @@ function usePersonMutation<Input, Answer extends { readonly person: Person }>(mu
     mutationFn,
     onSuccess: ({ person }) => {
       showPerson(client, person)
+      void client.invalidateQueries({ queryKey: peopleQueries.active().queryKey })
       return client.invalidateQueries({ queryKey: peopleQueries.lists() })
     },
   })

@@ -32,6 +32,7 @@ export const paths = {
     ownSession: (id: string) => `/api/sessions/${part(id)}`,
     owner: () => '/api/owner',
     people: () => '/api/people',
+    activePeople: () => '/api/people/active',
     person: (personId: PersonId) => `/api/people/${part(personId)}`,
     personLink: (personId: PersonId) => `/api/people/${part(personId)}/link`,
     link: (token: string) => `/api/links/${part(token)}`,

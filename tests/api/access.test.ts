@@ -35,6 +35,7 @@ const samples: Readonly<Record<string, Sample>> = {
   endSession: { params: { id: randomUUID() } },
   createFirstOwner: { body: () => ({ code: 'AAAA', name: 'A', email: 'a@fernhill.example', password: 'vellum tractor paris' }) },
   listPeople: {},
+  listActivePeople: {},
   addPerson: { body: () => ({ name: 'New', email: `${randomUUID()}@fernhill.example`, role: 'junior' }) },
   updatePerson: { params: { id: randomUUID() }, body: () => ({ name: 'Newer' }) },
   createLink: { params: { id: randomUUID() } },

@@ -1,6 +1,10 @@
-import { desk, listAxeFindings, listSidewaysScroll, listSmallTargets, phone } from '#tests/support/browser.ts'
+import { expect } from 'vitest'
 
-import type { Technician } from './technician.ts'
+import type { Role } from '#shared/trade/roles.ts'
+import { desk, listAxeFindings, listSidewaysScroll, listSmallTargets, phone, thumb } from '#tests/support/browser.ts'
+
+import type { ShopOfFile } from './shop.ts'
+import { Technician } from './technician.ts'
 
 /** WCAG 2.2 AA (2023), 2.5.8: the least size of a target. */
 const leastTarget = 24
@@ -13,7 +17,7 @@ const narrowWidth = 320
  * Looks a screen over at both sizes and in both themes, and tells what is wrong with it. Every rule of axe runs in each size and in each theme
  * once; the colours, which alone hang on the theme, run in each theme at each size.
  */
-export async function inspect({ page }: Technician, screen: string, { isBench = false }: { readonly isBench?: boolean } = {}): Promise<readonly string[]> {
+async function inspect({ page }: Technician, screen: string, { isBench = false }: { readonly isBench?: boolean } = {}): Promise<readonly string[]> {
   const findings: string[] = []
   const note = (where: string, found: readonly string[]): void => void findings.push(...found.map((words) => `${screen}, ${where}: ${words}`))
 
@@ -34,4 +38,31 @@ export async function inspect({ page }: Technician, screen: string, { isBench = 
   note(`${narrowWidth} px`, await listSidewaysScroll(page))
   await page.setViewportSize(phone)
   return findings
+}
+
+type Inspector = {
+  readonly who: Technician
+  /** Looks over the screen that is shown; `isBench` where it takes a gloved hand. */
+  readonly see: (screen: string, isBench?: boolean) => Promise<void>
+  readonly seePlayer: (screen: string) => Promise<void>
+  /** Tells all that was wrong. */
+  readonly end: () => Promise<void>
+}
+
+/** Somebody of a role, or of none, who goes from screen to screen of a shop. */
+export function inspectorOf(shop: ShopOfFile): (role: Role | 'nobody') => Promise<Inspector> {
+  return async (role) => {
+    const who = role === 'nobody' ? new Technician(await shop.openDevice(thumb)) : await shop.seat(role, thumb)
+    who.device.allow(/status of 4\d\d/)
+    const findings: string[] = []
+    return {
+      who,
+      see: async (screen, isBench = false) => void findings.push(...(await inspect(who, screen, { isBench }))),
+      seePlayer: async (screen) => void findings.push(...(await inspect(who, `player: ${screen}`, { isBench: true }))),
+      end: async () => {
+        expect(findings).toEqual([])
+        await who.leaves()
+      },
+    }
+  }
 }

@@ -11,7 +11,7 @@ import { Technician } from './technician.ts'
 
 type Cookies = Awaited<ReturnType<BrowserContext['cookies']>>
 
-type ShopOfFile = {
+export type ShopOfFile = {
   readonly process: () => ShopProcess
   /** A device of nobody yet; put away by `using` or by `close`. */
   readonly openDevice: (hands: Hands) => Promise<Device>

@@ -2,13 +2,16 @@ import { screen, waitFor, within } from '@testing-library/react'
 import type { userEvent } from '@testing-library/user-event'
 import { beforeAll, expect, test, vi } from 'vitest'
 
+import type { Colleague } from '#shared/api/people.ts'
+import { listActivePeople } from '#shared/api/people.ts'
 import type { SpecLimits } from '#shared/units/limits.ts'
 import { setShortcutsOn } from '#src/lib/shortcuts.ts'
 import { buildChart, type ChartSketch } from '#tests/support/chart-builder.ts'
-import { fakeApi } from '#tests/support/fake-api.ts'
+import type { FakeAnswer } from '#tests/support/fake-api.ts'
+import { fakeApi, ok, problem } from '#tests/support/fake-api.ts'
 import { FakeBench } from '#tests/support/fake-walks.ts'
 import { renderApp } from '#tests/support/render-app.tsx'
-import { buildSession, sessionEndpoint } from '#tests/support/session-builder.ts'
+import { buildSession, personId, sessionEndpoint } from '#tests/support/session-builder.ts'
 import { sawSketch } from '#tests/support/walk-charts.ts'
 
 // The guards against slips measure with the page's own clock; here it stands still unless a hand rests.
@@ -281,4 +284,60 @@ test('a machine is held with a tag number and a reason, and with nothing less', 
   await user.click(outcome(/^Hold it: not safe/))
   await at('Held: not safe to hand back')
   await waitFor(() => expect(lastEvent(bench)).toMatchObject({ type: 'held', payload: { tagNo: '17', why: 'The drum is cracked.' } }))
+})
+
+const me: Colleague = { id: personId(3), name: 'Mara Kessler', role: 'junior' }
+
+/** A walk in hand, at its page "Hand over", in a shop that answers so when asked who is in it. */
+async function openHandOver(answerOfShop: () => FakeAnswer) {
+  const bench = new FakeBench(buildChart(sawSketch)).begin()
+  fakeApi([
+    sessionEndpoint({ session: buildSession('junior') }),
+    { method: 'GET', path: '/api/people/active', contract: listActivePeople, answer: answerOfShop },
+    ...bench.endpoints,
+  ])
+  const { user } = renderApp(`/walks/${bench.walkId}`)
+  await at('Look at n1')
+  await user.click(outcome('More'))
+  await user.click(await screen.findByRole('button', { name: 'Hand over' }))
+  await at('Hand over')
+  return { bench, user }
+}
+
+test('a walk is handed to anybody of the shop, also to one who was never in it; the leads come first and oneself is not listed', async () => {
+  const { bench, user } = await openHandOver(() =>
+    ok({
+      people: [
+        { id: personId(7), name: 'Abe Quill', role: 'junior' },
+        { id: personId(1), name: 'Ines Okafor', role: 'owner' },
+        me,
+        { id: personId(2), name: 'Tomas Brandt', role: 'lead' },
+        { id: personId(6), name: 'Una Vale', role: 'lead' },
+      ],
+    }),
+  )
+  const choices = within(await screen.findByRole('group', { name: 'To whom' })).getAllByRole<HTMLInputElement>('radio')
+  expect(choices.map(({ labels }) => labels?.[0]?.textContent)).toEqual([
+    'Tomas BrandtLead technician',
+    'Una ValeLead technician',
+    'Ines OkaforShop owner',
+    'Abe QuillJunior technician',
+  ])
+  expect(choices[0]).toBeChecked()
+  await user.click(screen.getByRole('radio', { name: /Abe Quill/ }))
+  await user.type(screen.getByRole('textbox', { name: /What they should know/ }), 'The plug is out.')
+  await answer(user, 'Hand over', 'Handed over to Abe Quill')
+  await waitFor(() => expect(lastEvent(bench)).toMatchObject({ type: 'handed-over', payload: { to: personId(7), why: 'The plug is out.' } }))
+})
+
+test('with nobody else in the shop the page says so, and hands nothing over', async () => {
+  await openHandOver(() => ok({ people: [me] }))
+  expect(await screen.findByText(/Nobody else of the shop can sign in/)).toBeVisible()
+  expect(screen.queryByRole('button', { name: 'Hand over' })).not.toBeInTheDocument()
+})
+
+test('a list of people that cannot be read is said to be that, with what can be done meanwhile', async () => {
+  await openHandOver(() => problem(503, 'database-busy', 'The server is busy. Try again in a moment.'))
+  expect(await screen.findByText(/The server is busy/)).toHaveTextContent(/pause it/)
+  expect(screen.queryByText(/Nobody else/)).not.toBeInTheDocument()
 })

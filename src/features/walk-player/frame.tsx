@@ -194,7 +194,7 @@ function Undo() {
   )
 }
 
-const footClass = 'flex min-h-14 min-w-14 items-center font-medium hover:underline hover:underline-offset-4 aria-expanded:underline aria-expanded:underline-offset-4'
+const footClass = 'flex min-h-14 min-w-14 items-center pr-3 font-medium sm:pr-0 hover:underline hover:underline-offset-4 aria-expanded:underline aria-expanded:underline-offset-4'
 
 function Foot({ saved, onRetry, panel }: Pick<FrameProps, 'saved' | 'onRetry' | 'panel'>) {
   const { page, openPanel, noAnswer, walk } = usePlayer()

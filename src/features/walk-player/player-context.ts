@@ -29,8 +29,6 @@ export type Player = {
   readonly pageKey: string
   readonly machineTitle: string
   readonly person: SignedIn
-  /** Names of the people of the walk, by id. */
-  readonly people: Readonly<Record<PersonId, string>>
   readonly nameOf: (personId: PersonId) => string
   readonly format: NumberFormat
   /** Seconds since the page appeared. */

@@ -1,3 +1,4 @@
+import { useQuery } from '@tanstack/react-query'
 import { useCallback, useEffect, useMemo, useRef, useState } from 'react'
 import { useLocation, useNavigate, useSearchParams } from 'react-router-dom'
 
@@ -7,6 +8,7 @@ import type { NumberFormat } from '#shared/units/number-format.ts'
 import type { WalkPage } from '#shared/walk/page.ts'
 import { toPage } from '#shared/walk/select.ts'
 import type { StartedWalk } from '#shared/walk/state.ts'
+import { peopleQueries } from '#src/api/people.ts'
 import type { OpenLog, WalkDetail } from '#src/api/walk-logs.ts'
 import { toRules, useWalkLog } from '#src/api/walk-logs.ts'
 import type { PanelName, Player } from '#src/features/walk-player/player-context.ts'
@@ -70,6 +72,8 @@ export function usePlayerState({ detail, person, format }: PlayerInput): PlayerS
   const tap = useTapGuard(pageKey)
   const seconds = usePageSeconds(pageKey)
   const { panel, openPanel, closePanel } = usePanel()
+  // Read where the walk is handed over: the log names people who were not in it when it was loaded.
+  const colleagues = useQuery({ ...peopleQueries.active(), enabled: false })
 
   const record = (drafts: readonly EventDraft[], said?: string): boolean => {
     const made = log.record(drafts)
@@ -101,8 +105,7 @@ export function usePlayerState({ detail, person, format }: PlayerInput): PlayerS
           pageKey,
           machineTitle: detail.walk.machineTitle,
           person,
-          nameOf: (personId) => (personId === person.id ? person.name : (detail.people[personId] ?? 'somebody else')),
-          people: detail.people,
+          nameOf: (personId) => (personId === person.id ? person.name : (detail.people[personId] ?? colleagues.data?.people.find(({ id }) => id === personId)?.name ?? 'somebody else')),
           format,
           seconds,
           record,

@@ -1,12 +1,20 @@
+import { useQuery } from '@tanstack/react-query'
 import { useState } from 'react'
 
+import type { Colleague } from '#shared/api/people.ts'
 import type { PersonId } from '#shared/lib/ids.ts'
+import type { Role } from '#shared/trade/roles.ts'
 import { isOpen, liveTrail } from '#shared/walk/state.ts'
 import { nameAt } from '#shared/walk/words.ts'
+import { peopleQueries } from '#src/api/people.ts'
 import { Tie } from '#src/components/knots/cord.tsx'
+import { roleWords } from '#src/components/layout/role-words.ts'
 import { Button } from '#src/components/ui/button.tsx'
 import { RadioGroup } from '#src/components/ui/field.tsx'
+import { Notice } from '#src/components/ui/notice.tsx'
+import { Placeholder } from '#src/components/ui/placeholder.tsx'
 import { RuledList, RuledRow } from '#src/components/ui/ruled.tsx'
+import { toWords } from '#src/lib/problem-words.ts'
 import { toLineWords } from '#src/lib/walk-words.ts'
 import { HoldForm } from '#src/features/walk-player/parts/hold-form.tsx'
 import { NoteField, toLengthWords } from '#src/features/walk-player/parts/note-field.tsx'
@@ -73,35 +81,52 @@ export function HoldPanel() {
   )
 }
 
-/** Hands the walk to somebody who has been in it; a lead can take any open walk without that. */
+/** The one who is asked first comes first: a lead, then the owner; the list itself comes by name. */
+const orderOfRoles: readonly Role[] = ['lead', 'owner', 'junior']
+
+/** Hands the walk to anybody of the shop; it waits for them, paused. */
 export function HandOverPanel() {
-  const { people, person, record, closePanel, tap } = usePlayer()
-  const others = (Object.entries(people) as [PersonId, string][]).filter(([id]) => id !== person.id)
-  const [to, setTo] = useState<PersonId | null>(others[0]?.[0] ?? null)
+  const { person } = usePlayer()
+  const { data, error } = useQuery(peopleQueries.active())
+  const others = data?.people
+    .filter(({ id }) => id !== person.id)
+    .toSorted((left, right) => orderOfRoles.indexOf(left.role) - orderOfRoles.indexOf(right.role))
+  return (
+    <Panel title="Hand over">
+      {others === undefined && error === null && <Placeholder words="Reading who is in the shop" rows={2} />}
+      {others === undefined && error !== null && (
+        <Notice state="care" title="Who is in the shop could not be read">
+          {toWords(error)} The walk can wait meanwhile: pause it, and a lead can take it over.
+        </Notice>
+      )}
+      {others?.length === 0 && <p>Nobody else of the shop can sign in yet. The owner adds people under “People”; pause the walk until then.</p>}
+      {others?.[0] !== undefined && <HandOverForm people={others} first={others[0]} />}
+    </Panel>
+  )
+}
+
+function HandOverForm({ people, first }: { readonly people: readonly Colleague[]; readonly first: Colleague }) {
+  const { record, closePanel, tap } = usePlayer()
+  const [picked, setPicked] = useState<PersonId | null>(null)
   const [why, setWhy] = useState('')
+  const { id: to } = people.find(({ id }) => id === picked) ?? first
   const handOver = (): void => {
-    if (to === null || toLengthWords(why) !== undefined) return
+    if (toLengthWords(why) !== undefined) return
     if (record([{ type: 'handed-over', payload: { to, ...(why.trim() === '' ? {} : { why: why.trim() }) } }], 'Handed over.')) closePanel()
   }
   return (
-    <Panel title="Hand over">
-      {others.length === 0 ? (
-        <p>Nobody else has been in this walk yet. Pause it: the lead can take it over from the list of open walks.</p>
-      ) : (
-        <>
-          <RadioGroup
-            label="To whom"
-            name="to"
-            choices={others.map(([value, words]) => ({ value, words }))}
-            {...(to === null ? {} : { value: to })}
-            onChange={(event) => setTo(event.target.value as PersonId)}
-          />
-          <NoteField label="What they should know (may stay empty)" value={why} onChange={setWhy} />
-          <Button look="primary" size="large" onClick={() => tap(handOver)} className="justify-self-start">
-            Hand over
-          </Button>
-        </>
-      )}
-    </Panel>
+    <>
+      <RadioGroup
+        label="To whom"
+        name="to"
+        choices={people.map(({ id, name, role }) => ({ value: id, words: name, hint: roleWords[role] }))}
+        value={to}
+        onChange={(event) => setPicked(event.target.value as PersonId)}
+      />
+      <NoteField label="What they should know (may stay empty)" value={why} onChange={setWhy} />
+      <Button look="primary" size="large" onClick={() => tap(handOver)} className="justify-self-start">
+        Hand over
+      </Button>
+    </>
   )
 }

@@ -45,19 +45,21 @@ function Tries({ entry }: { readonly entry: Entry }) {
   if (repeat === null) return null
   const within = repeat.within === 0 ? 'equal' : `within ${formatNumber(repeat.within, format)}`
   return (
-    <div className="flex flex-wrap items-baseline justify-between gap-x-4 text-ink-2">
-      <span>
-        {tries.map((each, index) => (
-          <span key={index} className="mr-3 whitespace-nowrap">
-            {ordinals[index] ?? `No. ${index + 1}`} try {formatNumber(each.value, format)}
-            <button type="button" onClick={() => dropTry(index)} className="ml-1 min-h-8 min-w-8 text-cord underline underline-offset-2">
-              <span aria-hidden="true">×</span>
-              <span className="for-ears">Drop this try</span>
+    <div className="flex items-center justify-between gap-x-4 text-ink-2">
+      {tries.length > 0 && (
+        <span className="flex flex-wrap gap-x-3">
+          {tries.map((each, index) => (
+            <button key={index} type="button" onClick={() => dropTry(index)} className="min-h-14 whitespace-nowrap hover:text-ink">
+              {ordinals[index] ?? `No. ${index + 1}`} try {formatNumber(each.value, format)}
+              <span aria-hidden="true" className="ml-2 text-cord">
+                ×
+              </span>
+              <span className="for-ears">, drop it</span>
             </button>
-          </span>
-        ))}
-      </span>
-      <span>{toTriesWords(verdict, tries.length, repeat, within)}</span>
+          ))}
+        </span>
+      )}
+      <span className="ml-auto text-right leading-5">{toTriesWords(verdict, tries.length, repeat, within)}</span>
     </div>
   )
 }
