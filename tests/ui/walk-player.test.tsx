@@ -337,7 +337,7 @@ test('with nobody else in the shop the page says so, and hands nothing over', as
 })
 
 test('a list of people that cannot be read is said to be that, with what can be done meanwhile', async () => {
-  await openHandOver(() => problem(503, 'database-busy', 'The server is busy. Try again in a moment.'))
+  await openHandOver(() => problem(503, 'busy', 'The server is busy. Try again in a moment.'))
   expect(await screen.findByText(/The server is busy/)).toHaveTextContent(/pause it/)
   expect(screen.queryByText(/Nobody else/)).not.toBeInTheDocument()
 })
