@@ -69,12 +69,12 @@ describe('one physical check', () => {
 
 describe('check numbers', () => {
   const numbers = (sketch: ChartSketch) => Object.fromEntries(chartNumbers(index(sketch)))
-  test('an id that is n and a number gives it, the others take what is free, depth-first; a start has none', () => {
-    expect(numbers(soundSketch)).toEqual({ n1: '1', n2: '2', ask: '3', p2: '4', c2: '5', a0: '6' })
+  test('an id that is n and a number gives it, a step or a proof stands beside the node that leads to it, the others take what is free, depth-first; a start has none', () => {
+    expect(numbers(soundSketch)).toEqual({ n1: '1', n2: '2', ask: '3', p2: '2a', c2: '4', a0: '5' })
   })
   test('letters belong to the number', () => {
     const nodes = [start(), reproducing('n9'), check('n9b'), proof('p9', 'worn'), cause('c', 'worn')]
-    expect(numbers({ nodes, edges: ['s > n9', 'n9.yes > n9b', 'n9.no > c', 'n9b.bad > p9', 'p9.gone > c'] })).toEqual({ n9: '9', n9b: '9b', p9: '1', c: '2' })
+    expect(numbers({ nodes, edges: ['s > n9', 'n9.yes > n9b', 'n9.no > c', 'n9b.bad > p9', 'p9.gone > c'] })).toEqual({ n9: '9', n9b: '9b', p9: '9c', c: '1' })
   })
   test('no two nodes carry one number, and nodes without a route come last', () => {
     const nodes = [ask('lost'), start(), check('n01'), check('n1'), check('x')]

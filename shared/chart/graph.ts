@@ -178,29 +178,52 @@ export function toChartGraph(index: ChartIndex): ChartGraph {
 
 /**
  * The number that every node but a start carries on pages and pictures ("check 9"). An id made of `n` and a number, as n7
- * or n9b, gives it; the others take, in depth-first order from the starts, the whole numbers that are still free.
+ * or n9b, gives it. Of the others, in depth-first order from the starts, a step or a proof takes the number of the node that
+ * leads to it with the next free letter ("9c"), so that it is found beside its check; what is left takes the whole numbers
+ * that are still free.
  */
 export function chartNumbers(index: ChartIndex): ReadonlyMap<NodeId, string> {
   const { graph, ids, numberOf, starts } = toChartGraph(index)
   const numbers = new Map<NodeId, string>()
   const taken = new Set<string>()
-  const unnamed: NodeId[] = []
-  const everyNode = Array.from({ length: ids.length }, (_, number) => number)
-  for (const number of depthFirst(graph, [...starts, ...everyNode]).preorder) {
-    const id = ids[number]
-    if (id === undefined || numberOf.get(id) !== number || index.nodes.get(id)?.kind === 'start') continue
-    const named = /^n0*(\d{1,4}[a-z]?)$/.exec(id)?.[1]
-    if (named === undefined || taken.has(named)) unnamed.push(id)
-    else {
-      numbers.set(id, named)
-      taken.add(named)
-    }
+  const give = (id: NodeId, number: string): void => {
+    numbers.set(id, number)
+    taken.add(number)
   }
+  const everyNode = Array.from({ length: ids.length }, (_, number) => number)
+  const { preorder } = depthFirst(graph, [...starts, ...everyNode])
+  const numbered = preorder.flatMap((number) => {
+    const node = index.nodes.get(ids[number] ?? ('' as NodeId))
+    return node === undefined || numberOf.get(node.id) !== number || node.kind === 'start' ? [] : [{ number, node }]
+  })
+  for (const { node } of numbered) {
+    const named = /^n0*(\d{1,4}[a-z]?)$/.exec(node.id)?.[1]
+    if (named !== undefined && !taken.has(named)) give(node.id, named)
+  }
+  const leaders = firstLeaders(graph, preorder)
   let next = 1
-  for (const id of unnamed) {
+  for (const { number, node } of numbered) {
+    if (numbers.has(node.id)) continue
+    const leader = ids[leaders.get(number) ?? -1]
+    const beside = node.kind === 'step' || node.kind === 'proof' ? nextBeside(leader === undefined ? undefined : numbers.get(leader), taken) : undefined
     while (taken.has(String(next))) next += 1
-    numbers.set(id, String(next))
-    next += 1
+    give(node.id, beside ?? String(next))
   }
   return numbers
+}
+
+/** For every node the one that leads to it and comes first in the order. */
+function firstLeaders(graph: Digraph, order: readonly number[]): ReadonlyMap<number, number> {
+  const leaders = new Map<number, number>()
+  for (const from of order) {
+    for (const to of graph.targets.subarray(graph.rows[from], graph.rows[from + 1])) if (!leaders.has(to)) leaders.set(to, from)
+  }
+  return leaders
+}
+
+/** The number of a node beside "9", or beside "9b": the next letter that is free, as in "9c". */
+function nextBeside(leader: string | undefined, taken: ReadonlySet<string>): string | undefined {
+  const [, whole, letter = ''] = /^(\d+)([a-z]?)$/.exec(leader ?? '') ?? []
+  if (whole === undefined) return undefined
+  return [...'abcdefghijklmnopqrstuvwxyz'].filter((next) => next > letter).map((next) => `${whole}${next}`).find((number) => !taken.has(number))
 }

@@ -32,7 +32,6 @@ test('the pages of the walk player from the cautions to the closed walk are clea
   await who.seesWords(/before the change/i)
   await seePlayer('before a proof')
   await who.readValue('9850')
-  await who.readValue('9840')
   await who.comesTo('Is full speed back with the throttle set?')
   await seePlayer('proof')
   await who.readValue('12300')
