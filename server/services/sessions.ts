@@ -148,7 +148,7 @@ function isSame(one: string, other: string): boolean {
 const browserNames: readonly (readonly [RegExp, string])[] = [
   [/\bEdgA?\//, 'Edge'],
   [/\bFirefox\/|\bFxiOS\//, 'Firefox'],
-  [/\bChrome\/|\bCriOS\//, 'Chrome'],
+  [/Chrome\/|\bCriOS\//, 'Chrome'],
   [/\bSafari\//, 'Safari'],
 ]
 const systemNames: readonly (readonly [RegExp, string])[] = [
