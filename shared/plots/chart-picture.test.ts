@@ -60,7 +60,7 @@ describe('each kind of node has an outline and a further mark of its own', () =>
 
   test('numbers stand on what is done or asked', () => {
     expect(nodeOf(picture, 'n4').label).toBe('Check 4: Look at n4. 1 Good, 2 Bad, 3 Worse')
-    expect(nodeOf(picture, 'p4').label).toMatch(/^Proof \d+: Prove screen-shut\. Proof: Spark screen shut\. 1 Gone, 2 Still there$/)
+    expect(nodeOf(picture, 'p4').label).toMatch(/^Proof 4a: Prove screen-shut\. Proof: Spark screen shut\. 1 Gone, 2 Still there$/)
   })
 
   test('limits of the machine are shown where they are known', () => {
@@ -116,7 +116,7 @@ describe('a route', () => {
   test('comes first in the order of the nodes and in the summary', () => {
     const picture = drawChart(sound, { route })
     expect(picture.groups.flatMap((group) => (group.of === 'node' ? [group.node] : [])).slice(0, 4)).toEqual(['s', 'n1', 'n2', 'p2'])
-    expect(picture.summary).toBe('Flowchart "Chart under test": 2 checks, 1 proof, 1 cause. The route drawn: Start s, then 1 Look at n1, then 2 Look at n2, then 4 Prove filter-packed.')
+    expect(picture.summary).toBe('Flowchart "Chart under test": 2 checks, 1 proof, 1 cause. The route drawn: Start s, then 1 Look at n1, then 2 Look at n2, then 2a Prove filter-packed.')
   })
 
   test('can be drawn alone with where its outcomes lead', () => {

@@ -27,7 +27,8 @@ export const peopleQueries = {
       queryFn: ({ signal }) => request(paths.api.link(token), getLink.response, { signal }),
       retry: false,
       retryOnMount: false,
-      gcTime: 0,
+      // Long enough for the page to come to what its loader asked for; a used link is then asked about anew.
+      gcTime: 5_000,
     }),
 }
 

@@ -16,7 +16,7 @@ function Bench() {
       <output>{taken}</output>
       <ul>
         {keys.map(({ key, words }) => (
-          <li key={key}>{`${key}: ${words}`}</li>
+          <li key={`${key} ${words}`}>{`${key}: ${words}`}</li>
         ))}
       </ul>
       <input aria-label="Note" />
