@@ -2,13 +2,16 @@ import type { OutcomeId } from '#shared/lib/ids.ts'
 import type { SpecLimit } from '#shared/units/limits.ts'
 import type { Unit } from '#shared/units/quantities.ts'
 import type { EventOf, WalkEventType } from '#shared/walk/events.ts'
-import { bandedOutcomes, judgeTries, takenOnce, type Judging } from '#shared/walk/judging.ts'
+import { bandedOutcomes, heldAgainst, judgeTries, takenOnce, type Judging } from '#shared/walk/judging.ts'
 import type { BeforePage, CheckPage, NodeName, OutcomeChoice, ProofPage, ReadingPage, RunPage, WalkPage } from '#shared/walk/page.ts'
 
 /** An event before it has an envelope. */
 export type Draft = { [Type in WalkEventType]: { readonly type: Type; readonly payload: EventOf<Type>['payload'] } }[WalkEventType]
 
-/** What a story says that was found, by node: an outcome. Where it says nothing, all was as it should be, and proofs confirm. */
+/**
+ * What a story says that was found, by node: an outcome. Where it says nothing, all was as it should be, proofs confirm, and what a proof takes before
+ * its change shows the trouble.
+ */
 export type Answers = Readonly<Record<string, string>>
 
 type Finding = EventOf<'finding-recorded'>['payload']
@@ -67,7 +70,8 @@ function pick(page: { readonly node: NodeName; readonly outcomes: readonly Outco
 
 function answer(page: CheckPage | ReadingPage | ProofPage, answers: Answers, before?: Finding['before']): readonly Draft[] {
   const choice = pick(page, answers)
-  const measured = page.kind === 'check' ? null : measure(page.judging, choice.outcome)
+  const judging = page.kind === 'check' ? null : page.judging
+  const measured = measure(before === undefined ? judging : heldAgainst(judging, before), choice.outcome)
   const note = page.kind === 'proof' && page.needsNote && choice.confirms ? { note: 'The second look shows it plainly.' } : {}
   const finding: Finding = {
     node: page.node.place,
@@ -86,12 +90,13 @@ function answer(page: CheckPage | ReadingPage | ProofPage, answers: Answers, bef
 }
 
 function takeBefore(page: BeforePage, answers: Answers): Finding['before'] {
-  const { outcome } = pick(page, answers)
+  const trouble = page.outcomes.find(({ isNormal }) => !isNormal)
+  const { outcome } = isAnsweredBy(page.node, answers) === undefined && trouble !== undefined ? trouble : pick(page, answers)
   const { value, unit } = measure(takenOnce(page.judging), outcome) ?? {}
   return { outcome, ...(value === undefined ? {} : { value }), ...(unit === undefined ? {} : { unit }) }
 }
 
-/** A value that the limits judge to be this outcome, read as often as the page asks; none where no value leads to it. */
+/** A value that the limits judge to be this outcome, or that stands beside it by hand, read as often as the page asks; none where no value leads to it. */
 function measure(judging: Judging | null, outcome: OutcomeId): Measured | null {
   if (judging === null) return null
   const { reading, limits, repeat } = judging
@@ -100,6 +105,7 @@ function measure(judging: Judging | null, outcome: OutcomeId): Measured | null {
   for (const value of likelyValues(limits, unit)) {
     const values = Array.from({ length: repeat?.equal ?? 1 }, () => value)
     const verdict = judgeTries(judging, values, unit)
+    if (verdict.kind === 'was-so-before') return { value, unit, judgedBy: 'hand' }
     if (verdict.kind !== 'outcome' || verdict.outcome !== outcome) continue
     return { value, ...(values.length > 1 ? { values } : {}), unit, judgedBy: 'limits', ...(limits === null ? {} : { limits }) }
   }

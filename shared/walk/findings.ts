@@ -59,6 +59,12 @@ export function beforeToTake(charts: PinnedCharts, walk: WalkRecord, proof: Loca
   return compared && findingOf(charts, walk, compared) === null ? compared : null
 }
 
+/** What was found before the change of a proof, by the trail; `null` when it compares with nothing, or that has no finding. */
+export function foundBefore(charts: PinnedCharts, walk: WalkRecord, proof: LocatedDecision): Answer | null {
+  const compared = comparedWith(proof)
+  return compared && (findingOf(charts, walk, compared)?.answer ?? null)
+}
+
 /** An answer that is already there: noticed out of turn, or recorded before a step back. */
 export type Offered = { readonly from: 'noticed'; readonly source: Noticed } | { readonly from: 'stepped-back'; readonly source: FindingLine }
 
@@ -75,6 +81,11 @@ export function offeredAnswer(charts: PinnedCharts, walk: WalkRecord, check: Loc
   ]
   const latest = sources.reduce<(typeof sources)[number] | null>((best, next) => (best === null || next.source.seq > best.source.seq ? next : best), null)
   return latest?.from === 'noticed' || latest?.from === 'stepped-back' ? (latest as Offered) : null
+}
+
+/** What the answer on offer was held against when it was first recorded; `null` where it was no proof's. */
+export function offeredAgainst(offered: Offered | null): Answer | null {
+  return offered?.from === 'stepped-back' ? offered.source.heldAgainst : null
 }
 
 /** The checks that got no answer and still have none, in the order in which they were skipped. */

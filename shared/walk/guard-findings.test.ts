@@ -1,7 +1,7 @@
 import { describe, test } from 'vitest'
 
 import { ask, buildChart, cause, check, proof, reading, start, step } from '#tests/support/chart-builder.ts'
-import { act, again, backTo, found, skipped, started, storiesOn, tap, uuid, type Act, raw } from '#tests/support/walk-builder.ts'
+import { act, again, backTo, found, revs, skipped, started, storiesOn, tap, uuid, type Act, raw } from '#tests/support/walk-builder.ts'
 import { toReading, toFilter, toProof, toCause, toRepaired } from '#tests/support/saw-stories.ts'
 import { sawChart } from '#tests/support/walk-charts.ts'
 
@@ -192,6 +192,55 @@ describe('findings', () => {
       proveWith({ outcome: 'in', value: 9000, unit: '1/min' }).thenRefused('not-the-band', '/payload/before/outcome')
       proveWith({ outcome: 'low' }).thenRefused('value-missing', '/payload/before/value')
       proveWith({ outcome: 'dark' }).thenRefused('no-such-outcome', '/payload/before/outcome')
+    })
+
+    describe('whose reading was within what confirms before the change already', () => {
+      const chart = bare('isolation', { node: 'n2', confirmsWhen: ['in'] })
+      const measured = { value: 12_000, unit: '1/min' }
+      const before = { outcome: 'in', value: 11_900, unit: '1/min' }
+      const proveBy = (outcome: string, more: object) =>
+        storiesOn(chart)
+          .given(started(), tap('dark'))
+          .when(found('p1', outcome, { before, ...more } as never))
+
+      test('is judged by hand, whatever the value after it', () => {
+        proveBy('gone', { ...measured, judgedBy: 'hand' }).thenAt('c1')
+        proveBy('still', { ...measured, judgedBy: 'hand' }).thenAt('n2')
+        proveBy('still', { value: 9000, unit: '1/min', judgedBy: 'hand' }).thenAt('n2')
+        for (const outcome of ['gone', 'still']) proveBy(outcome, { ...measured, judgedBy: 'limits' }).thenRefused('was-so-before', '/payload/judgedBy')
+      })
+
+      test('still takes the value that confirms', () => proveBy('gone', { judgedBy: 'hand' }).thenRefused('value-missing'))
+
+      test('by the finding on the trail, when it took none of its own', () => {
+        const onTrail = buildChart({
+          id: 'saw',
+          nodes: [start(), reading('n2'), proof('p1', 'filter-packed', { compares: { node: 'n2', confirmsWhen: ['in'] } }), cause('c1', 'filter-packed'), ask()],
+          edges: ['s > n2', 'n2.low > p1', 'n2.in > p1', 'p1.gone > c1', 'p1.still > ask'],
+        })
+        const proveAfter = (value: number, judgedBy: string) =>
+          storiesOn(onTrail)
+            .given(started(), revs(value))
+            .when(found('p1', 'gone', { ...measured, judgedBy } as never))
+        proveAfter(9000, 'limits').thenAt('c1')
+        proveAfter(12_000, 'limits').thenRefused('was-so-before', '/payload/judgedBy')
+        proveAfter(12_000, 'hand').thenAt('c1')
+      })
+
+      test('kept after a step back it is judged by what it was held against then', () => {
+        const keep = (outcome: string, value: number, own: object, judgedBy: string) =>
+          storiesOn(chart)
+            .given(
+              started(),
+              tap('dark'),
+              found('p1', outcome, { value, unit: '1/min', before: own, judgedBy: own === before ? 'hand' : 'limits' } as never),
+              backTo('p1'),
+            )
+            .when((bench) => found('p1', outcome, { value, unit: '1/min', judgedBy, reuses: bench.eventAt('p1') } as never)(bench))
+        keep('still', 12_000, before, 'hand').thenAt('n2')
+        keep('still', 12_000, before, 'limits').thenRefused('was-so-before')
+        keep('gone', 12_000, { outcome: 'low', value: 9000, unit: '1/min' }, 'limits').thenAt('c1')
+      })
     })
 
     test('one that compares with nothing takes nothing before', () => {

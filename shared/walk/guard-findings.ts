@@ -4,8 +4,8 @@ import type { SpecLimit } from '#shared/units/limits.ts'
 import type { Unit } from '#shared/units/quantities.ts'
 import { actOfLooking, actOfNodes, pendingOf } from './cautions.ts'
 import type { EventOf } from './events.ts'
-import { comparedWith, findingOf, locateDecision, offeredAnswer, type LocatedDecision } from './findings.ts'
-import { bandedOutcomes, judgeTries, judgingOf, takenOnce, type Judging } from './judging.ts'
+import { comparedWith, findingOf, foundBefore, locateDecision, offeredAgainst, offeredAnswer, type LocatedDecision } from './findings.ts'
+import { bandedOutcomes, heldAgainst, judgeTries, judgingOf, takenOnce, type Judging } from './judging.ts'
 import { pageNodes } from './page-nodes.ts'
 import { chartsOnStack, locate, type PinnedCharts } from './pinned-charts.ts'
 import { refuse, type Refusal } from './refusals.ts'
@@ -71,6 +71,8 @@ function faultOfValue({ node }: LocatedDecision, judging: Judging | null, given:
       return refuse('not-equal-yet', `${at}/values`)
     case 'by-hand':
       return given.judgedBy === 'limits' ? refuse('limits-unknown', `${at}/judgedBy`) : null
+    case 'was-so-before':
+      return given.judgedBy === 'limits' ? refuse('was-so-before', `${at}/judgedBy`) : null
     case 'not-confirmed':
       return node.outcomes.some(({ id, confirms }) => id === given.outcome && confirms) ? refuse('not-the-band', `${at}/outcome`) : null
     case 'outcome':
@@ -127,12 +129,16 @@ export function faultOfFinding(charts: PinnedCharts, walk: OpenWalk, { payload }
   const check = locateDecision(charts, walk, walk.node)
   if (check === null) return refuse('not-a-check', '/payload/node')
   const isAgain = payload.reuses !== undefined
-  const judging = isAgain ? takenOnce(judgingOf(walk, check)) : judgingOf(walk, check)
+  const judging = isAgain
+    ? heldAgainst(takenOnce(judgingOf(walk, check)), offeredAgainst(offeredAnswer(charts, walk, check)))
+    : heldAgainst(judgingOf(walk, check), payload.before ?? foundBefore(charts, walk, check))
   return (
+    // What a proof is held against tells how its own answer is judged, so that is looked at first.
+    (isAgain ? null : faultOfBefore(charts, walk, check, payload)) ??
     faultOfAnswer(check, judging, givenBy(payload, payload.judgedBy, payload.values), '/payload') ??
     faultOfValues(payload, judging) ??
     (payload.limits && !sameLimits(payload.limits, judging?.limits ?? null) ? refuse('other-limits', '/payload/limits') : null) ??
-    (isAgain ? faultOfReuse(charts, walk, check, payload) : (faultOfBefore(charts, walk, check, payload) ?? faultOfSight(check, payload))) ??
+    (isAgain ? faultOfReuse(charts, walk, check, payload) : faultOfSight(check, payload)) ??
     faultOfCautions(walk, check, payload)
   )
 }

@@ -5,7 +5,7 @@ import { compareAmounts, convertValue } from '#shared/units/convert.ts'
 import type { SpecLimit } from '#shared/units/limits.ts'
 import type { Unit } from '#shared/units/quantities.ts'
 import { comparedWith, type LocatedDecision } from './findings.ts'
-import type { WalkRecord } from './state.ts'
+import type { Answer, WalkRecord } from './state.ts'
 
 /**
  * How the values of a page are judged: hand it, with the values so far, to `judgeTries`. On a proof the limits are those of the reading that
@@ -22,6 +22,8 @@ export interface Judging {
     readonly confirming: OutcomeId
     /** The outcome of any other value, where there is only one. */
     readonly refuting: OutcomeId | null
+    /** What was found before the change; `null` while that is not known. Does it confirm already, no value after the change proves anything. */
+    readonly before: OutcomeId | null
   } | null
 }
 
@@ -35,6 +37,8 @@ export type Verdict =
   | { readonly kind: 'unsettled' }
   /** Nobody knows the limits, or no band holds the value: the person picks. */
   | { readonly kind: 'by-hand' }
+  /** A proof whose reading was within what confirms before anything was changed: the value is kept, the person says what the change did. */
+  | { readonly kind: 'was-so-before' }
   /** A proof that was not confirmed, with several outcomes that say how: the person picks one of these. */
   | { readonly kind: 'not-confirmed' }
   | { readonly kind: 'outcome'; readonly outcome: OutcomeId }
@@ -43,7 +47,10 @@ function limitsInForce(walk: WalkRecord, check: LocatedDecision, reading: Readin
   return limitsOf(reading, walk.limits, [...check.index.specKeys.values()], walk.machine)
 }
 
-/** How the values of a node are judged now; `null` for a check, and for a proof that no compared reading judges. */
+/**
+ * How the values of a node are judged now; `null` for a check, and for a proof that no compared reading judges. What a proof is held against has
+ * still to be said: `heldAgainst`.
+ */
 export function judgingOf(walk: WalkRecord, check: LocatedDecision): Judging | null {
   const { node } = check
   if (node.kind === 'reading') return { reading: node, limits: limitsInForce(walk, check, node), repeat: node.repeat ?? null, proof: null }
@@ -56,8 +63,23 @@ export function judgingOf(walk: WalkRecord, check: LocatedDecision): Judging | n
     reading: compared,
     limits: limitsInForce(walk, check, compared),
     repeat: null,
-    proof: { confirmsWhen: node.compares.confirmsWhen, confirming: confirming.id, refuting: others.length === 1 ? (others[0]?.id ?? null) : null },
+    proof: {
+      confirmsWhen: node.compares.confirmsWhen,
+      confirming: confirming.id,
+      refuting: others.length === 1 ? (others[0]?.id ?? null) : null,
+      before: null,
+    },
   }
+}
+
+/** The same judging, with what was found before the change of its proof. On a reading there is nothing to hold a value against. */
+export function heldAgainst(judging: Judging | null, before: Pick<Answer, 'outcome'> | null): Judging | null {
+  return judging?.proof ? { ...judging, proof: { ...judging.proof, before: before?.outcome ?? null } } : judging
+}
+
+/** Whether the reading of a proof was within what confirms before anything was changed: then its value proves nothing. */
+export function wasSoBefore({ proof }: Judging): boolean {
+  return proof !== null && proof.before !== null && proof.confirmsWhen.includes(proof.before)
 }
 
 /** The same reading taken once, without its repeats: how `before` and `noticed`, which hold one value, are judged. */
@@ -83,10 +105,12 @@ function equalAtTheEnd(reading: ReadingNode, within: number, values: readonly nu
   return count
 }
 
-function verdictOfValue({ reading, limits, proof }: Judging, value: number, unit: Unit): Verdict {
+function verdictOfValue(judging: Judging, value: number, unit: Unit): Verdict {
+  const { reading, limits, proof } = judging
   const outcome = judgeReading(reading, limits, value, unit)
   if (outcome === null) return { kind: 'by-hand' }
   if (proof === null) return { kind: 'outcome', outcome }
+  if (wasSoBefore(judging)) return { kind: 'was-so-before' }
   if (proof.confirmsWhen.includes(outcome)) return { kind: 'outcome', outcome: proof.confirming }
   return proof.refuting === null ? { kind: 'not-confirmed' } : { kind: 'outcome', outcome: proof.refuting }
 }

@@ -1,7 +1,7 @@
 import { isDecision } from '#shared/chart/graph.ts'
 import { splitPlace, toPlace, type CauseId, type Place } from '#shared/lib/ids.ts'
 import type { EventOf } from './events.ts'
-import { comparedWith, locateDecision, type LocatedDecision } from './findings.ts'
+import { comparedWith, foundBefore, locateDecision, type LocatedDecision } from './findings.ts'
 import { enter, enterAll, nothingDone } from './metal.ts'
 import { pageNodes } from './page-nodes.ts'
 import { locate, type PinnedCharts } from './pinned-charts.ts'
@@ -48,8 +48,9 @@ export function recordFinding(charts: PinnedCharts, walk: OpenWalk, event: Event
   const check = locateDecision(charts, walk, walk.node)
   const { seq, payload } = event
   if (walk.phase !== 'at-node' || payload.node !== walk.node || check === null) return walk
-  const reused = payload.reuses === undefined ? undefined : walk.trail.find(({ eventId }) => eventId === payload.reuses)
-  const before = payload.before ? toAnswer(payload.before) : reused?.kind === 'finding' ? reused.before : null
+  const source = payload.reuses === undefined ? undefined : walk.trail.find(({ eventId }) => eventId === payload.reuses)
+  const reused = source?.kind === 'finding' ? source : null
+  const before = payload.before ? toAnswer(payload.before) : (reused?.before ?? null)
   // An answer that is recorded again was paid for when it was found: nobody touches the machine.
   const nodes = payload.reuses === undefined ? madeNow(check, before) : []
   const done = nodes.length > 0 ? enterAll(walk.metal, nodes) : nothingDone(walk.metal)
@@ -61,6 +62,8 @@ export function recordFinding(charts: PinnedCharts, walk: OpenWalk, event: Event
     values: payload.values ?? (payload.value === undefined ? [] : [payload.value]),
     judgedBy: payload.judgedBy,
     before,
+    // What was kept was measured after its own change: what was found since says nothing about it.
+    heldAgainst: before ?? (reused ? reused.heldAgainst : foundBefore(charts, walk, check)),
     reuses: payload.reuses ?? null,
     note: payload.note ?? null,
     photoIds: payload.photoIds,

@@ -103,6 +103,8 @@ export interface OfferedAnswer {
   readonly from: 'noticed' | 'stepped-back'
   readonly at: string
   readonly note: string | null
+  /** What a proof was held against for it; `heldAgainst` of the judging tells what its value says. */
+  readonly heldAgainst: Answer | null
 }
 
 /** The way that an unanswered check follows; `null` when the chart knows none and the walk ends by asking the lead. */
@@ -179,7 +181,7 @@ export interface ProofPage extends Asking {
   readonly compares: NodeName | null
   /** What was found before the change; `null` when the proof compares with nothing, or its `before` page has still to take it. */
   readonly before: BeforeWords | null
-  /** How the value after the change is judged; `null` when it is judged by hand. */
+  /** How the value after the change is judged; `null` when no value is asked for. By hand, where `before` is within what confirms already. */
   readonly judging: Judging | null
   /** Whether confirming takes a note: what the second look saw. */
   readonly needsNote: boolean
@@ -196,7 +198,7 @@ export interface BeforePage {
   readonly judging: Judging | null
   readonly noAnswer: NoAnswer
   /**
-   * The proof's own page, shown next, with its `before` still to be filled in. Was the proof answered before a step back, `proof.offered` is that
+   * The proof's own page, shown next, with its `before` still to be filled in, and its judging still to be `heldAgainst` that. Was the proof answered before a step back, `proof.offered` is that
    * answer with all that was taken for it: it can be recorded again at once, from here.
    */
   readonly proof: ProofPage

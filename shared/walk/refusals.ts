@@ -47,6 +47,7 @@ export const refusalWords = {
   'wrong-unit': 'This unit does not fit what is measured. Pick one of those on the page.',
   'not-the-band': 'The value belongs to another outcome. Record the one that the limits give.',
   'limits-unknown': 'Nobody knows the limits for this machine. Judge the value yourself.',
+  'was-so-before': 'It was so before the change already: the value proves nothing. Judge yourself what the change did.',
   'nothing-to-judge': 'Limits say nothing about this outcome. Pick it yourself.',
   'other-limits': 'The limits in force are others. Load the walk again and record the value once more.',
   'not-equal-yet': 'The values are not equal yet. Measure again, or say that it never settles.',

@@ -1,5 +1,6 @@
 import { describe, expect, test } from 'vitest'
 
+import type { OutcomeId } from '#shared/lib/ids.ts'
 import { ask, buildChart, cause, check, jump, proof, reading, start, step } from '#tests/support/chart-builder.ts'
 import {
   access,
@@ -24,6 +25,7 @@ import {
 import { toReading, toFilter, toCause } from '#tests/support/saw-stories.ts'
 import { jumpingChart, otherChart, sawChart, sealChart } from '#tests/support/walk-charts.ts'
 import { checksLeft, type ChecksLeft } from './checks-left.ts'
+import { heldAgainst, judgeTries, wasSoBefore } from './judging.ts'
 import { backTo, knots, openAccess, passedOver, questionWords } from './select.ts'
 import { isOpen } from './state.ts'
 
@@ -108,7 +110,7 @@ describe('the page of a proof', () => {
         before: { title: 'Low', answer: { value: 9850 } },
         compares: { place: 'saw/n2' },
       })
-      expect(page.judging?.proof).toEqual({ confirmsWhen: ['in'], confirming: 'gone', refuting: 'still' })
+      expect(page.judging?.proof).toEqual({ confirmsWhen: ['in'], confirming: 'gone', refuting: 'still', before: 'low' })
     })
   })
 
@@ -139,6 +141,32 @@ describe('the page of a proof', () => {
         expect(page.judging?.proof).toBeNull()
         expect(page.proof.judging?.proof).not.toBeNull()
       })
+  })
+
+  test('whose reading was in limits before the change is judged by hand, as the page knows from the trail and learns from its first half', () => {
+    const within = { outcome: 'in' as OutcomeId }
+    storiesOn(before)
+      .given(started(), tap('dark'))
+      .thenPage('before', ({ proof: { judging } }) => {
+        const verdict = (found: typeof within | null) => {
+          const after = heldAgainst(judging, found)
+          return after && judgeTries(after, [12_000], '1/min')
+        }
+        expect(verdict(null)).toEqual({ kind: 'outcome', outcome: 'gone' })
+        expect(verdict(within)).toEqual({ kind: 'was-so-before' })
+        expect(verdict({ outcome: 'low' as OutcomeId })).toEqual({ kind: 'outcome', outcome: 'gone' })
+      })
+    const found = buildChart({
+      id: 'saw',
+      nodes: [start(), reading('n2'), proof('p1', 'filter-packed', { compares: { node: 'n2', confirmsWhen: ['in'] } }), cause('c1', 'filter-packed'), ask()],
+      edges: ['s > n2', 'n2.in > p1', 'n2.low > p1', 'p1.gone > c1', 'p1.still > ask'],
+    })
+    storiesOn(found)
+      .given(started(), revs(12_000))
+      .thenPage('proof', ({ judging }) => expect(judging && wasSoBefore(judging)).toBe(true))
+    storiesOn(found)
+      .given(started(), revs(9000))
+      .thenPage('proof', ({ judging }) => expect(judging && wasSoBefore(judging)).toBe(false))
   })
 
   test('that was answered before a step back can be recorded again with all that was taken for it', () => {

@@ -4,8 +4,8 @@ import { handBackRun } from '#shared/trade/hand-back-run.ts'
 import { highestWord } from '#shared/trade/signal-words.ts'
 import { actOfNodes, pendingOf } from './cautions.ts'
 import { causeOf, fixItems, isLeftUnsafe, possibleResults, reasonWords } from './endings.ts'
-import { comparedWith, findingOf, listSkipped, offeredAnswer, type LocatedDecision } from './findings.ts'
-import { judgingOf, takenOnce } from './judging.ts'
+import { comparedWith, findingOf, foundBefore, listSkipped, offeredAgainst, offeredAnswer, type LocatedDecision } from './findings.ts'
+import { heldAgainst, judgingOf, takenOnce } from './judging.ts'
 import { enterAll, openingMinutes } from './metal.ts'
 import type {
   BeforePage,
@@ -156,7 +156,7 @@ function offeredWords(charts: PinnedCharts, walk: WalkRecord, check: LocatedDeci
   const offered = offeredAnswer(charts, walk, check)
   if (offered === null) return null
   const { eventId, answer, at, note } = offered.source
-  return { eventId, answer, title: outcomeTitle(check.node, answer.outcome), from: offered.from, at, note }
+  return { eventId, answer, title: outcomeTitle(check.node, answer.outcome), from: offered.from, at, note, heldAgainst: offeredAgainst(offered) }
 }
 
 function beforePage(charts: PinnedCharts, walk: WalkRecord, nodes: PageNodes, proof: LocatedDecision, before: LocatedDecision): BeforePage {
@@ -185,7 +185,7 @@ function proofPage(charts: PinnedCharts, walk: WalkRecord, nodes: PageNodes, che
     afterwards: proof?.afterwards ?? null,
     compares: compared && nameOf(charts, walk, compared),
     before: compared && beforeWords(charts, walk, compared),
-    judging: judgingOf(walk, check),
+    judging: heldAgainst(judgingOf(walk, check), foundBefore(charts, walk, check)),
     needsNote: proof?.by === 'sight',
   }
 }

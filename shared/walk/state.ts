@@ -56,13 +56,17 @@ interface TrailLine {
 export interface StepLine extends TrailLine {
   readonly kind: 'step'
 }
-/** A finding. `before` is the answer that a proof took on its own page ahead of the change. */
+/**
+ * A finding. `before` is the answer that a proof took on its own page ahead of the change; `heldAgainst` is that answer, or the finding of the trail
+ * that the proof was compared with when it was first recorded.
+ */
 export interface FindingLine extends TrailLine {
   readonly kind: 'finding'
   readonly answer: Answer
   readonly values: readonly number[]
   readonly judgedBy: 'limits' | 'hand'
   readonly before: Answer | null
+  readonly heldAgainst: Answer | null
   readonly reuses: EventId | null
   readonly note: string | null
   readonly photoIds: readonly PhotoId[]

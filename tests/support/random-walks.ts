@@ -3,11 +3,13 @@ import fc from 'fast-check'
 import type { ChartDocument } from '#shared/chart/document.ts'
 import { engineKinds } from '#shared/trade/equipment.ts'
 import type { EventOf, WalkEventType } from '#shared/walk/events.ts'
+import { heldAgainst, wasSoBefore } from '#shared/walk/judging.ts'
+import type { BeforePage, ProofPage } from '#shared/walk/page.ts'
 import { isOpen } from '#shared/walk/state.ts'
 import { backTo } from '#shared/walk/select.ts'
 import { ask, back, buildChart, cause, check, hold, jump, proof, reading, start, step } from './chart-builder.ts'
 import { act, asked, questionId, runFailed, runPassed, uuid, type Act, type Bench } from './walk-builder.ts'
-import { acknowledge, answerAgain, answerBefore, answerPage, finishStep, proveCause, skipPage, type EventDraft } from './walk-drafts.ts'
+import { acknowledge, answerAgain, answerBefore, answerPage, finishStep, proveCause, skipPage, type EventDraft, type PageAnswer } from './walk-drafts.ts'
 
 type Json = Readonly<Record<string, unknown>>
 
@@ -175,13 +177,7 @@ export function waysOfPage({ page, state, charts }: Bench): readonly (readonly E
     case 'before':
     case 'proof': {
       const asking = page.kind === 'before' ? page.proof : page
-      const taken =
-        page.kind === 'before'
-          ? answerBefore(page, page.judging ? { values: [9000], unit: '1/min', seconds: 0 } : { outcome: page.outcomes[0]?.outcome as never, seconds: 0 })
-          : undefined
-      const measured = asking.judging
-        ? [[9000], [12_000]].map((values) => answerPage(asking, { values, unit: '1/min', note: 'Seen', seconds: 1 }, taken ?? undefined))
-        : asking.outcomes.map(({ outcome }) => answerPage(asking, { outcome, note: 'Seen', seconds: 1 }, taken ?? undefined))
+      const measured = takenBefore(page).flatMap((taken) => proofWays(asking, taken))
       return [...measured, ...(asking.offered ? [answerAgain(asking, asking.offered, 1)] : []), [skipPage(page, 'not-sure')]].flatMap((way) =>
         way ? [way] : [],
       )
@@ -213,6 +209,28 @@ export function waysOfPage({ page, state, charts }: Bench): readonly (readonly E
     default:
       return []
   }
+}
+
+type Taken = NonNullable<ReturnType<typeof answerBefore>> | undefined
+
+/** What a proof may take before its change: a value below and one within the limits, or the first outcome of a look. */
+function takenBefore(page: BeforePage | ProofPage): readonly Taken[] {
+  if (page.kind === 'proof') return [undefined]
+  const answers: readonly PageAnswer[] = page.judging
+    ? [[9000], [12_000]].map((values) => ({ values, unit: '1/min', seconds: 0 }))
+    : page.outcomes.slice(0, 1).map(({ outcome }) => ({ outcome, seconds: 0 }))
+  return answers.map((answer) => answerBefore(page, answer) ?? undefined)
+}
+
+/** The ways to answer a proof: by a value that the limits judge, by hand beside a value that proves nothing, by sight. */
+function proofWays(page: ProofPage, taken: Taken): readonly (readonly EventDraft[] | null)[] {
+  const judging = taken === undefined ? page.judging : heldAgainst(page.judging, taken)
+  const seen = { note: 'Seen', seconds: 1 }
+  if (judging === null) return page.outcomes.map(({ outcome }) => answerPage(page, { outcome, ...seen }, taken))
+  const measured = [[9000], [12_000]].map((values): PageAnswer => ({ values, unit: '1/min', ...seen }))
+  return wasSoBefore(judging)
+    ? measured.flatMap((answer) => page.outcomes.map(({ outcome }) => answerPage(page, { ...answer, outcome }, taken)))
+    : measured.map((answer) => answerPage(page, answer, taken))
 }
 
 /** Acts beside the page: some fit, some do not; the guard tells. */

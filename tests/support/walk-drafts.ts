@@ -2,7 +2,7 @@ import type { DeviceId, EventId, OutcomeId, PersonId, PhotoId, WalkId } from '#s
 import type { SpecLimit } from '#shared/units/limits.ts'
 import type { Unit } from '#shared/units/quantities.ts'
 import type { EventOf, WalkEvent, WalkEventType } from '#shared/walk/events.ts'
-import { judgeTries, type Judging } from '#shared/walk/judging.ts'
+import { heldAgainst, judgeTries, takenOnce, type Judging } from '#shared/walk/judging.ts'
 import type { BeforePage, CausePage, CautionPage, CheckPage, OfferedAnswer, ProofPage, ReadingPage, StepPage } from '#shared/walk/page.ts'
 
 /** An event before it has an envelope: what was done. */
@@ -60,7 +60,8 @@ export function answerPage(
   answer: PageAnswer,
   before?: NonNullable<EventOf<'finding-recorded'>['payload']['before']>,
 ): readonly EventDraft[] | null {
-  const judging = page.kind === 'check' ? null : page.judging
+  const asked = page.kind === 'check' ? null : page.judging
+  const judging = before === undefined ? asked : heldAgainst(asked, before)
   const judged = outcomeOf(judging, answer)
   const outcome = answer.outcome ?? judged
   if (outcome === null) return null
@@ -90,12 +91,13 @@ export function answerBefore(page: BeforePage, answer: PageAnswer): EventOf<'fin
 /** The offered answer, recorded again with one tap. */
 export function answerAgain(page: AnswerPage, offered: OfferedAnswer, seconds: number): readonly EventDraft[] {
   const { outcome, value, unit } = offered.answer
-  const isJudged = page.kind !== 'check' && page.judging !== null && outcomeOf(onceOf(page.judging), fromAnswer(value, unit)) === outcome
+  const judging = page.kind === 'check' ? null : heldAgainst(takenOnce(page.judging), offered.heldAgainst)
+  const isJudged = outcomeOf(judging, fromAnswer(value, unit)) === outcome
   const payload: EventOf<'finding-recorded'>['payload'] = {
     node: page.node.place,
     outcome,
     ...valueFields(fromAnswer(value, unit)),
-    ...(isJudged ? { judgedBy: 'limits' as const, ...limitsField(page.judging?.limits) } : { judgedBy: 'hand' as const }),
+    ...(isJudged ? { judgedBy: 'limits' as const, ...limitsField(judging?.limits) } : { judgedBy: 'hand' as const }),
     reuses: offered.eventId,
     ...(offered.note === null ? {} : { note: offered.note }),
     photoIds: [],
@@ -119,10 +121,6 @@ export function proveCause({ cause, proofEventId }: CausePage, sight?: { readonl
 
 function linesDone(page: AnswerPage): readonly EventDraft[] {
   return page.lines.map(({ place }) => ({ type: 'step-done', payload: { node: place, seconds: 0 } }))
-}
-
-function onceOf(judging: Judging): Judging {
-  return { ...judging, repeat: null }
 }
 
 function fromAnswer(value: number | null, unit: Unit | null): PageAnswer {

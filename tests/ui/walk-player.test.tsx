@@ -220,12 +220,11 @@ test('single keys answer, step back and open the note; none acts while a field i
   setShortcutsOn(true)
 })
 
+/** From the first check straight to the filter: the proof that follows has no reading to compare with yet. */
+const unread: ChartSketch = { ...sawSketch, edges: sawSketch.edges.map((edge) => (edge === 'n1.yes > n2' ? 'n1.yes > n3' : edge)) }
+
 test('a proof takes what it compares with first, and carries it along when it is recorded', async () => {
-  const { bench, user } = openWalk({
-    ...sawSketch,
-    nodes: sawSketch.nodes,
-    edges: sawSketch.edges.map((edge) => (edge === 'n1.yes > n2' ? 'n1.yes > n3' : edge)),
-  })
+  const { bench, user } = openWalk(unread)
   await at('Look at n1')
   await answer(user, /It does it/, 'Look at n3')
   await answer(user, /dark/i, 'Measure n2')
@@ -239,6 +238,37 @@ test('a proof takes what it compares with first, and carries it along when it is
   expect(bench.log.at(-2)).toMatchObject({
     payload: { node: 'saw/p3', outcome: 'gone', value: 12_400, before: { outcome: 'low', value: 9850, unit: '1/min' } },
   })
+})
+
+test('a proof whose reading was in limits before the change says why its value proves nothing, takes it, and lets the person judge', async () => {
+  const { bench, user } = openWalk(unread)
+  await at('Look at n1')
+  await answer(user, /It does it/, 'Look at n3')
+  await answer(user, /dark/i, 'Measure n2')
+  await type(user, '12100')
+  await answer(user, /^Record/, 'Prove filter-packed')
+  expect(screen.getByText(/it was “In limits” already, so the value alone proves nothing/)).toBeVisible()
+  await type(user, '12400')
+  expect(screen.queryByRole('button', { name: /^Record/ })).not.toBeInTheDocument()
+  expect(outcome(/Still/)).toBeVisible()
+  await answer(user, /Gone/, 'Filter packed')
+  await waitFor(() =>
+    expect(bench.log.at(-2)).toMatchObject({
+      payload: { node: 'saw/p3', outcome: 'gone', value: 12_400, judgedBy: 'hand', before: { outcome: 'in', value: 12_100 } },
+    }),
+  )
+})
+
+test('a proof whose reading was out of limits before the change is judged by its value, without a word about that', async () => {
+  const { user } = openWalk(unread)
+  await at('Look at n1')
+  await answer(user, /It does it/, 'Look at n3')
+  await answer(user, /dark/i, 'Measure n2')
+  await type(user, '9850')
+  await answer(user, /^Record/, 'Prove filter-packed')
+  expect(screen.queryByText(/proves nothing/)).not.toBeInTheDocument()
+  await type(user, '12400')
+  expect(screen.queryByRole('button', { name: /Still/ })).not.toBeInTheDocument()
 })
 
 test('a lost server shows a bar and blocks nothing; what was tapped is sent when it is back', async () => {

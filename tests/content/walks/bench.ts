@@ -16,7 +16,7 @@ import { handBackRun } from '#shared/trade/hand-back-run.ts'
 import type { SpecLimit } from '#shared/units/limits.ts'
 import type { Unit } from '#shared/units/quantities.ts'
 import type { EventOf, Machine, WalkEvent, WalkEventType } from '#shared/walk/events.ts'
-import { judgeTries, type Judging } from '#shared/walk/judging.ts'
+import { heldAgainst, judgeTries, type Judging } from '#shared/walk/judging.ts'
 import type { BeforePage, OutcomeChoice } from '#shared/walk/page.ts'
 import { anyVersionOf, locate } from '#shared/walk/pinned-charts.ts'
 import { appendEvent, replay } from '#shared/walk/replay.ts'
@@ -127,9 +127,10 @@ export function benchAt(chartId: string, machine: Machine, startId = 's') {
       const page = shown.kind === 'before' ? shown.proof : shown
       if (page.kind !== 'check' && page.kind !== 'reading' && page.kind !== 'proof') throw new Error(`${id} takes no answer`)
       for (const line of page.lines) send('step-done', { node: line.place, seconds: 0 })
-      const judging = page.kind === 'check' ? null : page.judging
-      const values = given ?? valuesFor(page, judging, outcome)
       const before = shown.kind === 'before' ? { before: beforeOf(shown) } : {}
+      const asked = page.kind === 'check' ? null : page.judging
+      const judging = before.before === undefined ? asked : heldAgainst(asked, before.before)
+      const values = given ?? valuesFor(page, judging, outcome)
       const note = page.kind === 'proof' && page.needsNote ? { note: 'Looked again under the lamp' } : {}
       send('finding-recorded', {
         node: page.node.place,
@@ -230,7 +231,8 @@ function valuesFor({ outcomes }: { readonly outcomes: readonly OutcomeChoice[] }
   const candidates = [limits.min === undefined ? [] : [limits.min * 0.8], [insideOf(limits)], limits.max === undefined ? [] : [limits.max * 1.2]].flat()
   const fitting = candidates.find((value) => {
     const verdict = judgeTries(judging, times(value), limits.unit)
-    return verdict.kind === 'outcome' && verdict.outcome === outcome
+    // Where the value proves nothing it is taken all the same, and the person picks.
+    return verdict.kind === 'was-so-before' || (verdict.kind === 'outcome' && verdict.outcome === outcome)
   })
   return fitting === undefined ? [] : times(fitting)
 }

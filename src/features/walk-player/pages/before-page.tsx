@@ -3,6 +3,7 @@ import { z } from 'zod'
 import { outcomeIdSchema } from '#shared/lib/ids.ts'
 import { formatValue } from '#shared/units/format-value.ts'
 import { unitSchema } from '#shared/units/limits.ts'
+import { heldAgainst } from '#shared/walk/judging.ts'
 import type { BeforePage as Page, OutcomeChoice } from '#shared/walk/page.ts'
 import { AnswerList, NoAnswerList } from '#src/features/walk-player/parts/answer-list.tsx'
 import { OfferedValue } from '#src/features/walk-player/parts/offered-value.tsx'
@@ -34,7 +35,8 @@ export function BeforePage({ page }: { readonly page: Page }) {
   const [taken, setTaken] = useScratch(walk.walkId, `before.${page.proof.node.place}`, takenSchema)
   if (taken === null) return <TakeBefore page={page} onTaken={setTaken} />
   const { outcome, title, measured } = taken
-  const proof = { ...page.proof, before: { node: page.node, answer: { outcome, value: measured?.value ?? null, unit: measured?.unit ?? null }, title } }
+  const answer = { outcome, value: measured?.value ?? null, unit: measured?.unit ?? null }
+  const proof = { ...page.proof, before: { node: page.node, answer, title }, judging: heldAgainst(page.proof.judging, answer) }
   const takeAgain = (): void => {
     announce(`Taken back: ${toTakenWords(taken, format)}.`)
     setTaken(null)

@@ -3,6 +3,7 @@ import { useRef, useState } from 'react'
 import { z } from 'zod'
 
 import { formatValue } from '#shared/units/format-value.ts'
+import { wasSoBefore } from '#shared/walk/judging.ts'
 import type { OutcomeChoice, ProofPage as Page } from '#shared/walk/page.ts'
 import type { Answer } from '#shared/walk/state.ts'
 import { StateMark } from '#src/components/ui/state-mark.tsx'
@@ -57,6 +58,11 @@ function ProofByValue({ page, judging, taken }: ProofPageProps & { readonly judg
           <div className="grid gap-1">
             <OfferedValue page={page} />
             <p className="label">After</p>
+            {page.before !== null && wasSoBefore(judging) && (
+              <p className="text-small">
+                Before the change it was “{page.before.title}” already, so the value alone proves nothing. Type it, then say what the change did.
+              </p>
+            )}
             <ReadingEntry entry={entry} label={`After: ${page.node.title}`} onEnter={act}>
               <JudgedProof entry={entry} outcomes={page.outcomes} wordsOf={wordsOf} onPress={act}>
                 <ValueAnswers question={page.node.title} entry={entry} outcomes={page.outcomes} wordsOf={wordsOf} onRecord={onRecord} />

@@ -1,5 +1,5 @@
 import { formatValue } from '#shared/units/format-value.ts'
-import { judgeTries } from '#shared/walk/judging.ts'
+import { heldAgainst, judgeTries, takenOnce } from '#shared/walk/judging.ts'
 import type { ProofPage, ReadingPage } from '#shared/walk/page.ts'
 import { OutcomeButton } from '#src/features/walk-player/parts/outcome-button.tsx'
 import { usePlayer } from '#src/features/walk-player/player-context.ts'
@@ -17,7 +17,8 @@ export function OfferedValue({ page }: { readonly page: ReadingPage | ProofPage 
   const title = value === null || unit === null ? choice.title : `${formatValue(value, unit, format)}, ${choice.title}`
   const keep = (): void => {
     const isMeasured = value !== null && unit !== null
-    const isJudged = isMeasured && judging !== null && judgeTries({ ...judging, repeat: null }, [value], unit).kind === 'outcome'
+    const again = heldAgainst(takenOnce(judging), offered.heldAgainst)
+    const isJudged = isMeasured && again !== null && judgeTries(again, [value], unit).kind === 'outcome'
     answer({ choice, reuses: offered, said: title, judgedBy: isJudged ? 'limits' : 'hand', ...(isMeasured && { measured: { value, unit } }) })
   }
   return <OutcomeButton numeral={null} title={`Keep ${title}`} words={toOfferedWords(offered)} look="leading" onPress={() => tap(keep)} />

@@ -69,6 +69,7 @@ function toRecordSpan(buttons: number): string {
 function toPicks({ verdict }: ReadingEntry, outcomes: readonly OutcomeChoice[]): readonly OutcomeChoice[] | null {
   switch (verdict.kind) {
     case 'by-hand':
+    case 'was-so-before':
       return outcomes
     case 'unsettled': {
       const buttons = outcomes.filter(({ isBanded }) => !isBanded)
