@@ -248,7 +248,7 @@ export class Technician {
 
   /** Ticks the whole hand-back run off, with the value that it asks for. Answers the number of its items. */
   async tickRun(fullSpeed: string): Promise<number> {
-    await this.sees('Run it, tick each thing off')
+    await this.findsAgain('Run it, tick each thing off')
     const items = this.page.locator('main ul').first().getByRole('checkbox')
     const count = await items.count()
     for (let at = 0; at < count; at += 1) {

@@ -1,6 +1,7 @@
 import { afterAll, beforeAll, describe, expect, test } from 'vitest'
 import pg from 'pg'
 
+import { demoStories } from '#seeds-demo/demo-stories.ts'
 import { Client } from '#tests/api/test-shop.ts'
 import { startThrowawayPostgres } from '#tests/support/throwaway-postgres.ts'
 import type { ThrowawayPostgres } from '#tests/support/throwaway-postgres.ts'
@@ -51,7 +52,7 @@ describe('on a PostgreSQL server', () => {
     // Beside a server the command line is welcome here: the database keeps them apart.
     const { status, stdout } = await runToEnd(['server/cli.ts', 'doctor'], { ...environment, DEMO: '' })
     expect(status).toBe(0)
-    expect(JSON.parse(stdout)).toMatchObject({ engine: 'postgresql', isDemo: true, walks: 1, walksWithHoles: [] })
+    expect(JSON.parse(stdout)).toMatchObject({ engine: 'postgresql', isDemo: true, walks: demoStories.length + 1, walksWithHoles: [] })
     expect(await again.end('SIGTERM')).toBe(0)
   })
 })
