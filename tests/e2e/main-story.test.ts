@@ -40,6 +40,7 @@ test.each(bothHands)('a junior walks a saw without full speed to a dragging brak
   await ivy.tick('Never cleaned')
   await ivy.seesWords(/brush chips and dust out/)
   await ivy.answer('Fix done')
+  await ivy.sees('Run it, tick each thing off')
   await ivy.tickRun('12400')
   await ivy.answer('It runs right')
   await ivy.sees('It runs right')
