@@ -105,7 +105,7 @@ async function serve(deps: Deps, { host, port }: Environment, createApp: CreateA
 }
 
 function toListenRefusal(error: NodeJS.ErrnoException, host: string, port: number): unknown {
-  if (error.code === 'EADDRINUSE') return new StartRefusal(`Port ${port} on ${host} is in use by another program. Stop that one, or name another port: PORT=${port + 1} npm start`)
+  if (error.code === 'EADDRINUSE') return new StartRefusal(`Port ${port} on ${host} is in use by another program. Stop that one, or name another port, for example PORT=${port + 1}`)
   if (error.code === 'EACCES') return new StartRefusal(`This user may not listen on port ${port}. Name one from 1024 up, for example PORT=3000.`)
   if (error.code === 'EADDRNOTAVAIL' || error.code === 'ENOTFOUND') return new StartRefusal(`This machine has no address ${host}. Correct HOST; 0.0.0.0 means all that it has.`)
   return error
@@ -123,7 +123,7 @@ async function welcome(deps: Deps, server: Server): Promise<void> {
   } else {
     const { makeOwnerCode } = await import('./services/first-owner.ts')
     const owner = await makeOwnerCode(deps)
-    if (owner) say(`This shop has no owner yet. Open the address above and enter this code, good once, until ${owner.expiresAt.toISOString()}:\n  ${owner.code}`)
+    if (owner) say(`This shop has no owner yet. Open the address above and enter this code, good once, until ${owner.expiresAt.toLocaleString('en-GB', { dateStyle: 'medium', timeStyle: 'short' })}:\n  ${owner.code}`)
   }
   if (config.publicUrl.startsWith('http:') && !isLoopback(config.host)) say('Other devices reach this over plain http: entries and passwords can be read on the way. Use it in a network that you trust.')
   say('Ctrl-C stops it.')

@@ -40,7 +40,7 @@ export async function takeTry(deps: Deps, limit: Limit): Promise<void> {
   if (row === undefined || row.tries <= limit.tries) return
   const retryAfterSeconds = Math.max(1, Math.ceil((row.endsAt.getTime() - now.getTime()) / 1000))
   deps.log.warn({ event: 'throttled', limit: limit.kind }, 'too many tries')
-  throw new AppError('too-many-tries', `That was tried too often. Wait ${toWait(retryAfterSeconds)}, then try again: the right one will still work.`, {
+  throw new AppError('too-many-tries', `That was tried too often. Wait ${toWait(retryAfterSeconds)}, then try again. Until then the right one is not taken either.`, {
     retryAfterSeconds,
   })
 }

@@ -47,7 +47,7 @@ describe('a start that can\'t be is refused in words, and nothing is changed', (
     const PULLCORD_DATA = await makeUsedFolder('own')
     const port = await occupyPort()
     expect(await refusalOf({ PULLCORD_DATA, PORT: String(port) })).toBe(
-      `Port ${port} on 127.0.0.1 is in use by another program. Stop that one, or name another port: PORT=${port + 1} npm start\n`,
+      `Port ${port} on 127.0.0.1 is in use by another program. Stop that one, or name another port, for example PORT=${port + 1}\n`,
     )
     expect(await (await startServer({ PULLCORD_DATA })).end('SIGTERM')).toBe(0)
   })

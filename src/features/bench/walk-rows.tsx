@@ -49,7 +49,7 @@ export function OpenWalkRow({ walk, isFirst, as = 'mine' }: OpenWalkRowProps) {
 
 /** "paused · asked the lead · check 6 · compression", as far as it is so. */
 function toStanding({ isPaused, hasQuestion, standsAt, minutesUsed }: WalkRow): ReactNode {
-  const words = [isPaused ? 'paused' : null, hasQuestion ? 'asked the lead' : null, standsAt].filter(Boolean).join(' · ')
+  const words = [isPaused ? 'paused' : null, hasQuestion && !standsAt.startsWith('ask the lead') ? 'asked the lead' : null, standsAt].filter(Boolean).join(' · ')
   return (
     <>
       {words}

@@ -161,7 +161,8 @@ function ReviewHead({ detail, walk, nameOf }: Named & { readonly detail: WalkDet
       </div>
       <p className="col-span-full text-small text-ink-2">
         {formatMoment(walk.startedAt)} · {formatSeconds(walk.secondsMeasured)} measured
-        {walk.waitMinutes > 0 ? ` · ${formatMinutes(walk.waitMinutes)} waited` : ''}
+        {walk.waitMinutes > 0 ? ` · ${formatMinutes(walk.waitMinutes)} of waiting by the chart` : ''}
+        {walk.machine.serial === undefined ? '' : ` · serial number ${walk.machine.serial}`}
       </p>
     </div>
   )

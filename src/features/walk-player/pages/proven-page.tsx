@@ -165,6 +165,7 @@ function RepairActs({ page }: { readonly page: Page }) {
   const planned = (fix?.minutes ?? 0) + service.filter(({ isTicked }) => isTicked).reduce((sum, { minutes }) => sum + (minutes ?? 0), 0)
   const [own, setOwn] = useState<number | null>(null)
   const minutes = own ?? planned
+  const unticked = (fix?.items ?? []).filter(({ isTicked }) => !isTicked).length
   const done = (): void => {
     record(
       [
@@ -186,7 +187,7 @@ function RepairActs({ page }: { readonly page: Page }) {
       <ActList
         label="Go on"
         acts={[
-          { key: 'done', title: 'Fix done', words: 'on to the hand-back run', look: 'leading', onPress: done },
+          { key: 'done', title: 'Fix done', words: `${unticked === 0 ? '' : `${unticked} of the fix not ticked · `}on to the hand-back run, with no way back`, look: 'leading', onPress: done },
           page.canCloseUnrepaired
             ? {
                 key: 'not',

@@ -62,7 +62,7 @@ export function MorePanel() {
           { name: 'Started', value: formatMoment(walk.startedAt) },
           { name: 'What’s off now', value: open.length === 0 ? 'nothing' : open.map(({ title }) => title).join(', ') },
           { name: 'Minutes used', value: `${formatMinutes(walk.minutesUsed)} by the chart, ${formatSeconds(walk.secondsMeasured)} measured` },
-          ...(walk.waitMinutes === 0 ? [] : [{ name: 'Waited', value: `${formatMinutes(walk.waitMinutes)} by the clock` }]),
+          ...(walk.waitMinutes === 0 ? [] : [{ name: 'Waiting', value: `${formatMinutes(walk.waitMinutes)} by the chart` }]),
           { name: 'Screen', value: isWakeLocked ? 'stays on during the walk' : 'may go dark: this browser does not keep it on' },
         ]}
       />

@@ -89,8 +89,8 @@ type RecordProps = Pick<ValueAnswersProps, 'entry' | 'outcomes' | 'onRecord'> & 
 function RecordButton({ entry, outcomes, onRecord, className }: RecordProps) {
   const { format } = usePlayer()
   const act = useRecordAct(entry, outcomes, onRecord)
-  const shown = entry.value === null || entry.typed?.ok === false ? '' : ` ${formatNumber(entry.value, format)}`
   const isReady = entry.typed?.ok === true || entry.verdict.kind === 'outcome'
+  const shown = isReady && entry.value !== null ? ` ${formatNumber(entry.value, format)}` : ''
   return (
     <Button
       type="submit"
@@ -100,7 +100,7 @@ function RecordButton({ entry, outcomes, onRecord, className }: RecordProps) {
       onClick={(event) => (event.preventDefault(), act())}
       className={`min-h-16 text-body ${className}`}
     >
-      {entry.verdict.kind === 'more' ? `Take${shown}` : `Record${shown}`}
+      {isReady && entry.verdict.kind === 'more' ? `Take${shown}` : `Record${shown}`}
     </Button>
   )
 }
