@@ -222,7 +222,7 @@ describe('spec sheets', () => {
   })
 
   test('where limits are general, the page says that the maker comes first', () => {
-    for (const chart of demoCharts) for (const { node } of specsOf(chart)) expect(node.good, node.id).toMatch(/maker's figure comes first/)
+    for (const chart of demoCharts) for (const { node } of specsOf(chart)) expect(node.good, node.id).toMatch(/maker’s figure comes first/)
   })
 })
 
