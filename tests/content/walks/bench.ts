@@ -31,6 +31,8 @@ export const saw: Machine = { class: 'chain-saw', engine: 'two-stroke' }
 export const trimmer: Machine = { class: 'line-trimmer', engine: 'two-stroke' }
 export const blower: Machine = { class: 'leaf-blower', engine: 'two-stroke' }
 export const fourStrokeTrimmer: Machine = { class: 'line-trimmer', engine: 'four-stroke' }
+export const mower: Machine = { class: 'mower', engine: 'four-stroke' }
+export const pump: Machine = { class: 'water-pump', engine: 'four-stroke' }
 
 const uuid = (number: number) => `00000000-0000-7000-8000-${number.toString().padStart(12, '0')}`
 const walkId = walkIdSchema.parse(uuid(1))
@@ -98,6 +100,10 @@ export function benchAt(chartId: string, machine: Machine, startId = 's') {
     },
     get taps() {
       return taps
+    },
+    /** The node whose page is shown, with its chart. */
+    get place() {
+      return here()
     },
     get node() {
       return here().slice(here().indexOf('/') + 1)
