@@ -39,7 +39,7 @@ test.each(bothHands)('no answer has three kinds: two go on and are shown again b
   await ivy.pressNamed('To the bench', 'link')
   await ivy.sees('Bench')
 
-  await ivy.startWalk('Hard to start')
+  await ivy.startWalk('Hard to start (printed table)')
   await ivy.comesTo('Does it start with the fuel cap loosened?')
   await ivy.givesNoAnswer('Not sure')
   await ivy.comesTo('Does it start with the air filter off?')
@@ -141,7 +141,7 @@ test('who asks the lead without a word still asks: a question stands on the lead
 
 test.each(bothHands)('a machine that is not safe is held: it wants its tag and the reason, and the walk can end only so, $words', async (hands) => {
   const ivy = await shop.seat('junior', hands)
-  await ivy.startWalk('Hard to start')
+  await ivy.startWalk('Hard to start (printed table)')
   await ivy.comesTo('Does it start with the fuel cap loosened?')
   await ivy.opens({ more: 'Hold it: not safe to hand back' })
   await ivy.sees('Not safe to hand back')
@@ -160,7 +160,7 @@ test.each(bothHands)('a machine that is not safe is held: it wants its tag and t
 
 test.each(bothHands)('a paused walk waits where it was, also for who comes back by the bench, $words', async (hands) => {
   const ivy = await shop.seat('junior', hands)
-  await ivy.startWalk('Hard to start')
+  await ivy.startWalk('Hard to start (printed table)')
   await ivy.comesTo('Does it start with the fuel cap loosened?')
   await ivy.opens({ more: 'Pause' })
   await ivy.sees('This walk is paused')
@@ -217,7 +217,7 @@ test.each(bothHands)('a jump to a chart that is not there says so and asks the l
 test('a second tap of a wet finger within a third of a second counts for nothing, and a caution is not read by the tap that came before it', async () => {
   const ivy = await shop.seat('junior', thumb)
   const { clock } = ivy.page
-  await ivy.press(ivy.page.getByRole('link', { name: 'Hard to start' }))
+  await ivy.press(ivy.page.getByRole('link', { name: 'Hard to start (printed table)' }))
   await ivy.page.getByRole('group', { name: 'Machine' }).waitFor()
   // The clock stands still from here on: only what is said goes by.
   await clock.pauseAt(new Date(Date.now() + 3_600_000))
