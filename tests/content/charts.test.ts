@@ -222,7 +222,7 @@ describe('spec sheets', () => {
   })
 
   test('where limits are general, the page says that the maker comes first', () => {
-    for (const chart of demoCharts) for (const { node } of specsOf(chart)) expect(node.good, node.id).toMatch(/maker's figure comes first/)
+    for (const chart of demoCharts) for (const { node } of specsOf(chart)) expect(node.good, node.id).toMatch(/maker’s figure comes first/)
   })
 })
 
@@ -273,6 +273,9 @@ describe('wording', () => {
   })
   test('a value and its unit stay on one line', () => {
     for (const name of chartFiles) expect(readChartFile(name)).not.toMatch(/\d (?:s|min|mm|cm|rpm|psi|ft)\b/)
+  })
+  test('apostrophes are typographic', () => {
+    for (const name of chartFiles) expect(readChartFile(name), name).not.toMatch(/\w'|'\w/)
   })
   test('what is seen is told in other words than the outcome', () => {
     for (const { node, name } of demoDecisions)
