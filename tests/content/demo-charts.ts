@@ -49,15 +49,7 @@ export function demoNodesOf<Kind extends ChartNode['kind']>(kind: Kind): { chart
 }
 
 /** Charts that the demo's charts may jump to before they are written. */
-export const chartsToCome = [
-  'runs-only-while-priming',
-  'hard-to-start',
-  'creeps-at-idle',
-  'will-not-prime',
-  'seal-test',
-  'spark',
-  'carburettor-bench',
-] as ChartId[]
+export const chartsToCome = ['hard-to-start', 'will-not-prime'] as ChartId[]
 
 const sourceSchema = z.strictObject({ mark: z.enum(['read', 'from memory', 'common practice', 'own arithmetic']), title: z.string().optional() })
 const sheetSchema = z.strictObject({
