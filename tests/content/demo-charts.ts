@@ -49,7 +49,10 @@ export function demoNodesOf<Kind extends ChartNode['kind']>(kind: Kind): { chart
 }
 
 /** Charts that the demo's charts may jump to before they are written. */
-export const chartsToCome = ['hard-to-start', 'will-not-prime'] as ChartId[]
+export const chartsToCome: readonly ChartId[] = []
+
+/** Spec keys that charts still to come take. */
+export const specKeysToCome: readonly string[] = ['coilGap', 'engageSpeed', 'idleSpeed', 'leverHeight', 'needleHolds', 'needleOpens', 'vacuumHold']
 
 const sourceSchema = z.strictObject({ mark: z.enum(['read', 'from memory', 'common practice', 'own arithmetic']), title: z.string().optional() })
 const sheetSchema = z.strictObject({

@@ -32,6 +32,7 @@ export const trimmer: Machine = { class: 'line-trimmer', engine: 'two-stroke' }
 export const blower: Machine = { class: 'leaf-blower', engine: 'two-stroke' }
 export const fourStrokeTrimmer: Machine = { class: 'line-trimmer', engine: 'four-stroke' }
 export const mower: Machine = { class: 'mower', engine: 'four-stroke' }
+export const pump: Machine = { class: 'water-pump', engine: 'four-stroke' }
 
 const uuid = (number: number) => `00000000-0000-7000-8000-${number.toString().padStart(12, '0')}`
 const walkId = walkIdSchema.parse(uuid(1))
