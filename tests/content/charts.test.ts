@@ -2,12 +2,12 @@ import { describe, expect, test } from 'vitest'
 import { judgeReading, limitsOf } from '#shared/chart/judge.ts'
 import { lintChart } from '#shared/chart/lint/lint-chart.ts'
 import type { ChartDocument, ReadingNode } from '#shared/chart/document.ts'
-import { generalLimit, type MachineKind } from '#shared/chart/spec-limits.ts'
+import { generalLimit, specLimitsFor, type MachineKind } from '#shared/chart/spec-limits.ts'
+import type { SpecKeyId } from '#shared/lib/ids.ts'
 import { fitsHarm } from '#shared/trade/signal-words.ts'
 import { unitsOfQuantity } from '#shared/units/quantities.ts'
 import {
   chartFiles,
-  chartsToCome,
   demoChart,
   demoCharts,
   demoChartSet,
@@ -16,7 +16,6 @@ import {
   demoNodesOf,
   demoSheets,
   readChartFile,
-  specKeysToCome,
 } from './demo-charts.ts'
 
 const wordsOf = (text: string): string[] => text.split(/\s+/).filter((word) => /[\p{L}\p{N}]/u.test(word))
@@ -24,18 +23,24 @@ const wordsOf = (text: string): string[] => text.split(/\s+/).filter((word) => /
 describe('every chart of the demo shop', () => {
   test('lies in a file of its own name', () => {
     expect(demoCharts.map(({ id }) => id)).toEqual(chartFiles)
-    expect(chartFiles.toSorted()).toEqual(['drag-at-clutch', 'hard-to-start', 'hard-to-start-printed', 'no-full-speed', 'will-not-prime'])
+    expect(chartFiles.toSorted()).toEqual([
+      'carburettor-bench',
+      'creeps-at-idle',
+      'drag-at-clutch',
+      'hard-to-start',
+      'hard-to-start-printed',
+      'no-full-speed',
+      'runs-only-while-priming',
+      'seal-test',
+      'spark',
+      'will-not-prime',
+    ])
   })
 
-  test.each(chartFiles)('%s has nothing that must be fixed, and only jumps to charts still to come are worth a look', (name) => {
+  test.each(chartFiles)('%s has nothing that must be fixed or that is worth a look', (name) => {
     const index = demoChartSet.get(demoChart(name).id)
     if (index === undefined) throw new Error(name)
-    const remarks = lintChart(index, { others: (id) => demoChartSet.get(id) })
-    expect(remarks.filter(({ code }) => code !== 'jump-chart-missing')).toEqual([])
-    for (const remark of remarks) {
-      const node = remark.node === undefined ? undefined : index.nodes.get(remark.node)
-      expect(node?.kind === 'jump' && node.chart !== undefined && chartsToCome.includes(node.chart), remark.message).toBe(true)
-    }
+    expect(lintChart(index, { others: (id) => demoChartSet.get(id) })).toEqual([])
   })
 
   test('says where each of its facts comes from', () => {
@@ -65,6 +70,14 @@ describe('causes', () => {
     // Common practice.
     expect(graded(demoChart('no-full-speed'), 'common')).toEqual(['screen-shut', 'filter-packed', 'stale-fuel', 'pickup-clogged', 'chain-blunt', 'band-drags'])
     expect(graded(demoChart('drag-at-clutch'), 'common')).toEqual(['band-drags', 'chain-overtight', 'oil-port-blocked'])
+    expect(graded(demoChart('runs-only-while-priming'), 'common')).toEqual([
+      'pickup-clogged',
+      'hose-cracked',
+      'inlet-screen-gummed',
+      'diaphragm-stiff',
+      'stale-fuel',
+    ])
+    expect(graded(demoChart('creeps-at-idle'), 'common')).toEqual(['idle-set-high', 'clutch-spring-broken'])
     expect(graded(demoChart('hard-to-start'), 'common')).toEqual(['stale-fuel', 'flooded', 'plug-fouled', 'water-in-fuel', 'filter-packed'])
     expect(graded(demoChart('hard-to-start'), 'rare').toSorted()).toEqual([
       'coil-dead',
@@ -79,7 +92,12 @@ describe('causes', () => {
     expect(graded(demoChart('will-not-prime'), 'common')).toEqual(['started-dry', 'coupling-leaks', 'strainer-blocked', 'shaft-seal-leaks'])
     expect(graded(demoChart('will-not-prime'), 'rare')).toEqual(['outlet-shut', 'strainer-high', 'casing-cracked', 'impeller-loose', 'impeller-worn'])
     const unsafe = new Set(demoCharts.flatMap(({ library }) => (library.causes ?? []).filter((cause) => cause.unsafe === true).map(({ id }) => id as string)))
-    expect([...unsafe].sort()).toEqual(['band-bent', 'band-worn', 'brake-lever-sticks', 'crank-bearing-rough', 'drum-worn'])
+    const brake = ['band-bent', 'band-worn', 'brake-lever-sticks', 'drum-worn']
+    // With these the chain can turn while the trigger is free: repaired, or held.
+    const clutch = ['clutch-spring-broken', 'debris-in-clutch', 'drum-bearing-dry', 'springs-wrong']
+    const throttle = ['idle-set-high', 'latch-stays', 'throttle-sticks']
+    const airLeaks = ['base-gasket-leaks', 'carb-loose', 'crank-seal-leaks', 'intake-joint-cracked']
+    expect([...unsafe].sort()).toEqual([...brake, ...clutch, ...throttle, ...airLeaks, 'crank-bearing-rough'].sort())
   })
 
   test('that a proof leads to are its suspects, and every cause node is proved in some way', () => {
@@ -199,6 +217,15 @@ test('hands near chain, fan or drum: the plug lead is off and its caution stands
   }
 })
 
+test('a step that puts a safety part back has a page of its own: nobody passes it with a check that is left unanswered', () => {
+  const restoring = demoNodesOf('step').filter(({ node }) => node.restores !== undefined)
+  expect(restoring.length).toBeGreaterThan(5)
+  for (const { chart, node, name } of restoring) {
+    const next = chart.nodes.find(({ id }) => id === chart.edges.find(({ from }) => from === node.id)?.to)
+    if (next?.kind === 'check' || next?.kind === 'reading' || next?.kind === 'proof') expect(node.cautions?.length, name).toBeGreaterThan(0)
+  }
+})
+
 test('every page says whether the engine runs', () => {
   for (const { node, name } of demoNodes)
     if (['check', 'reading', 'proof', 'step'].includes(node.kind)) expect(node.machine, name).toMatch(/^(running|stopped)$/)
@@ -207,9 +234,14 @@ test('every page says whether the engine runs', () => {
 test('a proof compares the same reading before and after, or is judged by hand, eye or ear', () => {
   const byHand = demoNodesOf('proof').filter(({ node }) => node.by !== 'sight' && node.compares?.confirmsWhen === undefined)
   expect(byHand.map(({ name }) => name)).toEqual([
+    // Called from several charts: what they compare is the test that failed there.
+    ...['p13', 'p14a', 'p14b', 'p15', 'p16a', 'p16b', 'p17', 'p18', 'p19'].map((id) => `carburettor-bench/${id}`),
+    // The idle in limits is not enough: the chain must stand still as well.
+    'creeps-at-idle/n4',
     ...['p11a', 'p11b', 'p12'].map((id) => `drag-at-clutch/${id}`),
     'hard-to-start/p14r',
     ...['p12b', 'p13a', 'p13b'].map((id) => `no-full-speed/${id}`),
+    ...['p8', 'p11'].map((id) => `spark/${id}`),
     // A pump is never run dry for a reading before: the empty casing itself is what is compared.
     'will-not-prime/p1',
   ])
@@ -238,8 +270,7 @@ describe('spec sheets', () => {
           if (limit !== undefined && 'unit' in limit) expect(unitsOfQuantity[node.quantity] as readonly string[], spec).toContain(limit.unit)
         }
       }
-      const isUsed = (id: string) => used.has(id) || !specKeysToCome.includes(id)
-      expect(Object.keys(sheet.limits).filter(isUsed).sort()).toEqual([...used].sort())
+      expect(Object.keys(sheet.limits).sort()).toEqual([...used].sort())
       expect(Object.keys(sheet.sources).sort()).toEqual(Object.keys(sheet.limits).sort())
     },
   )
@@ -333,6 +364,31 @@ describe('limits on the charts', () => {
     expect(judged('no-full-speed', 'n8b', 'two-stroke', 0.02, 'in')).toBe('in')
     expect(judged('no-full-speed', 'n8b', 'two-stroke', 0.03, 'in')).toBe('in')
   })
+  test('the crankcase holds 7 psi or more, nothing less (7 psi is 48.26 kPa); its vacuum limit is from memory', () => {
+    expect(judged('seal-test', 'n1', 'two-stroke', 7, 'psi')).toBe('holds')
+    expect(judged('seal-test', 'n1', 'two-stroke', 6.9, 'psi')).toBe('drops')
+    expect(judged('seal-test', 'n1', 'two-stroke', 49, 'kPa')).toBe('holds')
+    expect(judged('seal-test', 'n1', 'two-stroke', 0.47, 'bar')).toBe('drops')
+    expect(judged('seal-test', 'n2', 'two-stroke', 4.9, 'inHg')).toBe('drops')
+    expect(judged('seal-test', 'n2', 'two-stroke', 5, 'inHg')).toBe('holds')
+  })
+  test('no clutch may drive below 1.25 times the idle speed (from memory): on every sheet, and in general', () => {
+    const pairs = [
+      ...demoSheets.map(({ limits }) => [limits['idleSpeed' as SpecKeyId], limits['engageSpeed' as SpecKeyId]] as const),
+      ...(['chain-saw', 'line-trimmer'] as const).map((name) => {
+        const general = specLimitsFor(demoCharts, { class: name, engine: 'two-stroke' }, null)
+        return [general['idleSpeed' as SpecKeyId], general['engageSpeed' as SpecKeyId]] as const
+      }),
+    ]
+    for (const [idle, engages] of pairs) {
+      if (idle === undefined || engages === undefined || !('unit' in idle) || !('unit' in engages)) continue
+      expect(engages.min).toBeGreaterThanOrEqual(1.25 * (idle.max ?? Infinity))
+    }
+    expect(pairs.length).toBeGreaterThanOrEqual(4)
+  })
+  test('air that clears the carburettor stays under 30 psi too', () => {
+    for (const id of ['n18', 'p18']) expect(JSON.stringify(demoChart('carburettor-bench').nodes.find((node) => node.id === id))).toMatch(/under 30\u00a0psi/)
+  })
   test('the cleaning air of the printed table stays under 30 psi (29 CFR 1910.242(b))', () => {
     expect(JSON.stringify(demoChart('hard-to-start-printed').nodes.find(({ id }) => id === 'n3'))).toMatch(/under 30\u00a0psi/)
   })
@@ -359,6 +415,9 @@ describe('wording', () => {
   })
   test('a value and its unit stay on one line', () => {
     for (const name of chartFiles) expect(readChartFile(name)).not.toMatch(/\d (?:s|min|mm|cm|rpm|psi|ft)\b/)
+  })
+  test('apostrophes are typographic', () => {
+    for (const name of chartFiles) expect(readChartFile(name), name).not.toMatch(/\w'|'\w/)
   })
   test('what is seen is told in other words than the outcome', () => {
     for (const { node, name } of demoDecisions)
