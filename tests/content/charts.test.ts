@@ -419,9 +419,12 @@ describe('wording', () => {
   test('apostrophes are typographic', () => {
     for (const name of chartFiles) expect(readChartFile(name), name).not.toMatch(/\w'|'\w/)
   })
-  test('what is seen is told in other words than the outcome', () => {
+  test('every outcome tells what is seen, in other words than its own', () => {
     for (const { node, name } of demoDecisions)
-      for (const { seen, title } of node.outcomes) if (seen !== undefined) expect(seen.toLowerCase(), name).not.toBe(title.toLowerCase())
+      for (const { id, seen, title } of node.outcomes) {
+        expect(seen, `${name} ${id}`).toBeTruthy()
+        expect(seen?.toLowerCase(), `${name} ${id}`).not.toBe(title.toLowerCase())
+      }
   })
 })
 
