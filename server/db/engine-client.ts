@@ -26,9 +26,11 @@ export type EngineClient = {
   readonly lost: Promise<Error>
 }
 
+const enginePackages = ['@electric-sql/pglite', '@electric-sql/pglite/contrib/pg_trgm', '@electric-sql/pglite/contrib/unaccent']
+
 /** Starts the worker and waits until its engine is open; rejects with the engine's own words when it can't be opened. */
 export async function startEngine(start: EngineStart): Promise<EngineClient> {
-  const worker = startWorker(new URL('./engine-worker.ts', import.meta.url), start)
+  const worker = startWorker(new URL('./engine-worker.ts', import.meta.url), start, enginePackages)
   const waiting = new Map<number, Deferred<unknown>>()
   const lost = defer<Error>()
   let fate: Error | null = null
