@@ -12,10 +12,11 @@ import type { Technician } from './technician.ts'
 
 const shop = shopOfFile()
 
-/** A chart whose symptom leads on into a chart that nobody has written yet. */
+/** A chart that leads into charts that nobody has written yet: one of them to go on in, the other to come back from. */
 function smokesChart(id: string, title: string): ChartDocument {
   const outcomes = [
     { id: 'white', title: 'White and thick', reproduced: true },
+    { id: 'blue', title: 'Blue and thin', reproduced: true },
     { id: 'else', title: 'Does something else' },
     { id: 'none', title: 'No smoke' },
   ]
@@ -26,10 +27,13 @@ function smokesChart(id: string, title: string): ChartDocument {
       start('s', { title }),
       check('n1', outcomes, { title: 'What colour is the smoke?', reproduces: true }),
       jump('j1', 'water-in-the-crankcase'),
+      jump('j2', 'oil-in-the-mix', { returns: true }),
+      check('n2', ['good', 'bad'], { title: 'Does it smoke when warm too?' }),
+      ask(),
       { id: 'jp', kind: 'jump', title: 'What else does it do?', pick: 'symptom' },
       ask('a0', { reason: 'could-not-reproduce' }),
     ],
-    edges: ['s > n1', 'n1.white > j1', 'n1.else > jp', 'n1.none > a0'],
+    edges: ['s > n1', 'n1.white > j1', 'n1.blue > j2', 'n1.else > jp', 'n1.none > a0', 'j2 > n2', 'n2.good > ask', 'n2.bad > ask'],
   })
 }
 
@@ -235,7 +239,7 @@ test.each(bothHands)('a failed run rules the cause out, and the walk goes on fro
   await ivy.leaves()
 })
 
-test.each(bothHands)('another symptom goes on in its own chart or is picked; a jump to a chart that is not there says so and asks the lead, $words', async (hands) => {
+test.each(bothHands)('another symptom goes on in its own chart or is picked; a jump to a chart that is not there says so, and asks the lead or passes over it, $words', async (hands) => {
   const smokes = `Smokes white (${hands.by})`
   const tobias = await shop.seat('lead', hands)
   await publishAsLead(tobias, smokesChart(`smokes-white-${hands.by}`, smokes))
@@ -261,6 +265,11 @@ test.each(bothHands)('another symptom goes on in its own chart or is picked; a j
   await ivy.pressNamed('Ask, and go on')
   await ivy.sees('The lead is asked')
   await ivy.seesWords('waiting for the lead')
+  await ivy.goesBack()
+  await ivy.check('What colour is the smoke?', 'Blue and thin')
+  await ivy.comesTo('Does it smoke when warm too?')
+  await ivy.seesWords('Passed over on the way')
+  await ivy.seesWords(/that chart is not on the bench yet/)
   await ivy.goesBack()
   await ivy.check('What colour is the smoke?', 'Does something else')
   await ivy.sees('What else does it do?')
