@@ -3,7 +3,7 @@ import { splitPlace, toPlace, type CauseId, type Place } from '#shared/lib/ids.t
 import type { EventOf } from './events.ts'
 import { comparedWith, foundBefore, locateDecision, type LocatedDecision } from './findings.ts'
 import { enter, enterAll, nothingDone } from './metal.ts'
-import { pageNodes } from './page-nodes.ts'
+import { checkToSkip, pageNodes } from './page-nodes.ts'
 import { locate, type PinnedCharts } from './pinned-charts.ts'
 import { otherWay, proofInReach } from './reach.ts'
 import { afterWork, cautionsAfterPage, inPhase, positionOf, rereadCautions, serviceListOf, standingAt } from './record.ts'
@@ -80,9 +80,9 @@ function madeNow(check: LocatedDecision, before: Answer | null): readonly Locate
 
 /** A check without an answer: nothing was done, and the walk follows the edge of `ifSkipped`, or ends where nothing could be reproduced. */
 export function skipCheck(charts: PinnedCharts, walk: OpenWalk, event: EventOf<'check-skipped'>): StartedWalk {
-  const page = walk.phase === 'at-node' ? pageNodes(charts, walk)?.target : undefined
+  const page = walk.phase === 'at-node' ? checkToSkip(charts, walk) : null
   const { payload, seq } = event
-  if (page === undefined || !isDecision(page.node) || page.position.node !== payload.node) return walk
+  if (page === null || !isDecision(page.node) || page.position.node !== payload.node) return walk
   // The steps that stand on the page were for this check alone: with it they fall away.
   const there = { ...walk, ...page.position, cautionsRead: cautionsAfterPage(walk, payload.node, seq) }
   const endsWalk = payload.why === 'not-reproduced' && 'reproduces' in page.node && page.node.reproduces === true

@@ -1,7 +1,10 @@
 import { describe, expect, test } from 'vitest'
 
+import type { EventId } from '#shared/lib/ids.ts'
 import { ask, buildChart, check, start, step } from '#tests/support/chart-builder.ts'
-import { started, stepDone, storiesOn, tap } from '#tests/support/walk-builder.ts'
+import { people, skipped, started, stepDone, storiesOn, tap, uuid, walkId } from '#tests/support/walk-builder.ts'
+import { toEvent } from '#tests/support/walk-drafts.ts'
+import { evolve } from './evolve.ts'
 
 describe('steps', () => {
   const steps = (more: Record<string, unknown>[] = []) =>
@@ -40,8 +43,8 @@ describe('steps', () => {
       .thenPage('check', (page) => expect(page.lines).toHaveLength(3))
   })
 
-  test('a step with a caution, a timer, a part that it puts out of action, or access that carries a caution has a page of its own', () => {
-    for (const more of [{ cautions: ['hot'] }, { timer: { seconds: 5, rule: 'at-most' } }, { defeats: ['brake'] }, { needs: ['hot-off'] }]) {
+  test('a step with a caution, a timer, a safety part that it takes off or puts back, or access that carries a caution has a page of its own', () => {
+    for (const more of [{ cautions: ['hot'] }, { timer: { seconds: 5, rule: 'at-most' } }, { defeats: ['brake'] }, { restores: ['brake'] }, { needs: ['hot-off'] }]) {
       storiesOn(steps([step('x1', more)]))
         .given(started(), (bench) =>
           bench.page.kind === 'caution' ? [{ type: 'caution-acknowledged', payload: { node: bench.place('x1'), cautionIds: [...bench.page.cautionIds] } }] : [],
@@ -50,6 +53,20 @@ describe('steps', () => {
           expect(page.node.place).toBe('saw/x1')
         })
     }
+  })
+
+  test('a safety part is back before the next check can be left unanswered', () => {
+    const putBack = steps([step('x1', { restores: ['brake'] })])
+    storiesOn(putBack).given(started()).when(skipped('n9')).thenRefused('wrong-node')
+    storiesOn(putBack).given(started(), stepDone, skipped('n9')).thenAt('ask')
+    // A log in which it once was comes to what it came to.
+    storiesOn(putBack)
+      .given(started())
+      .then((walk, bench) => {
+        const head = { id: uuid(77) as EventId, walkId, seq: 2, at: '2026-03-02T09:00:02.000Z', deviceId: people.junior.device, personId: people.junior.id }
+        const [passedOver] = skipped('n9')(bench).map((draft) => toEvent(head, draft))
+        expect(passedOver && evolve(bench.charts, walk, passedOver)).toMatchObject({ node: 'saw/ask', lastSeq: 2 })
+      })
   })
 
   test('a step ahead of an end stands alone', () => {

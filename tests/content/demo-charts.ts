@@ -5,7 +5,7 @@ import { toChartSet, type ChartSet } from '#shared/chart/chart-set.ts'
 import type { ChartDocument, ChartNode, DecisionNode, NodeOf } from '#shared/chart/document.ts'
 import { isDecision } from '#shared/chart/graph.ts'
 import { parseChartText } from '#shared/chart/parse.ts'
-import { modelIdSchema, specKeyIdSchema, type ChartId } from '#shared/lib/ids.ts'
+import { modelIdSchema, specKeyIdSchema } from '#shared/lib/ids.ts'
 import { engineKinds, equipmentClasses } from '#shared/trade/equipment.ts'
 import { specLimitsSchema } from '#shared/units/limits.ts'
 
@@ -47,17 +47,6 @@ export const demoDecisions = demoNodes.flatMap(({ chart, node, name }): { chart:
 export function demoNodesOf<Kind extends ChartNode['kind']>(kind: Kind): { chart: ChartDocument; node: NodeOf<Kind>; name: string }[] {
   return demoNodes.flatMap(({ chart, node, name }) => (node.kind === kind ? [{ chart, node: node as NodeOf<Kind>, name }] : []))
 }
-
-/** Charts that the demo's charts may jump to before they are written. */
-export const chartsToCome = [
-  'runs-only-while-priming',
-  'hard-to-start',
-  'creeps-at-idle',
-  'will-not-prime',
-  'seal-test',
-  'spark',
-  'carburettor-bench',
-] as ChartId[]
 
 const sourceSchema = z.strictObject({ mark: z.enum(['read', 'from memory', 'common practice', 'own arithmetic']), title: z.string().optional() })
 const sheetSchema = z.strictObject({

@@ -37,7 +37,7 @@ test.each(bothHands)('a walk goes on after a reload, with the first try of a rea
 
 test('a walk goes on at another device after signing in there, and what the first one still enters is set aside in words', async () => {
   const atThePhone = await shop.seat('junior', thumb)
-  await atThePhone.startWalk('Hard to start')
+  await atThePhone.startWalk('Hard to start (printed table)')
   await atThePhone.check('Does it start with the fuel cap loosened?', 'No change')
   await atThePhone.comesTo('Does it start with the air filter off?')
   await atThePhone.isSaved()
@@ -63,7 +63,7 @@ test('a walk goes on at another device after signing in there, and what the firs
 test.each(bothHands)('a server that is lost in the middle of a walk holds nobody up: what is tapped waits on the page, says so, and is sent when the server is back, $words', async (hands) => {
   const ivy = await shop.seat('junior', hands)
   ivy.device.allow(/ERR_CONNECTION_REFUSED|ERR_CONNECTION_RESET|ERR_EMPTY_RESPONSE/)
-  await ivy.startWalk('Hard to start')
+  await ivy.startWalk('Hard to start (printed table)')
   await ivy.check('Does it start with the fuel cap loosened?', 'No change')
   await ivy.comesTo('Does it start with the air filter off?')
   await ivy.isSaved()
@@ -89,7 +89,7 @@ test.each(bothHands)('a server that is lost in the middle of a walk holds nobody
 test('whoever opens a page while the server is lost reads what happened and what is safe', async () => {
   const ivy = await shop.seat('junior', thumb)
   ivy.device.allow(/ERR_CONNECTION_REFUSED|ERR_CONNECTION_RESET|ERR_EMPTY_RESPONSE/)
-  const start = ivy.page.getByRole('link', { name: 'Hard to start' })
+  const start = ivy.page.getByRole('link', { name: 'Hard to start (printed table)' })
   await start.waitFor()
   await shop.process().kill()
   await start.tap()

@@ -57,7 +57,7 @@ test.each(bothHands)('the owner adds a person, who sets a password by the link o
   await owner.press(row)
   await owner.pressNamed('Deactivate')
   await owner.seesWords('Jonah Pell is deactivated and signed out everywhere.')
-  await jonah.press(jonah.page.getByRole('link', { name: 'Hard to start' }))
+  await jonah.press(jonah.page.getByRole('link', { name: 'Hard to start (printed table)' }))
   await jonah.sees('Sign in')
   await jonah.writeIn('E-mail', email)
   await jonah.writeIn('Password', password)

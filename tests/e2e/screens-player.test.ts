@@ -59,7 +59,7 @@ test('the pages of the walk player from the cautions to the closed walk are clea
 
 test('the pages beside the check are clean in both sizes and themes', async () => {
   const { who, seePlayer, end } = await inspector('junior')
-  await who.startWalk('Hard to start')
+  await who.startWalk('Hard to start (printed table)')
   await who.check('Does it start with the fuel cap loosened?', 'No change')
   await who.comesTo('Does it start with the air filter off?')
   await seePlayer('check with a step before it')
@@ -119,7 +119,7 @@ test('the ends where the chart knows no more are clean in both sizes and themes'
   await who.startWalk('Drag at the clutch', { kind: 'Line trimmer' })
   await who.check('Does the drive strain, lag or run hot?', 'Does something else')
   await who.sees('Pick what it does')
-  await who.outcome('Hard to start').waitFor()
+  await who.outcome('Hard to start (printed table)').waitFor()
   await seePlayer('pick a symptom')
   await who.goesBack()
   await who.check('Does the drive strain, lag or run hot?', 'Strains, lags or heats')

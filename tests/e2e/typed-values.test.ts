@@ -86,7 +86,7 @@ test('by thumb the pad types digits and the decimal mark, and its last digit is 
 test('whatever stands in a note stays text: a script in it is read, not run', async () => {
   const ivy = await shop.seat('junior', keyboard)
   const nasty = '<script>document.title="run"</script><img src=x onerror="document.title=1">{{7*7}}'
-  await ivy.startWalk('Hard to start')
+  await ivy.startWalk('Hard to start (printed table)')
   await ivy.comesTo('Does it start with the fuel cap loosened?')
   await ivy.opens('Note')
   await ivy.sees('Write a note')
@@ -107,7 +107,7 @@ test('whatever stands in a note stays text: a script in it is read, not run', as
 
 test('a note of more than 10 kB is refused in words and keeps every letter', async () => {
   const ivy = await shop.seat('junior', keyboard)
-  await ivy.startWalk('Hard to start')
+  await ivy.startWalk('Hard to start (printed table)')
   await ivy.comesTo('Does it start with the fuel cap loosened?')
   await ivy.opens('Note')
   const long = 'rope frayed '.repeat(9000)

@@ -31,6 +31,8 @@ export const saw: Machine = { class: 'chain-saw', engine: 'two-stroke' }
 export const trimmer: Machine = { class: 'line-trimmer', engine: 'two-stroke' }
 export const blower: Machine = { class: 'leaf-blower', engine: 'two-stroke' }
 export const fourStrokeTrimmer: Machine = { class: 'line-trimmer', engine: 'four-stroke' }
+export const mower: Machine = { class: 'mower', engine: 'four-stroke' }
+export const pump: Machine = { class: 'water-pump', engine: 'four-stroke' }
 
 const uuid = (number: number) => `00000000-0000-7000-8000-${number.toString().padStart(12, '0')}`
 const walkId = walkIdSchema.parse(uuid(1))
@@ -98,6 +100,10 @@ export function benchAt(chartId: string, machine: Machine, startId = 's') {
     },
     get taps() {
       return taps
+    },
+    /** The node whose page is shown, with its chart. */
+    get place() {
+      return here()
     },
     get node() {
       return here().slice(here().indexOf('/') + 1)
@@ -244,4 +250,55 @@ export function answersOf(bench: Bench): readonly string[] | null {
     page.kind === 'caution' ? page.guards.place : page.kind === 'before' ? page.proof.node.place : 'node' in page ? page.node.place : bench.walk.node
   const node = locate(charts, bench.walk.pins, place)?.node
   return node !== undefined && isDecision(node) ? node.outcomes.map(({ id }) => id) : null
+}
+
+/** Whether the walk takes no further answer: it has come to a cause, to the lead, on hold or to a jump that lets the person pick. */
+export function isAtEnd(bench: Bench): boolean {
+  return !['caution', 'check', 'reading', 'before', 'proof', 'step'].includes(bench.page().kind)
+}
+
+/** How a walk ended: a cause by its id, an escalation by its reason, else the kind of its page. */
+export function endOf(bench: Bench): string {
+  const page = bench.page()
+  if (page.kind === 'cause') return page.cause.causeId ?? 'unnamed'
+  return page.kind === 'ask' || page.kind === 'escalated' ? page.reason : page.kind
+}
+
+/** What is found that is not as it should be, by node: an outcome. Nodes of other charts than the one in hand are told with their chart. */
+export type Found = Readonly<Record<string, string>>
+
+/**
+ * Walks on to the end: what was found as given, everything else as it should be; the trouble shows, and proofs confirm. Fails where a given
+ * node was never asked.
+ */
+export function walkOn(bench: Bench, found: Found): Bench {
+  const unused = new Set(Object.keys(found))
+  const inHand = bench.place.slice(0, bench.place.indexOf('/'))
+  while (!isAtEnd(bench)) {
+    if (answersOf(bench) === null) bench.step(bench.node)
+    else {
+      const name = [bench.place, ...(bench.place.startsWith(`${inHand}/`) ? [bench.node] : [])].find((key) => key in found) ?? ''
+      unused.delete(name)
+      bench.answer(bench.node, found[name] ?? expectedAt(bench))
+    }
+  }
+  if (unused.size > 0) throw new Error(`never asked: ${[...unused].join(', ')}; it ended at ${bench.place}`)
+  return bench
+}
+
+/** The nodes that a walk recorded, in order. */
+export function placesOf(bench: Bench): readonly string[] {
+  return bench.walk.trail.map((line) => line.position.node)
+}
+
+function expectedAt(bench: Bench): string {
+  const node = locate(charts, bench.walk.pins, bench.place)?.node
+  if (node === undefined || !isDecision(node)) throw new Error(`${bench.place} takes no answer`)
+  const outcome =
+    node.outcomes.find(({ reproduced, confirms }) => reproduced === true || confirms === true) ?? node.outcomes.find(({ normal }) => normal === true)
+  return (outcome ?? raise(`good outcome at ${bench.place}`)).id
+}
+
+function raise(what: string): never {
+  throw new Error(`no ${what}`)
 }

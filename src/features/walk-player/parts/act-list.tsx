@@ -13,19 +13,20 @@ export type Act = {
   readonly onPress: () => void
 }
 
-/** What can be done on a page that asks no question, numbered like outcomes so that it can be said over a shoulder. */
+/** What can be done on a page that asks no question, the first nine numbered like outcomes so that they can be said over a shoulder. */
 export function ActList({ label, acts }: { readonly label: string; readonly acts: readonly Act[] }) {
   const { tap } = usePlayer()
   return (
     <div role="group" aria-label={label} className="grid gap-3">
       {acts.map(({ key, onPress, ...act }, index) => {
+        const numeral = index < 9 ? index + 1 : null
         const press = (): void => {
           if (act.disabled !== true) tap(onPress)
         }
         return (
           <div key={key}>
-            <OutcomeButton {...act} numeral={index + 1} onPress={press} />
-            <AnswerKey numeral={index + 1} words={act.title} run={press} />
+            <OutcomeButton {...act} numeral={numeral} onPress={press} />
+            <AnswerKey numeral={numeral} words={act.title} run={press} />
           </div>
         )
       })}
