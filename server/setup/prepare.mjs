@@ -50,11 +50,14 @@ function isInstalledByHand() {
   return isWhole && Object.keys(there).every((path) => wanted[path])
 }
 
-/** Builds the pages when they are missing or older than what they are made from. The stamp comes last: half a build has none. */
+/**
+ * Builds the pages when they are missing or older than what they are made from, for production whoever asks: the tests' own setting would make
+ * slow pages that a later start serves. The stamp comes last: half a build has none.
+ */
 function build(isForced) {
   const sources = ['src', 'shared', 'index.html', 'vite.config.ts', 'package-lock.json'].map((name) => join(root, name))
   if (!isForced && existsSync(buildStamp) && statSync(buildStamp).mtimeMs > Math.max(...sources.map(newest))) return
-  run('Building the pages', process.execPath, [join(root, 'node_modules/vite/bin/vite.js'), 'build', '--logLevel', 'warn'])
+  run('Building the pages', process.execPath, [join(root, 'node_modules/vite/bin/vite.js'), 'build', '--logLevel', 'warn'], { NODE_ENV: 'production' })
   mkdirSync(dirname(buildStamp), { recursive: true })
   writeFileSync(buildStamp, '')
 }
