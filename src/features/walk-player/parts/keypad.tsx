@@ -14,7 +14,7 @@ const digits = ['1', '2', '3', '4', '5', '6', '7', '8', '9'] as const
 const keyClass =
   'flex min-h-14 items-center justify-center rounded-control md:min-h-16 border border-rule bg-card text-[1.75rem] leading-8 font-medium select-none hover:border-ink active:bg-cord-wash'
 
-/** The player's own number pad: keys of 64 px for a thumb in a glove, so that no half-screen keyboard comes up. */
+/** The player's own number pad: keys of 56 px, 64 px where there is room, for a thumb in a glove, so that no half-screen keyboard comes up. */
 export function Keypad({ decimal, onKey, onErase, hasMinus = false }: KeypadProps) {
   return (
     <div role="group" aria-label="Number pad" className="grid grid-cols-3 gap-2">
